@@ -47,7 +47,8 @@ type Facts struct {
 	KindBy    Standing
 	Qualifier kind.Qualifier
 	QualBy    Standing
-	Media     []*Symbol // media whose properties or fields entered, in order of first use
+	Absolute  bool     // an absolute temperature written in °C, or derived from one
+	Media     []string // keys of the media whose properties or fields entered, in order of first use
 }
 
 // Result is the value of a quantity, in coherent SI units.
