@@ -1,8 +1,16 @@
 // Package check runs rules over an analysed note and collects findings.
+//
+// A rule is a value: its file in check/rules is its only home. Run gives the
+// findings of the language (lang.Note.Faults) and those of the rules in one
+// total order: place, rule, message. Precedence then leaves one finding for
+// each cause, waivers mark what the author answers for, and the configuration
+// sets severities. A rule that returns an error or panics is broken: that is
+// an error of the program, never a finding about the note.
 package check
 
 import (
-	"context"
+	"cmp"
+	"slices"
 
 	"inkjoule/lang"
 )
@@ -10,56 +18,37 @@ import (
 // Finding is a fault at a place in a file, as every front end shows it.
 type Finding struct {
 	lang.Fault
-	Path   string
-	Waived string // the waiver's reason; "" if not waived. Waived findings do not count.
+	Path     string
+	Waived   string    // the waiver's reason; "" if not waived. Waived findings do not count.
+	WaivedBy lang.Span // the waive statement, note offsets; empty if not waived
 }
 
-// Rule is one check of the physics. It is a value: its file in check/rules is
-// its only home (documentation, severity, examples, code).
-type Rule struct {
-	Name     string // fixed, e.g. "half-missing-stored-energy"
-	Severity lang.Severity
-	Sees     string  // what fires
-	Silent   string  // when it stays silent
-	Formula  string  // the physics in one formula
-	Source   string  // published source, or "common practice", "from memory"
-	Wrong    Example // a note on which it fires
-	Right    Example // the same note put right
-	Run      func(*Pass) error
+// IsWaived reports whether the author answers for the finding in the note.
+func (f *Finding) IsWaived() bool { return f.WaivedBy.End > f.WaivedBy.Start }
+
+// compare is the total order of findings.
+func compare(a, b Finding) int {
+	return cmp.Or(
+		cmp.Compare(a.Path, b.Path),
+		cmp.Compare(a.Span.Start, b.Span.Start),
+		cmp.Compare(a.Span.End, b.Span.End),
+		cmp.Compare(a.Rule, b.Rule),
+		cmp.Compare(b.Severity, a.Severity), // of two, the graver is kept
+		cmp.Compare(a.Message, b.Message),
+		cmp.Compare(a.Detail, b.Detail),
+	)
 }
 
-// Example is a whole note of a few lines, executed by the tests.
-type Example struct{ Note string }
-
-// Pass is one run of one rule over one note.
-type Pass struct {
-	Rule   *Rule
-	Note   *lang.Note
-	report func(lang.Fault)
+// sortUnique sorts the findings and keeps one for each file, place and rule.
+func sortUnique(found []Finding) []Finding {
+	slices.SortFunc(found, compare)
+	return slices.CompactFunc(found, func(a, b Finding) bool {
+		return a.Path == b.Path && a.Span == b.Span && a.Rule == b.Rule
+	})
 }
 
-// Report files a finding; Rule is set, and Severity unless the rule set it.
-func (p *Pass) Report(f lang.Fault) {
-	f.Rule = p.Rule.Name
-	if f.Severity == 0 {
-		f.Severity = p.Rule.Severity
-	}
-	p.report(f)
-}
-
-// Config is what a run obeys.
-type Config struct {
-	Rules    []*Rule
-	Severity map[string]lang.Severity // overrides by rule name; 0 switches the rule off
-}
-
-// Run gives the findings of a note: those of the language and those of the
-// rules, waivers applied, sorted by place and rule. The error is non-nil only
-// when ctx is cancelled or a rule is broken.
-func Run(ctx context.Context, note *lang.Note, cfg Config) ([]Finding, error) {
-	var out []Finding
-	for _, f := range note.Faults {
-		out = append(out, Finding{Fault: f, Path: note.Path})
-	}
-	return out, ctx.Err()
+// overlap reports whether two places share text; an empty place counts as the
+// byte that follows it.
+func overlap(a, b lang.Span) bool {
+	return a.Start < max(b.End, b.Start+1) && b.Start < max(a.End, a.Start+1)
 }

@@ -1,0 +1,109 @@
+package check
+
+import (
+	"context"
+	"errors"
+
+	"inkjoule/lang"
+)
+
+// Config is what a run obeys.
+type Config struct {
+	Rules    []*Rule
+	Severity map[string]lang.Severity // overrides by rule name; 0 switches the rule off
+}
+
+// Run gives the findings of a note: those of the language and those of the
+// rules, waivers applied, sorted by place and rule. The error is non-nil only
+// when ctx is cancelled or a rule is broken (*Broken, joined); the findings are
+// then those of everything else, and nothing after a cancellation.
+func Run(ctx context.Context, note *lang.Note, cfg Config) ([]Finding, error) {
+	catalogue, _ := NewCatalogue(cfg.Rules) // what is wrong with a rule is said at start
+	return Runner{catalogue, cfg}.Run(ctx, note)
+}
+
+// Runner runs one configuration over many notes. It may be used from several
+// goroutines.
+type Runner struct {
+	catalogue *Catalogue
+	cfg       Config
+}
+
+// NewRunner validates the rules once; see NewCatalogue.
+func NewRunner(cfg Config) (Runner, error) {
+	catalogue, err := NewCatalogue(cfg.Rules)
+	return Runner{catalogue, cfg}, err
+}
+
+// Catalogue gives everything that the runner can find.
+func (r Runner) Catalogue() *Catalogue { return r.catalogue }
+
+// Run reviews one note; see the function Run.
+func (r Runner) Run(ctx context.Context, note *lang.Note) ([]Finding, error) {
+	found, broken := r.collect(ctx, note)
+	if err := ctx.Err(); err != nil {
+		return nil, err
+	}
+	found = sortUnique(found)
+	p := newPlaces(note)
+	w := newWaiving(note, p, r.catalogue)
+	w.apply(found)
+	found = prevail(found, p, r.catalogue)
+	w.unused(found)
+	found = sortUnique(append(found, r.wanted(w.said)...))
+	r.grade(found)
+	return found, broken
+}
+
+// collect gathers the findings of the language and of every rule that is on.
+func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error) {
+	var found []Finding
+	file := func(f lang.Fault) { found = append(found, Finding{Fault: f, Path: note.Path}) }
+	for _, f := range note.Faults {
+		file(f)
+	}
+	found = r.wanted(found)
+	var broken []error
+	for _, rule := range r.cfg.Rules {
+		if ctx.Err() != nil {
+			return nil, nil
+		}
+		if rule.Run == nil || r.off(rule.Name) {
+			continue
+		}
+		if b := rule.apply(note, file); b != nil {
+			broken = append(broken, b)
+		}
+	}
+	return found, errors.Join(broken...)
+}
+
+// wanted leaves the findings that the configuration does not switch off.
+func (r Runner) wanted(found []Finding) []Finding {
+	kept := found[:0]
+	for _, f := range found {
+		if !r.off(f.Rule) {
+			kept = append(kept, f)
+		}
+	}
+	return kept
+}
+
+// off reports whether the configuration switches a finding off. What cannot be
+// waived cannot be switched off either.
+func (r Runner) off(name string) bool {
+	severity, set := r.cfg.Severity[name]
+	entry := r.catalogue.Find(name)
+	return set && severity == 0 && (entry == nil || !entry.Firm)
+}
+
+// grade applies the configured severities.
+func (r Runner) grade(found []Finding) {
+	for i := range found {
+		f := &found[i].Fault
+		entry := r.catalogue.Find(f.Rule)
+		if s, set := r.cfg.Severity[f.Rule]; set && s != 0 && (entry == nil || !entry.Firm) {
+			f.Severity = r.catalogue.severity(f, s)
+		}
+	}
+}
