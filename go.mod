@@ -1,6 +1,6 @@
 module inkjoule
 
-go 1.26
+go 1.26.0
 
 require (
 	github.com/Knetic/govaluate v3.0.0+incompatible // indirect
@@ -16,6 +16,8 @@ require (
 	go.lsp.dev/protocol v1.0.1 // indirect
 	go.lsp.dev/uri v1.0.1 // indirect
 	go.uber.org/goleak v1.3.0 // indirect
+	golang.org/x/sys v0.50.0 // indirect
+	golang.org/x/term v0.48.0 // indirect
 	gonum.org/v1/gonum v0.17.0 // indirect
 	pgregory.net/rapid v1.3.0 // indirect
 )

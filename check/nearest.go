@@ -1,10 +1,10 @@
 package check
 
 // Nearest gives the name among names that a misspelt one most probably means,
-// or "" where none is near: at most a third of the letters may differ. Of two
+// or "" where none is near: at most two letters, or a third of a longer name, may differ. Of two
 // equally near the first is taken.
 func Nearest(name string, names []string) string {
-	best, least := "", len(name)/3+1
+	best, least := "", min(max(2, len(name)/3), len(name)-1)+1
 	for _, n := range names {
 		if d := distance(name, n, least); d < least {
 			best, least = n, d

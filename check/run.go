@@ -89,12 +89,18 @@ func (r Runner) wanted(found []Finding) []Finding {
 	return kept
 }
 
-// off reports whether the configuration switches a finding off. What cannot be
-// waived cannot be switched off either.
+// off reports whether a finding is switched off, by the configuration or
+// because it is so by default. What cannot be waived cannot be switched off.
 func (r Runner) off(name string) bool {
 	severity, set := r.cfg.Severity[name]
 	entry := r.catalogue.Find(name)
-	return set && severity == 0 && (entry == nil || !entry.Firm)
+	switch {
+	case entry == nil:
+		return set && severity == 0
+	case set:
+		return severity == 0 && !entry.Firm
+	}
+	return entry.Off
 }
 
 // grade applies the configured severities.
