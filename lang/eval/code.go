@@ -1,0 +1,282 @@
+package eval
+
+import "slices"
+
+// Code is a compiled expression. The zero Code is not valid.
+type Code struct {
+	Type Type
+	// Real evaluates a real number without allocating and without derivatives;
+	// nil unless Type is a real number.
+	Real func(*Frame) float64
+	// Any evaluates a value of any type, with its tangent.
+	Any func(*Frame) Value
+
+	vec   func(*Frame) vec3 // Real's counterpart for real vectors, or nil
+	slots int               // how many slots a frame needs
+	*info
+}
+
+// info is what is known of a Code at compile time. It is shared and not
+// changed once built.
+type info struct {
+	reads  reads
+	cost   int64 // closures run by one evaluation, loops and calls counted once
+	konst  bool  // a constant, its value in value
+	value  Value
+	slot   int // the slot that it reads, if it is nothing but a slot; else -1
+	null   bool
+	breaks []breaks
+	diff   func(*differ) (Code, error)
+}
+
+// vec3 is a real vector in registers.
+type vec3 struct{ x, y, z float64 }
+
+// reads is the set of slots that a Code reads, sorted; all stands for a set too
+// large to be worth keeping.
+type reads struct {
+	slots []int
+	all   bool
+}
+
+const maxReads = 64
+
+func (r reads) has(slot int) bool {
+	if r.all {
+		return true
+	}
+	_, found := slices.BinarySearch(r.slots, slot)
+	return found
+}
+
+// with is the union; it shares storage where one set holds the other.
+func (r reads) with(s reads) reads {
+	switch {
+	case r.all || len(s.slots) == 0 && !s.all:
+		return r
+	case s.all || len(r.slots) == 0:
+		return s
+	}
+	u := append(slices.Clone(r.slots), s.slots...)
+	slices.Sort(u)
+	u = slices.Compact(u)
+	if len(u) > maxReads {
+		return reads{all: true}
+	}
+	return reads{slots: u}
+}
+
+// without removes bound slots.
+func (r reads) without(slots ...int) reads {
+	if r.all || !slices.ContainsFunc(slots, r.has) {
+		return r
+	}
+	return reads{slots: slices.DeleteFunc(slices.Clone(r.slots), func(s int) bool {
+		return slices.Contains(slots, s)
+	})}
+}
+
+// Reads reports whether the code may read the slot.
+func (c Code) Reads(slot int) bool { return c.info.reads.has(slot) }
+
+// Constant is the value of code that reads nothing, and whether it is that.
+func (c Code) Constant() (Value, bool) { return c.value, c.konst }
+
+// number is the constant real number that the code is.
+func (c Code) number() (float64, bool) {
+	return real(c.value.x), c.konst && c.Type.IsReal()
+}
+
+// Const is a constant; its tangent is dropped.
+func Const(v Value) Code {
+	v = v.Primal()
+	c := Code{Type: v.typ, Any: func(*Frame) Value { return v }}
+	c.info = &info{cost: 1, konst: true, value: v, slot: -1}
+	switch v.typ {
+	case Type{}:
+		x := real(v.x)
+		c.Real = func(*Frame) float64 { return x }
+	case Type{Shape: Vector}:
+		w := v.vec3()
+		c.vec = func(*Frame) vec3 { return w }
+	}
+	t := v.typ
+	c.diff = func(*differ) (Code, error) { return nullOf(t), nil }
+	return c
+}
+
+// Num is the constant real number x.
+func Num(x float64) Code { return Const(Real(x)) }
+
+// Slot reads slot i, which must hold a value of type t whenever it runs.
+func Slot(i int, t Type) Code {
+	c := Code{Type: t, Any: func(f *Frame) Value { return f.slots[i] }, slots: i + 1}
+	c.info = &info{cost: 1, slot: i, reads: reads{slots: []int{i}}}
+	switch t {
+	case Type{}:
+		c.Real = func(f *Frame) float64 { return real(f.slots[i].x) }
+	case Type{Shape: Vector}:
+		c.vec = func(f *Frame) vec3 { return f.slots[i].vec3() }
+	}
+	c.diff = func(d *differ) (Code, error) {
+		if d.slot == i {
+			return unit(t)
+		}
+		return nullOf(t), nil
+	}
+	return c
+}
+
+func (v Value) vec3() vec3 {
+	if v.many == nil {
+		return vec3{}
+	}
+	return vec3{real(v.many.v[0]), real(v.many.v[1]), real(v.many.v[2])}
+}
+
+// over starts the info of a code that evaluates its arguments once each.
+func over(args ...Code) *info {
+	n := &info{cost: 1, slot: -1}
+	for _, a := range args {
+		n.reads = n.reads.with(a.info.reads)
+		n.cost = min(n.cost+a.cost, 1<<40)
+		n.breaks = joinBreaks(n.breaks, a.breaks)
+	}
+	return n
+}
+
+func slotsOf(args ...Code) (n int) {
+	for _, a := range args {
+		n = max(n, a.slots)
+	}
+	return n
+}
+
+// build completes a code from its general closure and its fast one. Any takes
+// the fast path whenever no tangents are live. Constant arguments are folded
+// unless they fault, which is then left to each run.
+func build(c Code, args ...Code) Code {
+	c.info = over(args...)
+	c.slots = slotsOf(args...)
+	general := c.Any
+	switch fast, vec := c.Real, c.vec; {
+	case fast != nil:
+		c.Any = func(f *Frame) Value {
+			if f.dual {
+				return general(f)
+			}
+			return Value{x: complex(fast(f), 0)}
+		}
+	case vec != nil:
+		c.Any = func(f *Frame) Value {
+			if f.dual {
+				return general(f)
+			}
+			return vec(f).value()
+		}
+	}
+	if folded, ok := fold(c, args); ok {
+		return folded
+	}
+	return c
+}
+
+func (v vec3) value() Value { return Vec(v.x, v.y, v.z) }
+
+func fold(c Code, args []Code) (Code, bool) {
+	for _, a := range args {
+		if !a.konst {
+			return Code{}, false
+		}
+	}
+	f := &Frame{ok: true, memory: 1 << 20, chunk: 1 << 20}
+	v := c.Any(f)
+	if !f.ok || !v.Finite() {
+		return Code{}, false
+	}
+	return Const(v), true
+}
+
+// Let evaluates the arguments, stores them in the slots and then evaluates the
+// body: a call of a function of the note, or a shared subexpression. The slots
+// are the body's own. Each call counts against the budget.
+func Let(node int, slots []int, args []Code, body Code) Code {
+	if len(slots) != len(args) || len(args) == 0 {
+		return body
+	}
+	c := body
+	cost := min(body.cost, 1<<20)
+	if bind := bindReal(slots, args); bind != nil && body.Real != nil {
+		c.Real = func(f *Frame) float64 {
+			if !f.spend(node, cost) {
+				return 0
+			}
+			bind(f)
+			return body.Real(f)
+		}
+	}
+	general := func(f *Frame) Value {
+		if !f.spend(node, cost) {
+			return zero(body.Type)
+		}
+		bindAny(f, slots, args)
+		return body.Any(f)
+	}
+	if body.Real != nil && c.Real == nil {
+		c.Real = func(f *Frame) float64 { return real(general(f).x) }
+	}
+	c.vec, c.Any = nil, general
+	c.info = letInfo(slots, args, body)
+	c.slots = max(slotsOf(args...), body.slots, slices.Max(slots)+1)
+	c.diff = func(d *differ) (Code, error) { return d.let(node, slots, args, body) }
+	return c
+}
+
+func letInfo(slots []int, args []Code, body Code) *info {
+	n := over(args...)
+	n.reads = n.reads.with(body.info.reads.without(slots...))
+	n.cost++
+	n.breaks = joinBreaks(n.breaks, letBreaks(slots, args, body))
+	return n
+}
+
+// bindReal is the binding of up to three real arguments without allocation, or
+// nil where they are not all real numbers.
+func bindReal(slots []int, args []Code) func(*Frame) {
+	for _, a := range args {
+		if a.Real == nil {
+			return nil
+		}
+	}
+	switch len(args) {
+	case 1:
+		s, a := slots[0], args[0].Real
+		return func(f *Frame) { f.slots[s] = Value{x: complex(a(f), 0)} }
+	case 2:
+		s, t, a, b := slots[0], slots[1], args[0].Real, args[1].Real
+		return func(f *Frame) {
+			x, y := a(f), b(f)
+			f.slots[s], f.slots[t] = Real(x), Real(y)
+		}
+	case 3:
+		s, t, u, a, b, c := slots[0], slots[1], slots[2], args[0].Real, args[1].Real, args[2].Real
+		return func(f *Frame) {
+			x, y, z := a(f), b(f), c(f)
+			f.slots[s], f.slots[t], f.slots[u] = Real(x), Real(y), Real(z)
+		}
+	}
+	return nil
+}
+
+// bindAny evaluates all arguments before it stores any: an argument may call
+// the same function.
+func bindAny(f *Frame, slots []int, args []Code) {
+	var few [4]Value
+	vals := few[:0]
+	for _, a := range args {
+		vals = append(vals, a.Any(f))
+	}
+	for i, v := range vals {
+		f.slots[slots[i]] = v
+	}
+}
