@@ -1,0 +1,287 @@
+package kind
+
+// The kinds that rules and inference name. A kind that none of them names needs
+// no constant: it is a line at the end of the table.
+const (
+	_ ID = iota
+	ElectricCurrent
+	ElectricCharge
+	VolumicElectricCharge
+	AreicElectricCharge
+	LineicElectricCharge
+	ElectricDipoleMoment
+	ElectricPolarization
+	ElectricCurrentDensity
+	LineicElectricCurrent
+	ElectricFieldStrength
+	ElectricPotential
+	Voltage
+	ElectricFluxDensity
+	ElectricFlux
+	Capacitance
+	DifferentialCapacitance
+	EnergyEquivalentCapacitance
+	ChargeEquivalentCapacitance
+	LineicCapacitance
+	Permittivity
+	RelativePermittivity
+	ElectricSusceptibility
+	DielectricStrength
+	MagneticFluxDensity
+	MagneticFlux
+	LinkedFlux
+	MagneticMoment
+	Magnetization
+	MagneticPolarization
+	MagneticFieldStrength
+	Permeability
+	RelativePermeability
+	InitialPermeability
+	AmplitudePermeability
+	IncrementalPermeability
+	EffectivePermeability
+	Coercivity
+	MagneticVectorPotential
+	MagnetomotiveForce
+	CurrentLinkage
+	Reluctance
+	Inductance
+	MutualInductance
+	LineicInductance
+	Conductivity
+	Resistivity
+	Resistance
+	Reactance
+	Impedance
+	Conductance
+	Susceptance
+	Admittance
+	SurfaceResistance
+	Energy
+	SourceWork
+	Coenergy
+	ActiveEnergy
+	EnergyDensity
+	CoenergyDensity
+	LineicEnergy
+	AreicEnergy
+	Power
+	ApparentPower
+	ComplexPower
+	ReactivePower
+	PowerDensity
+	PowerFluxDensity
+	LineicPower
+	LineicReactivePower
+	LineicCurrent
+	SafetyFactor
+	Utilisation
+	Ratio
+	Efficiency
+	DutyRatio
+	EquivalentRadiatedPower
+	EIRP
+	ERP
+	SpecificAbsorptionRate
+	SpecificPower
+	LossFactor
+	LossAngle
+	PhaseDifference
+	QualityFactor
+	PowerFactor
+	CouplingFactor
+	LeakageFactor
+	NumberOfTurns
+	Frequency
+	AngularFrequency
+	Period
+	Time
+	TimeConstant
+	Wavelength
+	Length
+	Thickness
+	Radius
+	SkinDepth
+	Area
+	Volume
+	Angle
+	SolidAngle
+	PhaseSpeed
+	GroupSpeed
+	AttenuationCoefficient
+	PhaseCoefficient
+	PropagationCoefficient
+	RefractiveIndex
+	Stiffness
+	HeatingRate
+	Mass
+	Density
+	Force
+	LineicForce
+	Torque
+	Pressure
+	Temperature
+	TemperatureRise
+	ThermalConductivity
+	ThermalResistance
+	SpecificHeatCapacity
+	Heat
+	PowerRatio
+	AmplitudeRatio
+	MagneticSusceptibility
+	DisplacementCurrent
+	DisplacementCurrentDensity
+	Permeance
+	Speed
+)
+
+// table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
+// coherent SI unit, class, the kind that it specializes, plain (the one
+// plausible kind of its dimension).
+var table = [...]Kind{
+	// IEC 80000-6: charges, currents, electric field.
+	ElectricCurrent:             {"electric current", "current", "I", "A", ClassAmplitude, 0, false},
+	ElectricCharge:              {"electric charge", "charge", "Q", "C", ClassAmplitude, 0, true},
+	VolumicElectricCharge:       {"volumic electric charge", "charge density; volume charge density; electric charge density", "ρ", "C/m^3", ClassAmplitude, 0, true},
+	AreicElectricCharge:         {"areic electric charge", "surface charge density; surface density of electric charge", "σ", "C/m^2", ClassAmplitude, 0, false},
+	LineicElectricCharge:        {"lineic electric charge", "line charge density; linear density of electric charge", "τ", "C/m", ClassAmplitude, 0, true},
+	ElectricDipoleMoment:        {"electric dipole moment", "", "p", "C·m", ClassAmplitude, 0, true},
+	ElectricPolarization:        {"electric polarization", "polarization; electric polarisation; polarisation", "P", "C/m^2", ClassAmplitude, 0, false},
+	ElectricCurrentDensity:      {"electric current density", "current density; areic electric current", "J", "A/m^2", ClassAmplitude, 0, true},
+	LineicElectricCurrent:       {"lineic electric current", "surface current density; linear electric current density", "J_S", "A/m", ClassAmplitude, 0, false},
+	ElectricFieldStrength:       {"electric field strength", "electric field", "E", "V/m", ClassAmplitude, 0, true},
+	ElectricPotential:           {"electric potential", "potential", "φ", "V", ClassAmplitude, 0, false},
+	Voltage:                     {"voltage", "potential difference; electric potential difference; electric tension", "U", "V", ClassAmplitude, 0, false},
+	ElectricFluxDensity:         {"electric flux density", "electric displacement", "D", "C/m^2", ClassAmplitude, 0, false},
+	ElectricFlux:                {"electric flux", "", "Ψ", "C", ClassAmplitude, 0, false},
+	Capacitance:                 {"capacitance", "", "C", "F", ClassOther, 0, true},
+	DifferentialCapacitance:     {"differential capacitance", "", "C", "F", ClassOther, Capacitance, false},
+	EnergyEquivalentCapacitance: {"energy-equivalent capacitance", "", "C", "F", ClassOther, Capacitance, false},
+	ChargeEquivalentCapacitance: {"charge-equivalent capacitance", "", "C", "F", ClassOther, Capacitance, false},
+	LineicCapacitance:           {"lineic capacitance", "capacitance per length", "C′", "F/m", ClassOther, 0, false},
+	Permittivity:                {"permittivity", "", "ε", "F/m", ClassOther, 0, false},
+	RelativePermittivity:        {"relative permittivity", "", "ε_r", "1", ClassOther, 0, false},
+	ElectricSusceptibility:      {"electric susceptibility", "", "χ", "1", ClassOther, 0, false},
+	DielectricStrength:          {"dielectric strength", "breakdown strength", "E_bd", "V/m", ClassAmplitude, ElectricFieldStrength, false},
+
+	// Magnetic field.
+	MagneticFluxDensity:     {"magnetic flux density", "", "B", "T", ClassAmplitude, 0, false},
+	MagneticFlux:            {"magnetic flux", "", "Φ", "Wb", ClassAmplitude, 0, false},
+	LinkedFlux:              {"linked flux", "", "Ψ", "Wb", ClassAmplitude, 0, false},
+	MagneticMoment:          {"magnetic moment", "magnetic area moment", "m", "A·m^2", ClassAmplitude, 0, true},
+	Magnetization:           {"magnetization", "magnetisation", "M", "A/m", ClassAmplitude, 0, false},
+	MagneticPolarization:    {"magnetic polarization", "magnetic polarisation", "J_m", "T", ClassAmplitude, 0, false},
+	MagneticFieldStrength:   {"magnetic field strength", "magnetic field; magnetizing field", "H", "A/m", ClassAmplitude, 0, false},
+	Permeability:            {"permeability", "", "μ", "H/m", ClassOther, 0, false},
+	RelativePermeability:    {"relative permeability", "", "μ_r", "1", ClassOther, 0, false},
+	InitialPermeability:     {"initial permeability", "", "μ_i", "1", ClassOther, RelativePermeability, false},
+	AmplitudePermeability:   {"amplitude permeability", "", "μ_a", "1", ClassOther, RelativePermeability, false},
+	IncrementalPermeability: {"incremental permeability", "", "μ_Δ", "1", ClassOther, RelativePermeability, false},
+	EffectivePermeability:   {"effective permeability", "", "μ_e", "1", ClassOther, RelativePermeability, false},
+	Coercivity:              {"coercivity", "", "H_c", "A/m", ClassAmplitude, 0, false},
+	MagneticVectorPotential: {"magnetic vector potential", "", "A", "Wb/m", ClassAmplitude, 0, true},
+	MagnetomotiveForce:      {"magnetomotive force", "", "F_m", "A", ClassAmplitude, 0, false},
+	CurrentLinkage:          {"current linkage", "", "Θ", "A", ClassAmplitude, 0, false},
+	Reluctance:              {"reluctance", "", "R_m", "H^-1", ClassOther, 0, true},
+	Inductance:              {"inductance", "self inductance; self-inductance", "L", "H", ClassOther, 0, true},
+	MutualInductance:        {"mutual inductance", "", "M", "H", ClassOther, Inductance, false},
+	LineicInductance:        {"lineic inductance", "inductance per length", "L′", "H/m", ClassOther, 0, false},
+
+	// Conduction and networks.
+	Conductivity:      {"conductivity", "", "σ", "S/m", ClassOther, 0, true},
+	Resistivity:       {"resistivity", "", "ρ", "Ω·m", ClassOther, 0, true},
+	Resistance:        {"resistance", "", "R", "Ω", ClassOther, 0, false},
+	Reactance:         {"reactance", "", "X", "Ω", ClassOther, 0, false},
+	Impedance:         {"impedance", "complex impedance", "Z", "Ω", ClassOther, 0, false},
+	Conductance:       {"conductance", "", "G", "S", ClassOther, 0, false},
+	Susceptance:       {"susceptance", "", "B", "S", ClassOther, 0, false},
+	Admittance:        {"admittance", "complex admittance", "Y", "S", ClassOther, 0, false},
+	SurfaceResistance: {"surface resistance", "", "R_s", "Ω", ClassOther, 0, false},
+
+	// Energy and power.
+	Energy:                  {"energy", "work; stored energy", "W", "J", ClassEnergy, 0, false},
+	SourceWork:              {"source work", "energy drawn from a source", "W_s", "J", ClassSourceWork, Energy, false},
+	Coenergy:                {"coenergy", "", "W′", "J", ClassEnergy, 0, false},
+	ActiveEnergy:            {"active energy", "", "W", "J", ClassPower, Energy, false},
+	EnergyDensity:           {"energy density", "volumic electromagnetic energy; electromagnetic energy density", "w", "J/m^3", ClassEnergy, 0, false},
+	CoenergyDensity:         {"coenergy density", "", "w′", "J/m^3", ClassEnergy, 0, false},
+	LineicEnergy:            {"lineic energy", "energy per length", "W′", "J/m", ClassEnergy, 0, false},
+	AreicEnergy:             {"areic energy", "energy per area", "W″", "J/m^2", ClassEnergy, 0, false},
+	Power:                   {"power", "active power; electric power", "P", "W", ClassPower, 0, false},
+	ApparentPower:           {"apparent power", "", "S", "V·A", ClassPower, 0, false},
+	ComplexPower:            {"complex power", "", "S", "V·A", ClassPower, 0, false},
+	ReactivePower:           {"reactive power", "", "Q", "var", ClassPower, 0, false},
+	PowerDensity:            {"power density", "volumic power; Joule heating", "p", "W/m^3", ClassPower, 0, true},
+	PowerFluxDensity:        {"power flux density", "Poynting vector; irradiance", "S", "W/m^2", ClassPowerFlux, 0, true},
+	LineicPower:             {"lineic power", "loss per length", "P′", "W/m", ClassPower, 0, false},
+	LineicReactivePower:     {"lineic reactive power", "charging power; charging power per length", "Q′", "var/m", ClassPower, 0, false},
+	LineicCurrent:           {"lineic current", "charging current per length; charging current", "I′", "A/m", ClassAmplitude, 0, false},
+	EquivalentRadiatedPower: {"equivalent radiated power", "", "P_e", "W", ClassPower, 0, false},
+	EIRP:                    {"equivalent isotropically radiated power", "EIRP", "P_i", "W", ClassPower, EquivalentRadiatedPower, false},
+	ERP:                     {"effective radiated power", "ERP", "P_d", "W", ClassPower, EquivalentRadiatedPower, false},
+	SpecificAbsorptionRate:  {"specific absorption rate", "SAR", "SAR", "W/kg", ClassPower, 0, false},
+	SpecificPower:           {"specific power", "core loss per mass", "p_m", "W/kg", ClassPower, 0, false},
+
+	// Ratios.
+	SafetyFactor:    {"safety factor", "", "S", "1", ClassOther, 0, false},
+	Utilisation:     {"utilisation", "utilization", "u", "1", ClassOther, 0, false},
+	Ratio:           {"ratio", "gain; margin; level difference", "k", "1", ClassOther, 0, false},
+	Efficiency:      {"efficiency", "", "η", "1", ClassPower, 0, false},
+	DutyRatio:       {"duty ratio", "duty cycle; duty factor", "D", "1", ClassOther, 0, false},
+	LossFactor:      {"loss factor", "loss tangent; dissipation factor", "d", "1", ClassOther, 0, false},
+	LossAngle:       {"loss angle", "", "δ", "rad", ClassOther, Angle, false},
+	PhaseDifference: {"phase difference", "", "φ", "rad", ClassOther, Angle, false},
+	QualityFactor:   {"quality factor", "", "Q", "1", ClassOther, 0, false},
+	PowerFactor:     {"power factor", "", "λ", "1", ClassOther, 0, false},
+	CouplingFactor:  {"coupling factor", "", "k", "1", ClassOther, 0, false},
+	LeakageFactor:   {"leakage factor", "", "σ", "1", ClassOther, 0, false},
+	NumberOfTurns:   {"number of turns", "number of turns in a winding", "N", "1", ClassOther, 0, false},
+
+	// ISO 80000-3: space and time; waves.
+	Frequency:              {"frequency", "", "f", "Hz", ClassOther, 0, true},
+	AngularFrequency:       {"angular frequency", "", "ω", "rad/s", ClassOther, 0, true},
+	Period:                 {"period", "period duration", "T", "s", ClassOther, Time, false},
+	Time:                   {"time", "duration", "t", "s", ClassOther, 0, true},
+	TimeConstant:           {"time constant", "", "τ", "s", ClassOther, Time, false},
+	Wavelength:             {"wavelength", "", "λ", "m", ClassOther, Length, false},
+	Length:                 {"length", "", "l", "m", ClassOther, 0, true},
+	Thickness:              {"thickness", "", "d", "m", ClassOther, Length, false},
+	Radius:                 {"radius", "", "r", "m", ClassOther, Length, false},
+	SkinDepth:              {"skin depth", "penetration depth", "δ", "m", ClassOther, Length, false},
+	Area:                   {"area", "", "A", "m^2", ClassOther, 0, true},
+	Volume:                 {"volume", "", "V", "m^3", ClassOther, 0, true},
+	Angle:                  {"angle", "plane angle", "α", "rad", ClassOther, 0, true},
+	SolidAngle:             {"solid angle", "", "Ω", "sr", ClassOther, 0, true},
+	PhaseSpeed:             {"phase speed", "phase velocity", "c", "m/s", ClassOther, Speed, false},
+	GroupSpeed:             {"group speed", "group velocity", "c_g", "m/s", ClassOther, Speed, false},
+	AttenuationCoefficient: {"attenuation coefficient", "attenuation constant", "α", "m^-1", ClassOther, 0, false},
+	PhaseCoefficient:       {"phase coefficient", "phase constant", "β", "m^-1", ClassOther, 0, false},
+	PropagationCoefficient: {"propagation coefficient", "propagation constant", "γ", "m^-1", ClassOther, 0, false},
+	RefractiveIndex:        {"refractive index", "", "n", "1", ClassOther, 0, false},
+
+	// ISO 80000-4 and -5: mechanics, heat.
+	Stiffness:            {"stiffness", "", "k", "N/m", ClassOther, 0, false},
+	HeatingRate:          {"heating rate", "", "q", "K/s", ClassOther, 0, true},
+	Mass:                 {"mass", "", "m", "kg", ClassOther, 0, true},
+	Density:              {"density", "mass density", "ρ", "kg/m^3", ClassOther, 0, true},
+	Force:                {"force", "", "F", "N", ClassForce, 0, false},
+	LineicForce:          {"lineic force", "force per length", "F′", "N/m", ClassForce, 0, false},
+	Torque:               {"torque", "moment of force", "T", "N·m", ClassForce, 0, false},
+	Pressure:             {"pressure", "stress; electrostatic pressure; magnetic pressure", "p", "Pa", ClassForce, 0, false},
+	Temperature:          {"temperature", "thermodynamic temperature; absolute temperature", "T", "K", ClassOther, 0, false},
+	TemperatureRise:      {"temperature rise", "temperature difference", "ΔT", "K", ClassOther, 0, false},
+	ThermalConductivity:  {"thermal conductivity", "", "λ", "W/(m·K)", ClassOther, 0, true},
+	ThermalResistance:    {"thermal resistance", "", "R_th", "K/W", ClassOther, 0, true},
+	SpecificHeatCapacity: {"specific heat capacity", "", "c", "J/(kg·K)", ClassOther, 0, true},
+	Heat:                 {"heat", "", "Q", "J", ClassPower, Energy, false},
+
+	// Further kinds of ISO/IEC 80000 that notes use; the two ratios decide
+	// between 10 and 20 lg where `ratio` leaves it open.
+	PowerRatio:                 {"power ratio", "power gain", "G", "1", ClassPower, Ratio, false},
+	AmplitudeRatio:             {"amplitude ratio", "voltage ratio; current ratio; field ratio; voltage gain", "A", "1", ClassAmplitude, Ratio, false},
+	MagneticSusceptibility:     {"magnetic susceptibility", "", "χ_m", "1", ClassOther, 0, false},
+	DisplacementCurrent:        {"displacement current", "", "I_D", "A", ClassAmplitude, ElectricCurrent, false},
+	DisplacementCurrentDensity: {"displacement current density", "", "J_D", "A/m^2", ClassAmplitude, ElectricCurrentDensity, false},
+	Permeance:                  {"permeance", "", "Λ", "H", ClassOther, 0, false},
+	Speed:                      {"speed", "velocity", "v", "m/s", ClassOther, 0, true},
+}
