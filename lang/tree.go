@@ -165,9 +165,11 @@ type Triple struct {
 // Call is a function call, including the forms that bind a variable:
 // `integral(BODY for x from A to B)`, `integral(BODY over REGION)`,
 // `solve(LEFT = RIGHT for x from A to B)`, `derivative(BODY for x at A)`,
-// `sum(BODY for n from 1 to 20)`.
+// `sum(BODY for n from 1 to 20)`. Of is what the function belongs to, as in
+// `mica.eps_r(300 K)`, else nil.
 type Call struct {
 	Node
+	Of    Expr
 	Fn    Name
 	Args  []Expr
 	Equal Expr     // right side of solve's equation, else nil
@@ -176,8 +178,7 @@ type Call struct {
 	Unit  *UnitPhrase
 }
 
-// Range is a clause `for VAR from A to B`, or `for VAR at A`. Where is the
-// name of `PROPERTY at T = T_hot` conditions and of validity ranges.
+// Range is a clause `for VAR from A to B`, or `for VAR at A` of a derivative.
 type Range struct {
 	Node
 	Var      Expr // *Name, or *Member for a table's column
@@ -219,165 +220,3 @@ type Quote struct {
 	Node
 	Text string
 }
-
-// Statement is one of the statement nodes below.
-type Statement interface {
-	Tree
-	statement()
-}
-
-// Definition is
-// NAME [(PARAM, …)] [in MEDIUM] [, [QUALIFIER] [KIND]] = EXPR {= EXPR} {for …} [per "…"].
-// A medium's property is a definition too.
-type Definition struct {
-	Node
-	Name    Ident
-	Params  []Ident
-	In      *Ident
-	Kind    *Words // text after the comma: qualifier and kind, undivided
-	Members []Expr // the chain of equals; Members[0] defines
-	For     []*Range
-	Pieces  []*Piece // further pieces `, EXPR for VAR from A to B`; Members[0] with For is the first
-	Per     *Quote
-}
-
-// Piece is one further piece of a piecewise definition.
-type Piece struct {
-	Node
-	X   Expr
-	For *Range
-	Per *Quote
-}
-
-// Medium is `medium NAME: ADJECTIVES` with its indented properties.
-type Medium struct {
-	Node
-	Name       Ident
-	Adjectives []*Words
-	Properties []*Definition
-	Per        *Quote
-}
-
-// Region is `region NAME [in MEDIUM]: SHAPE`.
-type Region struct {
-	Node
-	Name  Ident
-	In    *Ident
-	Shape *Call
-	Per   *Quote
-}
-
-// Table is `table NAME[, linear]: COLUMN [UNIT], …` with its rows.
-type Table struct {
-	Node
-	Name    Ident
-	Linear  bool
-	File    *Quote // `table NAME from "file.csv"`
-	Columns []*Column
-	Rows    []*Row
-	Per     *Quote
-}
-
-// Column is a column's head; Formula is set for a computed column.
-type Column struct {
-	Node
-	Name    Ident
-	Unit    *UnitPhrase // nil: none was written
-	Formula Expr
-}
-
-// Row is a line of cells; Cells are literals without units.
-type Row struct {
-	Node
-	Cells []*Literal
-}
-
-// Regime is `regime: static | harmonic at f = EXPR | transient`.
-type Regime struct {
-	Node
-	Word Words
-	Name *Ident
-	X    Expr
-	Per  *Quote
-}
-
-// Uses is `uses "PATH" [as NAME]`.
-type Uses struct {
-	Node
-	Path Quote
-	As   *Ident
-}
-
-// Relation is `a < b`, a chain of such, for assume, criterion and check.
-// Ops has one operator fewer than Terms: "<", "<=", ">", ">=", "<<", ">>", "=".
-type Relation struct {
-	Node
-	Terms []Expr
-	Ops   []string
-}
-
-// Assume is `assume REL` or `assume "text"`.
-type Assume struct {
-	Node
-	Rel  *Relation
-	Text *Quote
-	Per  *Quote
-}
-
-// Criterion is `criterion REL [per "…"]`.
-type Criterion struct {
-	Node
-	Rel *Relation
-	Per *Quote
-}
-
-// Check is `check REL [per "…"]`.
-type Check struct {
-	Node
-	Rel *Relation
-	Per *Quote
-}
-
-// Safety is `safety "text" [per "…"]`.
-type Safety struct {
-	Node
-	Text Quote
-	Per  *Quote
-}
-
-// Waive is `waive RULE [for NAME[.PROPERTY]]: "reason"`.
-type Waive struct {
-	Node
-	Rule   Words
-	For    Expr // *Name or *Member, or nil for the whole note
-	Reason Quote
-}
-
-// Plot is `plot EXPR, … for VAR from A to B`.
-type Plot struct {
-	Node
-	X   []Expr
-	For *Range
-	Per *Quote
-}
-
-// Unread is a statement that could not be parsed; Name is what it would have
-// defined where that much is clear, so that its uses are unknown, not wrong.
-type Unread struct {
-	Node
-	Name *Ident
-}
-
-func (*Definition) statement() {}
-func (*Medium) statement()     {}
-func (*Region) statement()     {}
-func (*Table) statement()      {}
-func (*Regime) statement()     {}
-func (*Uses) statement()       {}
-func (*Assume) statement()     {}
-func (*Criterion) statement()  {}
-func (*Check) statement()      {}
-func (*Safety) statement()     {}
-func (*Waive) statement()      {}
-func (*Plot) statement()       {}
-func (*Unread) statement()     {}
