@@ -47,7 +47,7 @@ func (r *reader) peek() *lexer.Token {
 func (r *reader) ahead(n int) *lexer.Token {
 	at := r.lex.RawCursor()
 	for ; n > 0 && r.broken == nil; n-- {
-		if r.lex.Range(at, at + 1)[0].EOF() {
+		if r.lex.Range(at, at+1)[0].EOF() {
 			break
 		}
 		at++
@@ -55,7 +55,7 @@ func (r *reader) ahead(n int) *lexer.Token {
 	if r.broken != nil {
 		return &noToken
 	}
-	return &r.lex.Range(at, at + 1)[0]
+	return &r.lex.Range(at, at+1)[0]
 }
 
 // before is the token that was read last.
