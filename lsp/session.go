@@ -1,0 +1,108 @@
+package lsp
+
+import (
+	"context"
+	"log/slog"
+	"maps"
+	"runtime"
+	"sync"
+	"sync/atomic"
+	"time"
+
+	"go.lsp.dev/uri"
+)
+
+// session holds the state of a connection: the newest view, and the work that
+// follows from it.
+type session struct {
+	ctx     context.Context
+	stop    context.CancelFunc
+	log     *slog.Logger
+	analyse Analyser
+	peer    peer
+	disk    *disk
+	cpu     chan struct{} // one token for each analysis that may run
+	gate    sync.Mutex    // guards the start of work against the end of the session
+	work    sync.WaitGroup
+	publish sync.Mutex // orders the diagnostics that are pushed
+	pages   string     // address of the rules' documentation, which a rule name completes
+
+	refreshing atomic.Bool // a refresh is on its way
+
+	mu   sync.Mutex
+	view *view
+}
+
+// peer is what the session says to the client.
+type peer interface {
+	notify(method string, params any)
+	ask(ctx context.Context, method string, params, result any) error
+}
+
+// A view is the session at one moment. It never changes; a change makes a new
+// one. Requests hold the view of the moment when they arrived.
+type view struct {
+	*session
+	client  *client
+	folders []folder
+	docs    map[uri.URI]*snapshot // the open documents
+}
+
+func newSession(ctx context.Context, s *server) *session {
+	ctx, stop := context.WithCancel(ctx)
+	out := &session{
+		ctx: ctx, stop: stop, log: s.log, analyse: s.opt.Analyse, peer: s,
+		disk: newDisk(), pages: s.opt.Pages,
+		cpu: make(chan struct{}, max(1, runtime.GOMAXPROCS(0))),
+	}
+	out.view = &view{session: out, client: &client{}, docs: map[uri.URI]*snapshot{}}
+	return out
+}
+
+// start takes over what initialize has settled.
+func (s *session) start(c *client, h *hello) {
+	s.change(func(v *view) {
+		v.client = c
+		v.folders = foldersOf(h)
+	})
+}
+
+// now returns the newest view.
+func (s *session) now() *view {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	return s.view
+}
+
+// change replaces the view by an edited copy and returns it.
+func (s *session) change(edit func(*view)) *view {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	next := *s.view
+	next.docs = maps.Clone(s.view.docs)
+	edit(&next)
+	s.view = &next
+	return s.view
+}
+
+// behind runs f on a goroutine of the session, unless the session has ended.
+func (s *session) behind(f func()) {
+	s.gate.Lock()
+	defer s.gate.Unlock()
+	if s.ctx.Err() == nil {
+		s.work.Go(f)
+	}
+}
+
+// close stops the work and waits for it, at most for the given time.
+func (s *session) close(most time.Duration) {
+	s.gate.Lock()
+	s.stop()
+	s.gate.Unlock() // from here on nothing is added to the work
+	done := make(chan struct{})
+	go func() { s.work.Wait(); close(done) }()
+	select {
+	case <-done:
+	case <-time.After(most):
+	}
+}
