@@ -44,6 +44,7 @@ type maker struct {
 func makers() []maker {
 	return []maker{
 		{"text", newText},
+		{"json", newJSON},
 	}
 }
 
