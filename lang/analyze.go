@@ -1,10 +1,269 @@
 package lang
 
-import "context"
+import (
+	"context"
+	"sort"
 
-type state struct{}
+	"inkjoule/lang/unit"
+)
+
+// This file drives the analysis and freezes its result.
+
+// state is what a frozen note keeps for lookups and for the next analysis.
+type state struct {
+	cells   map[string]*cell
+	all     []*cell
+	byStmt  map[*Stmt][]*cell
+	symbols map[string]*Symbol
+	inputs  int
+}
+
+func (s *state) cellOf(sym *Symbol) *cell {
+	if s == nil || sym == nil {
+		return nil
+	}
+	return s.cells[sym.Key]
+}
 
 func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
-	src := NewSource(text)
-	return &Note{Path: opt.Path, Script: &Script{Source: src}}, ctx.Err()
+	a := &analysis{opt: opt, ctx: ctx, cells: map[string]*cell{}, units: map[string]unitReading{}, firstSoft: map[string]*cell{}}
+	var previous *Script
+	if p := opt.Previous; p != nil && p.state != nil {
+		previous = p.Script
+		a.takeOver(p.state)
+	}
+	a.script = Read(text, previous)
+	a.constants()
+	a.declare()
+	a.imports()
+	a.link()
+	order := a.order()
+	a.machine = newMachine(ctx, len(a.all)+len(a.cells))
+	for _, c := range order {
+		if err := ctx.Err(); err != nil {
+			return nil, err
+		}
+		a.finish(c)
+	}
+	return a.freeze(), ctx.Err()
+}
+
+// takeOver keeps the finished cells of the previous analysis for reuse.
+func (a *analysis) takeOver(s *state) {
+	a.old = make(map[Tree]*cell, len(s.all))
+	for _, c := range s.all {
+		a.old[c.tree] = c
+	}
+	a.previous = s
+}
+
+// finish analyses one cell, or takes over its earlier result where its tree
+// and everything it needs are the same.
+func (a *analysis) finish(c *cell) {
+	if old := a.old[c.tree]; old != nil && old.same(c) {
+		c.adopt(old)
+	} else {
+		a.work(c)
+		c.made = c
+	}
+	if c.role != 0 && c.sym.Result.Known {
+		a.machine.frame.Set(c.slot, c.sym.Value)
+	}
+}
+
+// same reports whether the result of an earlier cell still holds: every cell
+// that it used is itself one that was taken over.
+func (c *cell) same(now *cell) bool {
+	if c.key != now.key || len(c.deps) != len(now.deps) || c.cyclic || now.cyclic || !sameCell(c.regime, now.regime) || !sameCell(c.owner, now.owner) {
+		return false
+	}
+	for i, d := range c.deps {
+		if !sameCell(d, now.deps[i]) {
+			return false
+		}
+	}
+	return true
+}
+
+// sameCell compares by the cell that did the work.
+func sameCell(a, b *cell) bool {
+	if a == nil || b == nil {
+		return a == b
+	}
+	return a.made == b.made
+}
+
+// adopt takes over what an earlier cell found.
+func (c *cell) adopt(old *cell) {
+	stmt, slot, deps, regime, owner := c.stmt, c.slot, c.deps, c.regime, c.owner
+	*c = *old
+	c.stmt, c.slot, c.deps, c.regime, c.owner = stmt, slot, deps, regime, owner
+	if c.judged != nil {
+		j := *c.judged
+		j.Stmt = stmt
+		c.judged = &j
+	}
+}
+
+// work analyses a cell from scratch.
+func (a *analysis) work(c *cell) {
+	if c.cyclic {
+		return
+	}
+	switch t := c.tree.(type) {
+	case *Definition:
+		a.define(c, t)
+	case *Regime:
+		a.regime(c, t)
+	case *Region:
+		a.region(c, t)
+	case *Table:
+		a.table(c, t)
+	case *Assume, *Criterion, *Check:
+		a.judge(c)
+	case *Plot:
+		a.plot(c, t)
+	case *Waive:
+		a.waive(c, t)
+	case *Medium:
+		a.adjectives(c, t)
+	}
+}
+
+// readUnit reads a unit phrase once for the note.
+func (a *analysis) readUnit(text string) unitReading {
+	r, ok := a.units[text]
+	if !ok {
+		r.unit, r.err = unit.Parse(text)
+		a.units[text] = r
+	}
+	return r
+}
+
+// freeze makes the note.
+func (a *analysis) freeze() *Note {
+	n := &Note{Path: a.opt.Path, Script: a.script}
+	st := &state{cells: a.cells, all: a.all, byStmt: make(map[*Stmt][]*cell, len(a.script.Stmts)),
+		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs}
+	n.state = st
+	for _, c := range a.all {
+		st.byStmt[c.stmt] = append(st.byStmt[c.stmt], c)
+		if c.judged != nil {
+			n.Judged = append(n.Judged, *c.judged)
+		}
+	}
+	a.freezeSymbols(n)
+	a.freezeFaults(n)
+	a.freezeUses(n)
+	return n
+}
+
+// freezeSymbols makes the symbols, owners before what they own.
+func (a *analysis) freezeSymbols(n *Note) {
+	st := n.state
+	for _, c := range a.all {
+		if c.name == nil || a.cells[c.key] != c {
+			continue
+		}
+		s := c.symbol(st)
+		n.Symbols = append(n.Symbols, s)
+		st.symbols[c.key] = s
+	}
+	for key, c := range a.cells {
+		if c.stmt == nil {
+			s := c.sym
+			s.Key, s.Role = key, c.role
+			st.symbols[key] = &s
+		}
+	}
+}
+
+// symbol is the cell's symbol in the note that is being frozen.
+func (c *cell) symbol(st *state) *Symbol {
+	s := c.sym
+	s.Name, s.Key, s.Role, s.Stmt = c.name.Text, c.key, c.role, c.stmt
+	s.Span = c.name.Span.Shift(c.stmt.At)
+	if d, ok := c.tree.(*Definition); ok {
+		s.Def = d
+		s.Per = quoted(d.Per)
+	}
+	if c.owner != nil {
+		s.Owner = st.symbols[c.owner.key]
+	}
+	return &s
+}
+
+// freezeFaults collects the findings of the division, the syntax and the
+// cells, in note offsets and total order.
+func (a *analysis) freezeFaults(n *Note) {
+	n.Faults = append(n.Faults, a.script.Faults...)
+	n.Faults = append(n.Faults, a.faults...)
+	for _, s := range a.script.Stmts {
+		for _, f := range s.Faults {
+			n.Faults = append(n.Faults, f.shift(s.At))
+		}
+	}
+	for _, c := range a.all {
+		for _, f := range c.faults {
+			n.Faults = append(n.Faults, a.placed(f.shift(c.stmt.At)))
+		}
+	}
+	a.unused(n)
+	sort.SliceStable(n.Faults, func(i, j int) bool {
+		x, y := n.Faults[i], n.Faults[j]
+		if x.Span != y.Span {
+			return x.Span.Start < y.Span.Start || x.Span.Start == y.Span.Start && x.Span.End < y.Span.End
+		}
+		return x.Rule < y.Rule
+	})
+}
+
+// shift moves a fault from statement to note offsets.
+func (f Fault) shift(by int) Fault {
+	f.Span = f.Span.Shift(by)
+	if f.Related != nil {
+		rel := make([]Related, len(f.Related))
+		for i, r := range f.Related {
+			if r.Name == "" {
+				r.Span = r.Span.Shift(by)
+			}
+			rel[i] = r
+		}
+		f.Related = rel
+	}
+	if f.Fix != nil {
+		fix := &Fix{Title: f.Fix.Title, Edits: make([]Edit, len(f.Fix.Edits))}
+		for i, e := range f.Fix.Edits {
+			fix.Edits[i] = Edit{e.Span.Shift(by), e.New}
+		}
+		f.Fix = fix
+	}
+	return f
+}
+
+// placed fills in the places of names that a fault points at.
+func (a *analysis) placed(f Fault) Fault {
+	for i, r := range f.Related {
+		if c := a.cells[r.Name]; r.Name != "" && c != nil && c.stmt != nil && c.name != nil {
+			f.Related[i].Span = c.name.Span.Shift(c.stmt.At)
+		}
+	}
+	return f
+}
+
+// freezeUses lists the uses of names by place.
+func (a *analysis) freezeUses(n *Note) {
+	for _, c := range a.all {
+		if c.name != nil {
+			if s := n.state.symbols[c.key]; s != nil && s.Stmt == c.stmt {
+				n.Uses = append(n.Uses, Use{Symbol: s, Stmt: c.stmt, Span: s.Span, Define: true})
+			}
+		}
+		for _, u := range c.uses {
+			if s := n.state.symbols[u.key]; s != nil {
+				n.Uses = append(n.Uses, Use{Symbol: s, Stmt: c.stmt, Span: u.span.Shift(c.stmt.At)})
+			}
+		}
+	}
+	sort.SliceStable(n.Uses, func(i, j int) bool { return n.Uses[i].Span.Start < n.Uses[j].Span.Start })
 }

@@ -24,9 +24,11 @@ func (s Severity) String() string {
 	return "none"
 }
 
-// Related is a further place that contributed to a fault.
+// Related is a further place that contributed to a fault. Where Name is set,
+// the place is that name's definition and Span and Path are filled in from it.
 type Related struct {
 	Path    string // "" is the note itself
+	Name    string // canonical key of the name meant, "" where Span is given
 	Span    Span   // note offsets
 	Message string
 }

@@ -1,0 +1,270 @@
+package lang
+
+import (
+	"fmt"
+	"strings"
+
+	"inkjoule/lang/eval"
+	"inkjoule/lang/kind"
+	"inkjoule/lang/unit"
+)
+
+// This file infers literals and the uses of names.
+
+// literal infers a number with its unit and spread.
+func (e *elab) literal(l *Literal) typed {
+	t := typed{Facts: number(), plain: l.Unit == nil, lit: l}
+	x := l.Num.Value
+	if l.Unit != nil {
+		u, ok := e.unit(l.Unit)
+		if !ok {
+			return unknown()
+		}
+		t.Dim = u.Dim
+		if x, ok = e.toSI(l, u); !ok {
+			return unknown()
+		}
+		t.Absolute = u.Affine()
+	}
+	if l.Spread != nil {
+		t.code = e.uncertain(l, x)
+	} else {
+		t.code = eval.Const(eval.Real(x))
+	}
+	return t
+}
+
+// toSI converts a literal, by the kind that is wanted where its unit is a level.
+func (e *elab) toSI(l *Literal, u unit.Unit) (float64, bool) {
+	if u.Level == nil {
+		return u.ToSI(l.Num.Value), true
+	}
+	root, known := e.rootPower(u)
+	if !known {
+		e.fault("unknown-kind", l, fmt.Sprintf("%s: whether %s counts a power or a field is not known", l.Num.Text+" "+l.Unit.Text, l.Unit.Text),
+			"name the kind after a comma: `G, gain = …` or `a, voltage ratio = …`")
+		return 0, false
+	}
+	return u.Level.ToLinear(l.Num.Value, root), true
+}
+
+// rootPower tells whether a level unit stands for a root-power quantity.
+func (e *elab) rootPower(u unit.Unit) (root, known bool) {
+	if r, fixed := u.Level.Fixed(); fixed {
+		return r, true
+	}
+	return kind.RootPower(e.want)
+}
+
+// unit reads a unit phrase and reports what is wrong with it.
+func (e *elab) unit(p *UnitPhrase) (unit.Unit, bool) {
+	r := e.a.readUnit(p.Text)
+	if r.err == nil {
+		e.hidesName(p, r.unit)
+		return r.unit, true
+	}
+	f := Fault{
+		Rule: r.err.Rule, Severity: Error, Message: r.err.Message, Detail: r.err.Detail,
+		Span: Span{p.Span.Start + r.err.Start, p.Span.Start + r.err.End},
+	}
+	if r.err.Rule == "unknown-unit" && e.a.cells[CanonicalName(r.err.Symbol)] != nil {
+		f.Detail = fmt.Sprintf("%s is a name of this note: put a blank before the operator (`/ %s`), or write * between the number and the name", r.err.Symbol, r.err.Symbol)
+	}
+	e.report(f)
+	return unit.Unit{}, false
+}
+
+// hidesName cautions where a symbol inside a unit phrase is also a name of the
+// note and the unit reading is not the likely one.
+func (e *elab) hidesName(p *UnitPhrase, u unit.Unit) {
+	if !strings.ContainsAny(p.Text, "/·.") {
+		return
+	}
+	for _, s := range phraseSymbols(p.Text)[1:] {
+		c := e.a.cells[CanonicalName(s)]
+		if c == nil || c.stmt == nil || c == e.c || e.a.hidden(e.c, s) {
+			continue
+		}
+		sym := e.a.readUnit(s)
+		if len(kind.ByDim(u.Dim)) > 0 && !(sym.err == nil && c.sym.Facts.Known && c.sym.Facts.Dim.Compatible(sym.unit.Dim)) {
+			continue
+		}
+		e.report(Fault{
+			Rule: "unit-hides-name", Severity: Caution, Span: p.Span,
+			Message: fmt.Sprintf("%s is read as a unit, and %s is also a name of this note", p.Text, s),
+			Detail:  fmt.Sprintf("to divide by the quantity, put a blank before the operator: `/ %s`", s),
+		})
+		return
+	}
+}
+
+// hidden reports whether an earlier cell has been cautioned about the name.
+func (a *analysis) hidden(c *cell, symbol string) bool {
+	for _, n := range c.needs {
+		if n.soft && n.key == CanonicalName(symbol) {
+			return a.firstSoft[n.key] != c
+		}
+	}
+	return false
+}
+
+// name infers the use of a name.
+func (e *elab) name(n *Name) typed {
+	key := CanonicalName(n.Text)
+	if s := e.local(key); s != nil {
+		return s.t
+	}
+	if key == "j" {
+		return typed{Facts: Facts{Known: true, Complex: true}, plain: true, code: eval.Const(eval.Cplx(1i))}
+	}
+	if e.c.owner != nil {
+		if t, ok := e.property(e.c.owner, key, n); ok {
+			return t
+		}
+	}
+	c := e.a.cells[key]
+	if c == nil {
+		e.unknownName(n, n.Text, "unknown-name")
+		return unknown()
+	}
+	e.use(c.key, n.Span)
+	return e.cellValue(c, n)
+}
+
+// use records where a name is used.
+func (e *elab) use(key string, at Span) {
+	if e.quiet == 0 {
+		e.c.uses = append(e.c.uses, usage{key, at, false})
+	}
+}
+
+// cellValue is the value of a cell as an operand.
+func (e *elab) cellValue(c *cell, at Tree) typed {
+	switch c.role {
+	case RoleMedium, RoleRegion, RoleTable, RoleNote:
+		e.fault("shape-mix", at, fmt.Sprintf("%s is a %s, not a quantity", c.title(), roleName(c.role)), roleHint(c))
+		return unknown()
+	case RoleFunction:
+		e.fault("shape-mix", at, fmt.Sprintf("%s is a function: write its argument in parentheses", c.title()), "")
+		return unknown()
+	}
+	if c.cyclic || !c.sym.Facts.Known {
+		return unknown()
+	}
+	t := typed{Facts: c.sym.Facts, pi: c.pi, kinds: c.kinds(), plain: c.plain}
+	t.code = eval.Slot(c.slot, eval.Type{Shape: t.Shape, Complex: t.Complex})
+	if !c.sym.Result.Known {
+		t.code = e.a.missing(c)
+	}
+	return t
+}
+
+// kinds are what a use of the cell contributes to the kinds of an expression.
+func (c *cell) kinds() []kind.ID {
+	if c.sym.Facts.Kind != 0 {
+		return []kind.ID{c.sym.Facts.Kind}
+	}
+	return c.from
+}
+
+func roleName(r Role) string {
+	switch r {
+	case RoleMedium:
+		return "medium"
+	case RoleRegion:
+		return "region"
+	case RoleTable:
+		return "table"
+	case RoleNote:
+		return "note"
+	}
+	return "quantity"
+}
+
+func roleHint(c *cell) string {
+	switch c.role {
+	case RoleMedium:
+		return fmt.Sprintf("write a property of it: %s.eps, %s.sigma …", c.title(), c.title())
+	case RoleRegion:
+		return fmt.Sprintf("write %s.volume, %s.area or %s.length", c.title(), c.title(), c.title())
+	case RoleTable:
+		return fmt.Sprintf("write a column of it, or %s.COLUMN at OTHER = VALUE", c.title())
+	}
+	return ""
+}
+
+// member infers X.field.
+func (e *elab) member(m *Member) typed {
+	field := CanonicalName(m.Field.Text)
+	n, ok := m.X.(*Name)
+	if !ok {
+		return e.component(m, e.expr(m.X), field)
+	}
+	key := CanonicalName(n.Text)
+	if s := e.local(key); s != nil {
+		return e.component(m, s.t, field)
+	}
+	c := e.a.cells[key]
+	if c == nil {
+		e.unknownName(n, n.Text, "unknown-name")
+		return unknown()
+	}
+	switch c.role {
+	case RoleMedium:
+		e.use(c.key, n.Span)
+		if t, ok := e.property(c, field, m); ok {
+			return t
+		}
+		return e.unknownProperty(m, c)
+	case RoleRegion:
+		e.use(c.key, n.Span)
+		return e.measure(m, c, field)
+	case RoleTable:
+		e.use(c.key, n.Span)
+		return e.column(m, c, field)
+	case RoleNote:
+		return e.foreign(m, c, field)
+	}
+	return e.component(m, e.expr(n), field)
+}
+
+// component infers D.x, eps.xz.
+func (e *elab) component(m *Member, t typed, field string) typed {
+	if !t.Known {
+		return t
+	}
+	i, j, n := axes(m.Field.Text)
+	switch {
+	case t.Shape == eval.Vector && n == 1:
+		t.code = eval.Component(t.code, i)
+	case t.Shape == eval.Tensor && n == 2:
+		t.code = eval.TensorComponent(t.code, i, j)
+	default:
+		e.fault("unknown-property", m, fmt.Sprintf("%s has no part .%s", sketch(m.X), m.Field.Text), partsHint(t.Shape))
+		return unknown()
+	}
+	t.Shape, t.lit = eval.Scalar, nil
+	return t
+}
+
+// axes reads "x" or "xz".
+func axes(s string) (i, j, n int) {
+	at := func(b byte) int { return strings.IndexByte("xyz", b) }
+	switch {
+	case len(s) == 1 && at(s[0]) >= 0:
+		return at(s[0]), 0, 1
+	case len(s) == 2 && at(s[0]) >= 0 && at(s[1]) >= 0:
+		return at(s[0]), at(s[1]), 2
+	}
+	return 0, 0, 0
+}
+
+func partsHint(s eval.Shape) string {
+	switch s {
+	case eval.Vector:
+		return "a vector has the components .x .y .z"
+	case eval.Tensor:
+		return "a tensor has the components .xx .xy … .zz"
+	}
+	return "a number has no components"
+}

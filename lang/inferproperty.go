@@ -1,0 +1,149 @@
+package lang
+
+import (
+	"fmt"
+
+	"inkjoule/lang/eval"
+	"inkjoule/lang/kind"
+	"inkjoule/lang/unit"
+)
+
+// This file infers properties of media: stated, derived, complex.
+
+// property infers medium.field where the medium states or implies it.
+func (e *elab) property(medium *cell, field string, at Tree) (typed, bool) {
+	if c := e.a.cells[medium.key+"."+field]; c != nil {
+		return e.ownProperty(medium, c, at), true
+	}
+	if field == "eps_c" {
+		return e.complexPermittivity(medium, at)
+	}
+	for _, d := range derivations(field) {
+		c := e.a.cells[medium.key+"."+d.from]
+		if c == nil {
+			continue
+		}
+		t := e.ownProperty(medium, c, at)
+		if t.Known {
+			t = e.derive(t, d, field)
+		}
+		return t, true
+	}
+	return unknown(), false
+}
+
+// ownProperty infers a property that the medium states.
+func (e *elab) ownProperty(medium, c *cell, at Tree) typed {
+	e.use(c.key, at.Place())
+	t := e.cellValue(c, at)
+	t.addMedium(medium.key)
+	return t
+}
+
+// derive gives a property that follows from another one.
+func (e *elab) derive(t typed, d derivation, field string) typed {
+	if d.how == 'i' {
+		if t.Shape == eval.Tensor {
+			t.code = e.builtin("inv", nil, t.code)
+		} else {
+			t.code = eval.Div(0, eval.Const(eval.Real(1)), t.code)
+		}
+		t.Dim = unit.Dim{}.Div(t.Dim)
+	} else {
+		by := e.a.cells[d.by]
+		k := eval.Slot(by.slot, eval.Type{})
+		if d.how == '*' {
+			t.code, t.Dim = eval.Mul(t.code, k), t.Dim.Mul(by.sym.Facts.Dim)
+		} else {
+			t.code, t.Dim = eval.Div(0, t.code, k), t.Dim.Div(by.sym.Facts.Dim)
+		}
+	}
+	_, t.Kind, _ = kind.Parse(standardProperties()[field])
+	t.KindBy, t.kinds = Inferred, []kind.ID{t.Kind}
+	return t
+}
+
+// complexPermittivity is eps' − j·eps” of a harmonic note (e^{+jωt}), from the
+// loss factor or the conductivity that the medium states.
+func (e *elab) complexPermittivity(medium *cell, at Tree) (typed, bool) {
+	t, ok := e.property(medium, "eps", at)
+	if !ok || !t.Known {
+		return t, ok
+	}
+	loss, conducting, ok := e.lossOf(medium, at)
+	if !ok {
+		return t, true
+	}
+	if !loss.Known {
+		return unknown(), true
+	}
+	j := eval.Const(eval.Cplx(1i))
+	if !conducting {
+		if t.Complex {
+			e.fault("unknown-property", at, fmt.Sprintf("%s states a complex permittivity and a loss factor: the loss would count twice", medium.title()), "keep one of the two")
+			return unknown(), true
+		}
+		one := eval.Const(eval.Real(1))
+		t.code = eval.Mul(t.code, eval.Sub(one, eval.Mul(j, loss.code)))
+	} else {
+		w, known := e.angularFrequency(at)
+		if !known {
+			return unknown(), true
+		}
+		t.code = eval.Sub(t.code, eval.Mul(j, eval.Div(0, loss.code, w)))
+	}
+	t.Complex = true
+	return t, true
+}
+
+// lossOf finds what makes a medium lossy.
+func (e *elab) lossOf(medium *cell, at Tree) (t typed, conducting, ok bool) {
+	if e.a.cells[medium.key+".tan_delta"] != nil {
+		t, ok = e.property(medium, "tan_delta", at)
+		return t, false, ok
+	}
+	t, ok = e.property(medium, "sigma", at)
+	return t, true, ok
+}
+
+// angularFrequency is ω of the harmonic regime in force.
+func (e *elab) angularFrequency(at Tree) (eval.Code, bool) {
+	r := e.c.regime
+	if r == nil || r.role != RoleCondition || !r.sym.Facts.Known {
+		e.fault("unknown-property", at, "the complex permittivity of a conducting medium needs a frequency", "put `regime: harmonic at f = …` above")
+		return eval.Code{}, false
+	}
+	w := eval.Slot(r.slot, eval.Type{})
+	if r.sym.Facts.Dim[unit.Cycle].Sign() > 0 {
+		w = eval.Mul(eval.Const(eval.Real(2*pi)), w)
+	}
+	return w, true
+}
+
+// unknownProperty reports a property that a medium does not have.
+func (e *elab) unknownProperty(m *Member, c *cell) typed {
+	var have []string
+	for _, o := range e.a.all {
+		if o.owner == c {
+			have = append(have, o.name.Text)
+		}
+	}
+	detail := "it has none yet"
+	if len(have) > 0 {
+		detail = "it has " + list(have)
+	}
+	e.report(Fault{
+		Rule: "unknown-property", Severity: Error, Span: m.Field.Span,
+		Message: fmt.Sprintf("medium %s has no property %s", c.title(), m.Field.Text), Detail: detail,
+		Related: e.relate(c, "the medium"),
+	})
+	return unknown()
+}
+
+// relate points at the definition of a cell.
+func (e *elab) relate(c *cell, message string) []Related {
+	if c == nil || c.stmt == nil {
+		return nil
+	}
+	return []Related{{Name: c.key, Message: message}}
+}

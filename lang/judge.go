@@ -1,0 +1,318 @@
+package lang
+
+import (
+	"fmt"
+	"math"
+
+	"inkjoule/lang/eval"
+	"inkjoule/lang/unit"
+)
+
+// This file judges the relations of assume, criterion and check.
+
+// judge elaborates a relation statement and gives its verdict.
+func (a *analysis) judge(c *cell) {
+	e := &elab{a: a, c: c}
+	j := &Judgement{Stmt: c.stmt}
+	var rel *Relation
+	switch t := c.tree.(type) {
+	case *Assume:
+		j.Word, rel = "assume", t.Rel
+		if t.Text != nil {
+			j.Text = t.Text.Text
+		}
+		j.Per = quoted(t.Per)
+	case *Criterion:
+		j.Word, rel, j.Per = "criterion", t.Rel, quoted(t.Per)
+	case *Check:
+		j.Word, rel, j.Per = "check", t.Rel, quoted(t.Per)
+	}
+	c.judged = j
+	if rel != nil {
+		j.Text = c.stmt.Text[rel.Span.Start:rel.Span.End]
+		e.relation(rel, j)
+	}
+}
+
+func quoted(q *Quote) string {
+	if q == nil {
+		return ""
+	}
+	return q.Text
+}
+
+// relation elaborates the terms and judges each pair of neighbours.
+func (e *elab) relation(r *Relation, j *Judgement) {
+	ts := make([]typed, len(r.Terms))
+	for i, x := range r.Terms {
+		ts[i] = e.expr(x)
+	}
+	j.Holds, j.Margin, j.Worst = true, math.Inf(1), math.Inf(1)
+	known := len(r.Ops) > 0
+	for i, op := range r.Ops {
+		if !e.comparable(r, i, ts[i], ts[i+1]) || ts[i].blind || ts[i+1].blind {
+			known = false
+			continue
+		}
+		known = e.pair(r, i, op, ts, j) && known
+	}
+	j.Known = known
+	if !known {
+		j.Margin, j.Worst = 0, 0
+	}
+}
+
+// comparable checks that two terms can be compared.
+func (e *elab) comparable(r *Relation, i int, x, y typed) bool {
+	if !x.Known || !y.Known {
+		return false
+	}
+	if !x.Dim.Compatible(y.Dim) && !isZero(r.Terms[i]) && !isZero(r.Terms[i+1]) {
+		e.fault("dimension-mismatch", r, fmt.Sprintf("%s is compared with %s", describe(x.Facts), describe(y.Facts)), "")
+		return false
+	}
+	equal := r.Ops[i] == "="
+	for k, t := range []typed{x, y} {
+		if t.Shape == eval.List && !equal {
+			continue
+		}
+		if !equal && (t.Shape != eval.Scalar || t.Complex) {
+			what := shapeName(t.Shape)
+			if t.Shape == eval.Scalar {
+				what = "a complex number"
+			}
+			e.fault("shape-mix", r.Terms[i+k], fmt.Sprintf("%s cannot be compared: %s is %s", sketch(r.Terms[i+k]), sketch(r.Terms[i+k]), what), fmt.Sprintf("write its magnitude: |%s|", sketch(r.Terms[i+k])))
+			return false
+		}
+	}
+	return true
+}
+
+// pair judges one pair and reports where it does not hold.
+func (e *elab) pair(r *Relation, i int, op string, ts []typed, j *Judgement) bool {
+	x, y := ts[i], ts[i+1]
+	a, b := e.a.run(e.c, r.ID, x.code), e.a.run(e.c, r.ID, y.code)
+	for k, o := range []outcome{a, b} {
+		if o.fault != nil {
+			e.evalFault(o.fault, r.Terms[i+k])
+			return false
+		}
+	}
+	if op == "=" {
+		return e.equal(r, i, a, b, j)
+	}
+	if op[0] == '>' {
+		a, b, x, y = b, a, y, x
+	}
+	ten := 1.0
+	if len(op) == 2 && op[0] == op[1] {
+		ten = 10
+	}
+	m, w := e.margin(r, x, y, a, b, ten)
+	holds := m > 0 || m == 0 && (len(op) == 2)
+	if m < j.Margin {
+		j.Margin, j.Worst = m, min(w, m)
+	}
+	if !holds {
+		j.Holds = false
+		e.fails(r, i, ts, j, m)
+	} else if w < 0 && m > 1e-12 {
+		e.doubtful(r, i, j, m, w)
+	}
+	return true
+}
+
+// margin is limit/value − 1 at the values and at the worst-case bounds, where
+// x should be below y; ten is the factor that << asks for.
+func (e *elab) margin(r *Relation, x, y typed, a, b outcome, ten float64) (m, worst float64) {
+	av, bv := largest(a.value)*ten, smallest(b.value)
+	if av > 0 && bv > 0 {
+		m = bv/av - 1
+	} else {
+		m = (bv - av) / math.Max(math.Max(math.Abs(av), math.Abs(bv)), math.SmallestNonzeroFloat64)
+	}
+	if len(a.grad) == 0 && len(b.grad) == 0 || a.value.Shape() != eval.Scalar || b.value.Shape() != eval.Scalar {
+		return m, m
+	}
+	var code eval.Code
+	var err error
+	if av > 0 && bv > 0 {
+		code, err = eval.Div(r.ID, y.code, x.code)
+	} else {
+		code, err = eval.Sub(r.ID, y.code, x.code)
+	}
+	if err != nil {
+		return m, m
+	}
+	o := e.a.run(e.c, r.ID, code)
+	if o.fault != nil {
+		return m, m
+	}
+	if av > 0 && bv > 0 {
+		return m, o.low/ten - 1
+	}
+	return m, o.low / math.Max(math.Abs(av), math.Abs(bv))
+}
+
+// largest and smallest are the extremes of a list, the value of a scalar.
+func largest(v eval.Value) float64 {
+	out := math.Inf(-1)
+	for i := range v.Len() {
+		out = math.Max(out, v.At(i).Re())
+	}
+	return out
+}
+
+func smallest(v eval.Value) float64 {
+	out := math.Inf(1)
+	for i := range v.Len() {
+		out = math.Min(out, v.At(i).Re())
+	}
+	return out
+}
+
+// failing names the finding of a relation that does not hold.
+func failing(word string) (string, Severity) {
+	switch word {
+	case "assume":
+		return "assumption-fails", Caution
+	case "check":
+		return "check-fails", Error
+	}
+	return "criterion-fails", Error
+}
+
+// fails reports a pair that does not hold, with both values and the factor.
+func (e *elab) fails(r *Relation, i int, ts []typed, j *Judgement, m float64) {
+	rule, sev := failing(j.Word)
+	e.report(Fault{
+		Rule: rule, Severity: sev, Span: r.Span,
+		Message: fmt.Sprintf("%s does not hold: %s (margin %s)", j.Text, e.both(r, i, ts), percent(m)),
+		Detail:  "change the design or its inputs; the relation itself is what was agreed",
+		Related: e.relateTerms(r),
+	})
+}
+
+// doubtful reports a criterion that holds for the values only.
+func (e *elab) doubtful(r *Relation, i int, j *Judgement, m, w float64) {
+	if j.Word != "criterion" {
+		return
+	}
+	e.report(Fault{
+		Rule: "criterion-within-uncertainty", Severity: Caution, Span: r.Span,
+		Message: fmt.Sprintf("%s holds for the values (margin %s), and not for the worst case within their uncertainty (%s)", j.Text, percent(m), percent(w)),
+		Detail:  "narrow the tolerances, or enlarge the margin",
+		Related: e.relateTerms(r),
+	})
+}
+
+// percent writes a margin.
+func percent(m float64) string {
+	if math.IsInf(m, 0) || math.IsNaN(m) {
+		return "unbounded"
+	}
+	return decimal(m*100, formatter{digits: 3}.scale(math.Abs(m*100))) + " %"
+}
+
+// both writes what the two sides of a pair are, in one unit.
+func (e *elab) both(r *Relation, i int, ts []typed) string {
+	u := unit.Unit{}
+	for _, x := range []Expr{r.Terms[i+1], r.Terms[i]} {
+		if p := unitOf(x); p != nil {
+			u = e.a.readUnit(p.Text).unit
+		}
+	}
+	text := ""
+	for k := range 2 {
+		x, t := r.Terms[i+k], ts[i+k]
+		o := e.a.runQuiet(e.c, r.ID, t.code)
+		if u.IsZero() {
+			u = chosenUnit(t.Facts, o.value)
+		}
+		s := formatter{unit: u, digits: shownDigits}.value(o.value)
+		if k == 1 {
+			text += ", "
+		}
+		if isLiteral(x) {
+			text += "against " + s
+		} else {
+			text += sketch(x) + " is " + s
+		}
+	}
+	return text
+}
+
+// relateTerms points at the definitions of the names in a relation.
+func (e *elab) relateTerms(r *Relation) []Related {
+	var out []Related
+	seen := map[string]bool{}
+	for _, u := range e.c.uses {
+		c := e.a.cells[u.key]
+		if c == nil || c.stmt == nil || seen[u.key] || c.sym.Shown == "" {
+			continue
+		}
+		seen[u.key] = true
+		out = append(out, Related{Name: u.key, Message: fmt.Sprintf("%s = %s", c.title(), c.sym.Shown)})
+	}
+	return out
+}
+
+// equal judges `=`: by the digits written where one side is a literal.
+func (e *elab) equal(r *Relation, i int, a, b outcome, j *Judgement) bool {
+	x, y := r.Terms[i], r.Terms[i+1]
+	ok := false
+	switch {
+	case isLiteral(y) || isNumeric(y):
+		ok = e.byDigits(y, a.value, b.value)
+	case isLiteral(x) || isNumeric(x):
+		ok = e.byDigits(x, b.value, a.value)
+	default:
+		d, n := distance(a.value, b.value), norm(b.value)
+		ok = d <= relativeSlack*n
+	}
+	q, has := ratio(a.value, b.value)
+	m := 0.0
+	if has {
+		m = -math.Abs(q - 1)
+	}
+	if ok {
+		j.Margin, j.Worst = min(j.Margin, 0), min(j.Worst, 0)
+		return true
+	}
+	j.Holds, j.Margin, j.Worst = false, min(m, j.Margin), min(m, j.Worst)
+	rule, sev := failing(j.Word)
+	msg := fmt.Sprintf("%s does not hold: %s", j.Text, e.sides(x, y, a, b))
+	detail := "correct the stated value, or the formula"
+	if has {
+		msg += fmt.Sprintf(" (ratio %s)", number4(q))
+		if h := ratioHint(q); h != "" {
+			detail += "; " + h
+		}
+	}
+	e.report(Fault{Rule: rule, Severity: sev, Span: r.Span, Message: msg, Detail: detail, Related: e.relateTerms(r)})
+	return true
+}
+
+func (e *elab) byDigits(literal Expr, computed, stated eval.Value) bool {
+	u := unit.Unit{}
+	if p := unitOf(literal); p != nil {
+		u = e.a.readUnit(p.Text).unit
+	}
+	digit, ok := finestDigit(literal)
+	return ok && agrees(computed, stated, u, 0.5*math.Pow(10, float64(digit)))
+}
+
+// sides writes the two sides of an equation.
+func (e *elab) sides(x, y Expr, a, b outcome) string {
+	u, digits := unit.Unit{}, shownDigits
+	for _, z := range []Expr{x, y} {
+		if p := unitOf(z); p != nil {
+			u = e.a.readUnit(p.Text).unit
+		}
+		if isLiteral(z) {
+			digits = max(digits, significantDigits(z)+1)
+		}
+	}
+	s := formatter{unit: u, digits: digits}
+	return fmt.Sprintf("%s is %s, and %s is %s", sketch(x), s.value(a.value), sketch(y), s.value(b.value))
+}
