@@ -38,7 +38,10 @@ func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
 	a.imports()
 	a.link()
 	order := a.order()
-	a.machine = newMachine(ctx, len(a.all)+len(a.cells))
+	for i, c := range a.all {
+		c.slot = i
+	}
+	a.machine = newMachine(ctx, len(a.all))
 	for _, c := range order {
 		if err := ctx.Err(); err != nil {
 			return nil, err
@@ -185,7 +188,7 @@ func (c *cell) symbol(st *state) *Symbol {
 	s.Span = c.name.Span.Shift(c.stmt.At)
 	if d, ok := c.tree.(*Definition); ok {
 		s.Def = d
-		s.Per = quoted(d.Per)
+		s.Per = d.Per.text()
 	}
 	if c.owner != nil {
 		s.Owner = st.symbols[c.owner.key]

@@ -3,6 +3,7 @@ package lang
 import (
 	"fmt"
 	"strings"
+	"sync"
 
 	"inkjoule/lang/eval"
 	"inkjoule/lang/kind"
@@ -22,110 +23,40 @@ func (e *elab) call(c *Call) typed {
 	if form, ok := e.binding(c, c.Fn.Text); ok {
 		return form
 	}
-	rule, ok := builtinRules[c.Fn.Text]
+	sig, ok := signatures()[c.Fn.Text]
 	if !ok {
 		return e.unknownFunction(c)
 	}
 	xs := make([]typed, len(c.Args))
 	for i, a := range c.Args {
 		xs[i] = e.expr(a)
-		if xs[i].blindOrUnknown() {
+		if !xs[i].Known {
 			for _, rest := range c.Args[i+1:] {
 				e.expr(rest)
 			}
 			return unknown()
 		}
 	}
-	if !e.arity(c, rule, len(xs)) {
+	if !e.arity(c, sig, len(xs)) {
 		return unknown()
 	}
-	return e.builtin(c, rule, xs)
+	return e.builtin(c, sig, xs)
 }
 
-// blindOrUnknown reports an operand that nothing can be built on.
-func (t typed) blindOrUnknown() bool { return !t.Known }
-
-// dimRule tells which dimensions a built-in function takes and gives.
-type dimRule struct {
-	args [2]int // least and greatest number of arguments
-	take byte   // '1' plain numbers or angles, 's' one dimension for all, '*' anything, 't' tensor·vector functions judged apart
-	give func(e *elab, c *Call, xs []typed, t *typed) bool
-}
-
-func giveOne(_ *elab, _ *Call, _ []typed, t *typed) bool { return true }
-
-func giveAngle(_ *elab, _ *Call, _ []typed, t *typed) bool {
-	t.Dim[unit.Angle] = unit.Whole(1)
-	return true
-}
-
-// giveSame keeps what the first argument carries.
-func giveSame(_ *elab, _ *Call, xs []typed, t *typed) bool {
-	t.Dim, t.Kind, t.KindBy = xs[0].Dim, xs[0].Kind, min(xs[0].KindBy, Inferred)
-	t.Qualifier, t.QualBy, t.Absolute = xs[0].Qualifier, xs[0].QualBy, xs[0].Absolute
-	return true
-}
-
-// giveRoot gives the power 1/n of the dimension.
-func giveRoot(n int64) func(*elab, *Call, []typed, *typed) bool {
-	return func(_ *elab, _ *Call, xs []typed, t *typed) bool {
-		p := unit.NewRat(1, n)
-		t.Dim = xs[0].Dim.Pow(p)
-		t.Kind, t.KindBy = powerKind(xs[0], t.Dim, p, true)
-		t.Qualifier, t.QualBy = powerQualifier(xs[0], p, true)
-		return true
+// signatures are the built-in functions by name.
+var signatures = sync.OnceValue(func() map[string]eval.Signature {
+	m := map[string]eval.Signature{}
+	for _, s := range eval.Builtins() {
+		m[s.Name] = s
 	}
-}
-
-func givePower(n int) func(*elab, *Call, []typed, *typed) bool {
-	return func(_ *elab, _ *Call, xs []typed, t *typed) bool {
-		t.Dim = xs[0].Dim.Pow(unit.Whole(n))
-		return true
-	}
-}
-
-func giveLength(_ *elab, _ *Call, _ []typed, t *typed) bool {
-	t.Dim[unit.Length] = unit.Whole(1)
-	return true
-}
-
-// giveProduct is for dot and cross.
-func giveProduct(_ *elab, _ *Call, xs []typed, t *typed) bool {
-	t.Dim, t.pi = cyclesToAngle(xs[0].Dim.Mul(xs[1].Dim), xs[0].pi+xs[1].pi)
-	t.Kind, t.KindBy = ingredientKind(t.Dim, t.kinds)
-	t.Qualifier, t.QualBy = productQualifier(OpMul, xs[0], xs[1])
-	return true
-}
-
-// giveFirst keeps the first argument's dimension, whatever the others are.
-func giveFirst(e *elab, c *Call, xs []typed, t *typed) bool { return giveSame(e, c, xs, t) }
-
-// builtinRules lists the built-in functions of language.md by the dimensions
-// that they take and give; shapes are the business of package eval.
-var builtinRules = map[string]dimRule{
-	"sqrt": {[2]int{1, 1}, '*', giveRoot(2)}, "cbrt": {[2]int{1, 1}, '*', giveRoot(3)},
-	"exp": {[2]int{1, 1}, '1', giveOne}, "ln": {[2]int{1, 1}, '1', giveOne}, "log10": {[2]int{1, 1}, '1', giveOne},
-	"sin": {[2]int{1, 1}, '1', giveOne}, "cos": {[2]int{1, 1}, '1', giveOne}, "tan": {[2]int{1, 1}, '1', giveOne},
-	"sinh": {[2]int{1, 1}, '1', giveOne}, "cosh": {[2]int{1, 1}, '1', giveOne}, "tanh": {[2]int{1, 1}, '1', giveOne},
-	"asin": {[2]int{1, 1}, '1', giveAngle}, "acos": {[2]int{1, 1}, '1', giveAngle}, "atan": {[2]int{1, 1}, '1', giveAngle},
-	"atan2": {[2]int{2, 2}, 's', giveAngle}, "arg": {[2]int{1, 1}, '*', giveAngle},
-	"abs": {[2]int{1, 1}, '*', giveSame}, "min": {[2]int{1, 99}, 's', giveSame}, "max": {[2]int{1, 99}, 's', giveSame},
-	"sum": {[2]int{1, 1}, '*', giveSame}, "mean": {[2]int{1, 99}, 's', giveSame},
-	"dot": {[2]int{2, 2}, '*', giveProduct}, "cross": {[2]int{2, 2}, '*', giveProduct},
-	"Re": {[2]int{1, 1}, '*', giveSame}, "Im": {[2]int{1, 1}, '*', giveSame}, "conj": {[2]int{1, 1}, '*', giveSame},
-	"diag": {[2]int{3, 3}, 's', giveSame}, "tensor": {[2]int{6, 9}, 's', giveSame},
-	"uniaxial": {[2]int{3, 3}, 'u', giveSame}, "rotate": {[2]int{3, 3}, 'r', giveFirst},
-	"inv": {[2]int{1, 1}, '*', givePower(-1)}, "trace": {[2]int{1, 1}, '*', giveSame}, "det": {[2]int{1, 1}, '*', givePower(3)},
-	"ellipK": {[2]int{1, 1}, '1', giveOne}, "ellipE": {[2]int{1, 1}, '1', giveOne}, "erf": {[2]int{1, 1}, '1', giveOne},
-	"besselJ": {[2]int{2, 2}, '1', giveOne}, "besselY": {[2]int{2, 2}, '1', giveOne},
-	"awg": {[2]int{1, 1}, '1', giveLength},
-}
+	return m
+})
 
 // FunctionNames are the names of the built-in functions and of the forms that
 // bind a variable.
 func FunctionNames() []string {
 	out := []string{"integral", "derivative", "solve", "loop", "assembly_energy", "potential", "lower", "upper"}
-	for n := range builtinRules {
+	for n := range signatures() {
 		out = append(out, n)
 	}
 	return sorted(out)
@@ -133,42 +64,81 @@ func FunctionNames() []string {
 
 // arity checks the number of arguments; where one more than fits was written,
 // a decimal comma may be the cause.
-func (e *elab) arity(c *Call, r dimRule, n int) bool {
-	if n >= r.args[0] && n <= r.args[1] {
+func (e *elab) arity(c *Call, sig eval.Signature, n int) bool {
+	if n >= sig.Min && (sig.Max < 0 || n <= sig.Max) {
 		return true
 	}
-	want := fmt.Sprint(r.args[0])
-	if r.args[1] > r.args[0] {
-		want = fmt.Sprintf("%d to %d", r.args[0], r.args[1])
+	detail := fmt.Sprintf("write %s(%s)", sig.Name, strings.Join(sig.Params, ", "))
+	if sig.Max >= 0 && n > sig.Max {
+		detail += "; was a decimal comma written? numbers take a decimal point"
 	}
-	detail := ""
-	if n > r.args[1] {
-		detail = "was a decimal comma written? numbers take a decimal point"
-	}
-	e.fault("syntax", c, fmt.Sprintf("%s takes %s %s, and %d are given", c.Fn.Text, want, plural("argument", r.args[1]), n), detail)
+	e.fault("syntax", c, fmt.Sprintf("%s takes %d %s, and %d %s given", sig.Name, sig.Min, plural("argument", sig.Min), n, areOrIs(n)), detail)
 	return false
 }
 
+func areOrIs(n int) string {
+	if n == 1 {
+		return "is"
+	}
+	return "are"
+}
+
 // builtin infers a built-in function of known arguments.
-func (e *elab) builtin(c *Call, r dimRule, xs []typed) typed {
+func (e *elab) builtin(c *Call, sig eval.Signature, xs []typed) typed {
 	t := typed{Facts: Facts{Known: true}, plain: true}
 	codes := make([]eval.Code, len(xs))
 	for i, x := range xs {
 		codes[i] = x.code
 		t.join(x)
 	}
-	if !e.takes(c, r.take, xs) || !r.give(e, c, xs, &t) {
+	if !e.takes(c, sig, xs) {
 		return unknown()
 	}
-	code, err := eval.Builtin(c.Fn.Text, c.ID, codes)
-	if err != nil {
-		return e.refused(c, err)
+	give(sig, xs, &t)
+	t = e.built(t, c)(eval.Builtin(c.Fn.Text, c.ID, codes))
+	if !t.Known {
+		return t
 	}
-	t.code, t.Shape, t.Complex = code, code.Type.Shape, code.Type.Complex
+	t.Shape, t.Complex = t.code.Type.Shape, t.code.Type.Complex
 	if c.Unit != nil {
-		return e.withUnit(c, t, c.Unit, nil)
+		return e.withUnit(c, t, c.Unit)
 	}
 	return t
+}
+
+// give sets what a built-in function gives.
+func give(sig eval.Signature, xs []typed, t *typed) {
+	x := xs[0]
+	switch sig.Gives {
+	case eval.GivesAngle:
+		t.Dim[unit.Angle] = unit.Whole(1)
+	case eval.GivesSame:
+		t.Dim, t.Kind, t.KindBy = x.Dim, x.Kind, min(x.KindBy, Inferred)
+		t.Qualifier, t.QualBy, t.Absolute = x.Qualifier, x.QualBy, x.Absolute
+	case eval.GivesProduct:
+		t.Dim, t.pi = cyclesToAngle(x.Dim.Mul(xs[1].Dim), x.pi+xs[1].pi)
+		t.Kind, t.KindBy = ingredientKind(t.Dim, t.kinds)
+		if sig.Name == "cross" {
+			t.Kind, t.KindBy = crossKind(x, xs[1], t.Dim)
+		}
+		t.Qualifier, t.QualBy = productQualifier(OpMul, x, xs[1])
+	case eval.GivesSqrt:
+		giveRoot(x, unit.NewRat(1, 2), t)
+	case eval.GivesCbrt:
+		giveRoot(x, unit.NewRat(1, 3), t)
+	case eval.GivesInverse:
+		t.Dim = x.Dim.Pow(unit.Whole(-1))
+	case eval.GivesCube:
+		t.Dim = x.Dim.Pow(unit.Whole(3))
+	case eval.GivesLength:
+		t.Dim[unit.Length] = unit.Whole(1)
+	}
+}
+
+func giveRoot(x typed, p unit.Rat, t *typed) {
+	t.Dim = x.Dim.Pow(p)
+	t.Kind, t.KindBy = powerKind(x, t.Dim, p, true)
+	t.Qualifier, t.QualBy = powerQualifier(x, p, true)
 }
 
 // refused reports what package eval found wrong with shapes.
@@ -182,33 +152,21 @@ func (e *elab) refused(at Tree, err error) typed {
 }
 
 // takes checks the dimensions of the arguments.
-func (e *elab) takes(c *Call, take byte, xs []typed) bool {
-	switch take {
-	case '1':
-		return e.plainArguments(c, xs)
-	case 's':
-		return e.sameDimension(c, xs, len(xs))
-	case 'u':
-		return e.sameDimension(c, xs, 2)
-	case 'r':
-		if !xs[2].Dim.IsOne() {
-			e.fault("dimensioned-argument", c.Args[2], "an angle is needed here, not "+describe(xs[2].Facts), "write it in ° or rad")
-			return false
-		}
-	}
-	return true
-}
-
-// plainArguments wants plain numbers or angles.
-func (e *elab) plainArguments(c *Call, xs []typed) bool {
+func (e *elab) takes(c *Call, sig eval.Signature, xs []typed) bool {
+	same := 0
 	for i, x := range xs {
-		if !x.Dim.IsOne() {
-			e.fault("dimensioned-argument", c.Args[i],
-				fmt.Sprintf("%s takes a plain number, and this is %s", c.Fn.Text, describe(x.Facts)), "divide it by a reference value of the same unit")
-			return false
+		switch sig.Takes[min(i, len(sig.Takes)-1)] {
+		case eval.TakesNumber, eval.TakesAngle, eval.TakesWhole:
+			if !x.Dim.IsOne() {
+				e.fault("dimensioned-argument", c.Args[i],
+					fmt.Sprintf("%s takes a plain number, and this is %s", c.Fn.Text, describe(x.Facts)), "divide it by a reference value of the same unit")
+				return false
+			}
+		case eval.TakesSame:
+			same = i + 1
 		}
 	}
-	return true
+	return same < 2 || e.sameDimension(c, xs, same)
 }
 
 // sameDimension wants one dimension for the first n arguments; a literal 0
@@ -249,29 +207,20 @@ func (e *elab) unknownFunction(c *Call) typed {
 }
 
 // withUnit multiplies a constant parenthesis, vector or tensor by its unit.
-func (e *elab) withUnit(at Tree, t typed, p *UnitPhrase, s *Spread) typed {
-	if p != nil {
-		u, ok := e.unit(p)
-		if !ok {
-			return unknown()
-		}
-		if !t.Dim.IsOne() {
-			e.fault("dimension-mismatch", at, fmt.Sprintf("a unit follows %s", describe(t.Facts)), "a unit can follow only a parenthesis of plain numbers")
-			return unknown()
-		}
-		if u.Level != nil || u.Affine() {
-			e.fault("syntax", at, fmt.Sprintf("%s cannot follow a parenthesis", p.Text), "write the number and its unit together")
-			return unknown()
-		}
-		t.Dim, t.plain = u.Dim, false
-		code, err := eval.Mul(at.Index(), t.code, eval.Num(u.Scale()))
-		if err != nil {
-			return e.refused(at, err)
-		}
-		t.code = code
+func (e *elab) withUnit(at Tree, t typed, p *UnitPhrase) typed {
+	u, ok := e.unit(p)
+	switch {
+	case !ok:
+		return unknown()
+	case !t.Dim.IsOne():
+		e.fault("dimension-mismatch", at, fmt.Sprintf("a unit follows %s", describe(t.Facts)), "a unit can follow only a parenthesis of plain numbers")
+		return unknown()
+	case u.Level != nil || u.Affine():
+		e.fault("syntax", at, fmt.Sprintf("%s cannot follow a parenthesis", p.Text), "write the number and its unit together")
+		return unknown()
 	}
-	t.lit = nil
-	return t
+	t.Dim, t.plain, t.lit = u.Dim, false, nil
+	return e.built(t, at)(eval.Mul(at.Index(), t.code, eval.Num(u.Scale())))
 }
 
 // applied infers a call of a function of the note: its body, with its
@@ -303,12 +252,9 @@ func (e *elab) instance(c *Call, f *cell, d *Definition, xs []typed) typed {
 	inner := &elab{a: e.a, c: f, quiet: 1, depth: e.depth + 1, work: e.work}
 	blind := false
 	for i, p := range d.Params {
-		slots[i], codes[i] = e.a.newSlot(), xs[i].code
-		x := xs[i]
-		x.code = eval.Slot(slots[i], eval.Type{Shape: x.Shape, Complex: x.Complex})
-		x.lit, x.plain, x.pi = nil, false, 0
-		inner.bind(CanonicalName(p.Text), x)
-		blind = blind || x.blind
+		codes[i] = xs[i].code
+		slots[i] = inner.bind(CanonicalName(p.Text), xs[i])
+		blind = blind || xs[i].blind
 	}
 	e.domain(c, f, d, xs)
 	t := inner.body(d)
@@ -316,20 +262,22 @@ func (e *elab) instance(c *Call, f *cell, d *Definition, xs []typed) typed {
 	if !t.Known {
 		return t
 	}
-	if len(xs) > 0 && !blind {
-		t.code = eval.Let(c.ID, slots, codes, t.code)
-	}
+	t.code = eval.Let(c.ID, slots, codes, t.code)
 	t.blind, t.lit, t.plain = t.blind || blind, nil, false
-	if s := f.sym.Facts; s.Kind != 0 && s.KindBy == Declared {
-		if k := s.Kind.Info(); k.Dim.Compatible(t.Dim) {
-			t.Kind, t.KindBy, t.kinds = s.Kind, Declared, []kind.ID{s.Kind}
-			t.Dim = absorb(s.Kind, t.Dim)
-		}
+	return f.declaredOver(t)
+}
+
+// declaredOver puts what a function declares over what its body gives.
+func (c *cell) declaredOver(t typed) typed {
+	s := c.sym.Facts
+	if s.Kind != 0 && s.KindBy == Declared && s.Kind.Dim().Compatible(t.Dim) {
+		t.Kind, t.KindBy, t.kinds = s.Kind, Declared, []kind.ID{s.Kind}
+		t.Dim = absorb(s.Kind, t.Dim)
 	}
-	if s := f.sym.Facts; s.Qualifier != kind.Unqualified {
+	if s.Qualifier != kind.Unqualified {
 		t.Qualifier, t.QualBy = s.Qualifier, s.QualBy
 	}
-	for _, m := range f.sym.Facts.Media {
+	for _, m := range s.Media {
 		t.addMedium(m)
 	}
 	return t

@@ -1,6 +1,7 @@
 package lang
 
 import (
+	"context"
 	"fmt"
 
 	"inkjoule/lang/unit"
@@ -17,7 +18,12 @@ type analysis struct {
 	units  map[string]unitReading
 	old    map[Tree]*cell // finished cells of the previous analysis, by tree
 	faults []Fault        // that belong to no cell, note offsets
-	frame  *frameBox
+
+	ctx       context.Context
+	previous  *state
+	machine   *machine
+	inputs    int              // uncertain inputs numbered so far
+	firstSoft map[string]*cell // the first cell whose unit phrase hides a name
 }
 
 // unitReading is a unit phrase read once for the whole note.

@@ -113,21 +113,21 @@ func (e *elab) settle(d *Definition, t typed) {
 // absorb gives the dimension of the declared kind: rad and cycle are part of a
 // kind, not of how it was reached.
 func absorb(id kind.ID, d unit.Dim) unit.Dim {
-	k := id.Info().Dim
+	k := id.Dim()
 	d[unit.Angle], d[unit.Cycle] = k[unit.Angle], k[unit.Cycle]
 	return d
 }
 
 // fitsKind checks the value's dimension against the declared kind's.
 func (e *elab) fitsKind(d *Definition, t typed, id kind.ID) bool {
-	k := id.Info()
-	if k.Dim.Compatible(t.Dim) {
+	k := id.Dim()
+	if k.Compatible(t.Dim) {
 		return true
 	}
 	e.report(Fault{
 		Rule: "dimension-mismatch", Severity: Error, Span: d.Members[0].Place(),
-		Message: fmt.Sprintf("%s is declared as %s (%s), and this is %s", d.Name.Text, k.Name, k.Unit, describe(typed{Facts: Facts{Dim: t.Dim}}.Facts)),
-		Detail:  fmt.Sprintf("the quotient of the two is %s", unit.Coherent(t.Dim.Div(k.Dim)).Symbol),
+		Message: fmt.Sprintf("%s is declared as %s (%s), and this is %s", d.Name.Text, id, id.Info().Unit, describe(Facts{Dim: t.Dim})),
+		Detail:  fmt.Sprintf("the quotient of the two is %s", unit.Coherent(t.Dim.Div(k)).Symbol),
 	})
 	return false
 }
@@ -138,7 +138,10 @@ func (e *elab) evaluate(d *Definition, t typed) {
 	if !c.sym.Facts.Known {
 		return
 	}
-	r := e.a.run(c, t.code)
+	if t.blind {
+		return
+	}
+	r := e.a.run(c, d.Members[0].Index(), t.code)
 	if r.fault != nil {
 		e.evalFault(r.fault, d.Members[0])
 		c.sym.Why = r.fault.Message
@@ -232,4 +235,12 @@ func isNumeric(x Expr) bool {
 func isJ(x Expr) bool {
 	n, ok := x.(*Name)
 	return ok && n.Text == "j"
+}
+
+// validity elaborates the bounds of a validity range, which orders nothing and
+// is checked where the value is used.
+func (e *elab) validity(d *Definition) {
+	for _, r := range d.For {
+		e.bounds(r)
+	}
 }

@@ -3,7 +3,6 @@ package lang
 import (
 	"inkjoule/lang/eval"
 	"inkjoule/lang/kind"
-	"inkjoule/lang/unit"
 )
 
 // This file is the hardest of the package: one walk over an expression that
@@ -23,6 +22,7 @@ type typed struct {
 	kinds []kind.ID // kinds of the names that entered, without repetition
 	plain bool      // a pure number: literals, π and operations on them only
 	lit   *Literal  // the literal itself, for messages and level units
+	blind bool      // what it carries is known, its value is not: nothing is evaluated
 }
 
 // unknown is the expression about which nothing is known.
@@ -47,10 +47,29 @@ type scope struct {
 	up   *scope
 	key  string
 	t    typed
-	unit *unit.Unit
+	slot int
 }
 
-func (e *elab) bind(key string, t typed) { e.scope = &scope{up: e.scope, key: key, t: t} }
+// bind enters a local name with a slot of its own.
+func (e *elab) bind(key string, t typed) int {
+	slot := e.a.newSlot()
+	t.code = eval.Slot(slot, eval.Type{Shape: t.Shape, Complex: t.Complex})
+	t.lit, t.plain, t.pi = nil, false, 0
+	e.scope = &scope{up: e.scope, key: key, t: t, slot: slot}
+	return slot
+}
+
+// built completes an expression with its code, or reports what package eval
+// found wrong with the shapes.
+func (e *elab) built(t typed, at Tree) func(eval.Code, error) typed {
+	return func(c eval.Code, err error) typed {
+		if err != nil {
+			return e.refused(at, err)
+		}
+		t.code = c
+		return t
+	}
+}
 
 func (e *elab) local(key string) *scope {
 	for s := e.scope; s != nil; s = s.up {
@@ -132,6 +151,7 @@ func (t *typed) join(y typed) {
 	}
 	t.kinds = mergeKinds(t.kinds, y.kinds)
 	t.plain = t.plain && y.plain
+	t.blind = t.blind || y.blind
 }
 
 func (t *typed) addMedium(key string) {

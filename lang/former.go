@@ -61,8 +61,8 @@ type former struct {
 	depth  int
 }
 
-// maxDepth bounds how many names a form looks through one inside another.
-const maxDepth = 64
+// maxLookThrough bounds how many names a form looks through one inside another.
+const maxLookThrough = 64
 
 func (b *former) facts(x Expr) Facts {
 	f, _ := b.c.factsOf(x)
@@ -162,9 +162,9 @@ func (b *former) name(x *Name) *Form {
 func (b *former) symbol(s *Symbol) *Form {
 	c := b.n.state.cellOf(s)
 	plain := c != nil && c.plain && s.Facts.KindBy != Declared
-	if (b.expand(s) || plain) && s.Role == RoleQuantity && s.Def != nil && len(s.Def.Members) > 0 && b.depth < maxDepth && !c.cyclic && (plain || !s.Input) {
+	if (b.expand(s) || plain) && s.Role == RoleQuantity && s.Def != nil && len(s.Def.Members) > 0 && b.depth < maxLookThrough && !c.cyclic && (plain || !s.Input) {
 		inner := &former{n: b.n, c: c, expand: b.expand, depth: b.depth + 1}
-		if f := inner.form(s.Def.Members[0]); f != nil && len(f.Terms) <= maxTerms {
+		if f := inner.form(s.Def.Members[0]); f != nil && len(f.Terms) <= mostTerms {
 			return f
 		}
 	}
@@ -351,7 +351,7 @@ func (b *former) function(c *Call) *Form {
 // inline looks through a function of the note.
 func (b *former) inline(c *Call, s *Symbol) *Form {
 	d := s.Def
-	if d == nil || len(d.Params) != len(c.Args) || len(d.Pieces) > 0 || b.depth >= maxDepth || len(d.Members) == 0 {
+	if d == nil || len(d.Params) != len(c.Args) || len(d.Pieces) > 0 || b.depth >= maxLookThrough || len(d.Members) == 0 {
 		return nil
 	}
 	inner := &former{n: b.n, c: b.n.state.cellOf(s), expand: b.expand, depth: b.depth + 1, local: map[string]*Form{}}

@@ -42,16 +42,17 @@ func (e *elab) sum(b *Binary, x, y typed) typed {
 	if !e.sumOfTemperatures(b, x, y, &t) {
 		return unknown()
 	}
-	if x.plain || x.pi == y.pi {
-		t.pi = min(x.pi, y.pi)
+	if x.pi == y.pi {
+		t.pi = x.pi
 	}
-	t.plain = true
-	t.Media, t.kinds, t.plain = x.Media, x.kinds, x.plain
+	t.Media, t.kinds, t.plain, t.blind = x.Media, x.kinds, x.plain, x.blind
 	t.join(y)
-	t.Kind, t.KindBy = sumKind(x, y)
+	t.Kind, t.KindBy = sumKind(b.Op, x, y)
 	t.Qualifier, t.QualBy = sumQualifier(x, y)
-	t.code = addCode(b.Op, x.code, y.code)
-	return t
+	if b.Op == OpSub {
+		return e.built(t, b)(eval.Sub(b.ID, x.code, y.code))
+	}
+	return e.built(t, b)(eval.Add(b.ID, x.code, y.code))
 }
 
 // sumOfTemperatures keeps absolute temperatures apart from differences: the
@@ -105,7 +106,7 @@ func describe(f Facts) string {
 		u = "a plain number"
 	}
 	if f.Kind != 0 && f.KindBy >= Inferred {
-		return fmt.Sprintf("%s (%s)", f.Kind.Info().Name, u)
+		return fmt.Sprintf("%s (%s)", f.Kind, u)
 	}
 	return u
 }
@@ -123,12 +124,17 @@ func (e *elab) product(b *Binary, x, y typed) typed {
 		t.Dim, t.pi = x.Dim.Mul(y.Dim), x.pi+y.pi
 	}
 	t.Dim, t.pi = cyclesToAngle(t.Dim, t.pi)
-	t.Media, t.kinds, t.plain = x.Media, x.kinds, x.plain
+	t.Media, t.kinds, t.plain, t.blind = x.Media, x.kinds, x.plain, x.blind
 	t.join(y)
 	t.Kind, t.KindBy = productKind(b.Op, x, y, &t)
 	t.Qualifier, t.QualBy = productQualifier(b.Op, x, y)
-	t.code = mulCode(b, x.code, y.code)
-	return t
+	switch b.Op {
+	case OpDiv:
+		return e.built(t, b)(eval.Div(b.ID, x.code, y.code))
+	case OpDot:
+		return e.built(t, b)(eval.Dot(b.ID, x.code, y.code))
+	}
+	return e.built(t, b)(eval.Mul(b.ID, x.code, y.code))
 }
 
 // productShape is the shape of a product or quotient; ok is false where the
@@ -176,12 +182,11 @@ func (e *elab) cross(b *Binary, x, y typed) typed {
 		return e.shapeFault(b, x, y, "× needs two vectors; write * for a plain product")
 	}
 	t := typed{Facts: Facts{Known: true, Shape: eval.Vector, Complex: x.Complex || y.Complex, Dim: x.Dim.Mul(y.Dim)}}
-	t.Media, t.kinds, t.plain = x.Media, x.kinds, x.plain
+	t.Media, t.kinds, t.plain, t.blind = x.Media, x.kinds, x.plain, x.blind
 	t.join(y)
 	t.Kind, t.KindBy = crossKind(x, y, t.Dim)
 	t.Qualifier, t.QualBy = productQualifier(OpMul, x, y)
-	t.code = eval.Cross(x.code, y.code)
-	return t
+	return e.built(t, b)(eval.Cross(b.ID, x.code, y.code))
 }
 
 // unary infers a sign.
@@ -194,7 +199,7 @@ func (e *elab) unary(u *Unary) typed {
 		if t.Absolute && t.lit == nil {
 			t.Absolute = false
 		}
-		t.code = eval.Neg(t.code)
+		t.code = eval.Neg(u.ID, t.code)
 	}
 	t.lit = nil
 	return t
@@ -213,7 +218,7 @@ func (e *elab) power(b *Binary) typed {
 	if x.Shape == eval.Vector || x.Shape == eval.Tensor {
 		return e.vectorPower(b, x, y)
 	}
-	t := typed{Facts: Facts{Known: true, Shape: x.Shape, Complex: x.Complex || y.Complex}, plain: x.plain && y.plain, kinds: x.kinds}
+	t := typed{Facts: Facts{Known: true, Shape: x.Shape, Complex: x.Complex || y.Complex}, plain: x.plain && y.plain, kinds: x.kinds, blind: x.blind || y.blind}
 	t.Media = x.Media
 	if shape, ok := sameShape(x.Shape, y.Shape); ok {
 		t.Shape = shape
@@ -232,8 +237,7 @@ func (e *elab) power(b *Binary) typed {
 	}
 	t.Kind, t.KindBy = powerKind(x, t.Dim, exp, exact)
 	t.Qualifier, t.QualBy = powerQualifier(x, exp, exact)
-	t.code = powCode(b, x.code, y.code)
-	return t
+	return e.built(t, b)(eval.Pow(b.ID, x.code, y.code))
 }
 
 // vectorPower allows E^2 for E·E and nothing else.
@@ -260,10 +264,16 @@ func exactExponent(x Expr) (unit.Rat, bool) {
 // paren infers a parenthesis, with the unit that may follow a constant one.
 func (e *elab) paren(p *Paren) typed {
 	t := e.expr(p.X)
-	if !t.Known || p.Unit == nil && p.Spread == nil {
+	if !t.Known {
 		return t
 	}
-	return e.withUnit(p, t, p.Unit, p.Spread)
+	if p.Unit != nil {
+		t = e.withUnit(p, t, p.Unit)
+	}
+	if p.Spread != nil && t.Known {
+		return e.spreadOver(p, t, p.Spread)
+	}
+	return t
 }
 
 // bars infers |x|: the magnitude of a number, vector or phasor.
@@ -280,8 +290,7 @@ func (e *elab) bars(b *Bars) typed {
 		t.Shape = eval.Scalar
 	}
 	t.Complex, t.Absolute, t.lit = false, false, nil
-	t.code = eval.Abs(t.code)
-	return t
+	return e.built(t, b)(eval.Abs(b.ID, t.code))
 }
 
 // triple infers a vector.
@@ -305,9 +314,9 @@ func (e *elab) triple(v *Triple) typed {
 		t.Complex = t.Complex || x.Complex
 		t.join(x)
 	}
-	t.code = eval.Triple(xs[0].code, xs[1].code, xs[2].code)
-	if v.Unit != nil {
-		return e.withUnit(v, t, v.Unit, nil)
+	t = e.built(t, v)(eval.Triple(v.ID, xs[0].code, xs[1].code, xs[2].code))
+	if v.Unit != nil && t.Known {
+		return e.withUnit(v, t, v.Unit)
 	}
 	return t
 }

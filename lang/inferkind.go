@@ -1,7 +1,7 @@
 package lang
 
 import (
-	"sync"
+	"slices"
 
 	"inkjoule/lang/kind"
 	"inkjoule/lang/unit"
@@ -11,33 +11,35 @@ import (
 // where the dimension decides it, or where the kinds that went in do; where
 // dimensions tie and the ingredients do not tell, it stays unknown.
 
-// sumKind is the kind of a sum: that of both, or of the one that is known.
-func sumKind(x, y typed) (kind.ID, Standing) {
-	switch {
-	case x.Kind == y.Kind:
-		return x.Kind, min(x.KindBy, y.KindBy)
-	case x.Kind == 0:
-		return y.Kind, min(y.KindBy, Guessed)
-	case y.Kind == 0:
-		return x.Kind, min(x.KindBy, Guessed)
+// sumKind is the kind of a sum or difference; a kind that only one of them has
+// is a guess.
+func sumKind(op Op, x, y typed) (kind.ID, Standing) {
+	join := kind.Sum
+	if op == OpSub {
+		join = kind.Difference
 	}
-	return 0, Unknown
+	k, ok := join(x.Kind, y.Kind)
+	switch {
+	case !ok || k == 0:
+		return 0, Unknown
+	case x.Kind == 0 || y.Kind == 0:
+		return k, min(max(x.KindBy, y.KindBy), Guessed)
+	}
+	return k, min(x.KindBy, y.KindBy)
 }
 
 // sumQualifier is the statistic of a sum. Static and peak add to a peak;
 // static and rms do not add.
 func sumQualifier(x, y typed) (kind.Qualifier, Standing) {
 	by := min(x.QualBy, y.QualBy, Inferred)
-	a, b := x.Qualifier, y.Qualifier
 	switch {
-	case a == b:
-		return a, by
-	case a == kind.Static && b == kind.Peak, a == kind.Peak && b == kind.Static:
-		return kind.Peak, by
 	case isZeroNumber(x):
-		return b, y.QualBy
+		return y.Qualifier, y.QualBy
 	case isZeroNumber(y):
-		return a, x.QualBy
+		return x.Qualifier, x.QualBy
+	}
+	if q, ok := kind.Add(x.Qualifier, y.Qualifier); ok && q != kind.Unqualified {
+		return q, by
 	}
 	return kind.Unqualified, Unknown
 }
@@ -66,12 +68,11 @@ func scaled(x typed, t *typed) (kind.ID, Standing) {
 
 // crossKind tells a torque from an energy: r × F, m × B, p × E are torques.
 func crossKind(x, y typed, d unit.Dim) (kind.ID, Standing) {
-	k := named()
-	if d.Base() == k.torqueDim {
-		return k.torque, Inferred
-	}
-	if d.Base() == k.fluxDim {
-		return k.powerFlux, Inferred
+	switch d.Base() {
+	case kind.Torque.Dim().Base():
+		return kind.Torque, Inferred
+	case kind.PowerFluxDensity.Dim().Base():
+		return kind.PowerFluxDensity, Inferred
 	}
 	return ingredientKind(d, mergeKinds(x.kinds, y.kinds))
 }
@@ -93,101 +94,60 @@ func ingredientKind(d unit.Dim, in []kind.ID) (kind.ID, Standing) {
 	if id, ok := kind.Default(d); ok {
 		return id, Inferred
 	}
-	return named().decide(d, in)
+	return decide(d, in)
 }
-
-// names of kinds that inference itself speaks of.
-type kindNames struct {
-	energy, energyDensity, torque, powerFlux, power, force, pressure kind.ID
-	fluxDensityD, permittivity, relPermittivity, fieldE, voltage     kind.ID
-	current, fieldH, permeability, fluxDensityB                      kind.ID
-	torqueDim, fluxDim, densityDim, powerDim, dDim, fieldHDim        unit.Dim
-	parameters                                                       map[kind.ID]bool
-	electromagnetic                                                  map[kind.ID]bool
-}
-
-// named looks the kinds up once; the value is never changed afterwards.
-var named = sync.OnceValue(func() *kindNames {
-	id := func(words string) kind.ID {
-		_, k, _ := kind.Parse(words)
-		return k
-	}
-	n := &kindNames{
-		energy: id("energy"), energyDensity: id("energy density"), torque: id("torque"), powerFlux: id("power flux density"),
-		power: id("power"), force: id("force"), pressure: id("pressure"), fluxDensityD: id("electric flux density"),
-		permittivity: id("permittivity"), relPermittivity: id("relative permittivity"), fieldE: id("electric field strength"),
-		voltage: id("voltage"), current: id("electric current"), fieldH: id("magnetic field strength"),
-		permeability: id("permeability"), fluxDensityB: id("magnetic flux density"),
-		parameters: map[kind.ID]bool{}, electromagnetic: map[kind.ID]bool{},
-	}
-	dim := func(k kind.ID) unit.Dim {
-		if i := k.Info(); i != nil {
-			return i.Dim.Base()
-		}
-		return unit.Dim{}
-	}
-	n.torqueDim, n.fluxDim, n.densityDim, n.powerDim = dim(n.torque), dim(n.powerFlux), dim(n.energyDensity), dim(n.power)
-	n.dDim, n.fieldHDim = dim(n.fluxDensityD), dim(n.fieldH)
-	for _, w := range []string{"capacitance", "lineic capacitance", "permittivity", "relative permittivity", "electric susceptibility",
-		"permeability", "relative permeability", "inductance", "mutual inductance", "lineic inductance", "conductivity", "resistivity",
-		"resistance", "reactance", "impedance", "conductance", "susceptance", "admittance", "surface resistance", "ratio", "efficiency", "duty ratio",
-		"loss factor", "quality factor", "power factor", "coupling factor", "leakage factor", "number of turns", "frequency", "angular frequency",
-		"period", "time", "time constant", "wavelength", "length", "thickness", "radius", "skin depth", "area", "volume", "angle", "solid angle",
-		"phase speed", "attenuation coefficient", "phase coefficient", "propagation coefficient", "refractive index", "density", "mass",
-		"temperature", "temperature rise", "thermal conductivity", "thermal resistance", "specific heat capacity", "reluctance", "safety factor", "utilisation"} {
-		n.parameters[id(w)] = true
-	}
-	for _, w := range []string{"capacitance", "permittivity", "voltage", "electric potential", "electric charge", "electric field strength",
-		"electric flux density", "electric polarization", "inductance", "electric current", "magnetic flux density", "magnetic field strength",
-		"magnetic flux", "linked flux", "permeability", "power", "current density", "electric current density", "resistance", "conductivity"} {
-		n.electromagnetic[id(w)] = true
-	}
-	delete(n.parameters, 0)
-	delete(n.electromagnetic, 0)
-	return n
-})
 
 // decide settles the ties of kinds.md where the ingredients do.
-func (n *kindNames) decide(d unit.Dim, in []kind.ID) (kind.ID, Standing) {
-	has := func(k kind.ID) bool {
-		for _, i := range in {
-			if i == k {
-				return true
-			}
-		}
-		return false
-	}
-	em := false
-	for _, i := range in {
-		em = em || n.electromagnetic[i]
-	}
+func decide(d unit.Dim, in []kind.ID) (kind.ID, Standing) {
+	has := func(k kind.ID) bool { return slices.Contains(in, k) }
+	fields := slices.ContainsFunc(in, electromagnetic)
 	switch d.Base() {
-	case n.torqueDim:
-		if em && !has(n.force) {
-			return n.energy, Inferred
+	case kind.Torque.Dim().Base():
+		if fields && !has(kind.Force) {
+			return kind.Energy, Inferred
 		}
-	case n.densityDim:
-		if em && !has(n.force) {
-			return n.energyDensity, Inferred
+	case kind.EnergyDensity.Dim().Base():
+		if fields && !has(kind.Force) {
+			return kind.EnergyDensity, Inferred
 		}
-	case n.powerDim:
-		if em {
-			return n.power, Inferred
+	case kind.Power.Dim().Base():
+		if fields {
+			return kind.Power, Inferred
 		}
-	case n.dDim:
-		if has(n.permittivity) && (has(n.fieldE) || has(n.voltage)) {
-			return n.fluxDensityD, Inferred
+	case kind.ElectricFluxDensity.Dim().Base():
+		if has(kind.Permittivity) && (has(kind.ElectricFieldStrength) || has(kind.Voltage)) {
+			return kind.ElectricFluxDensity, Inferred
 		}
-	case n.fieldHDim:
-		if has(n.fluxDensityB) && has(n.permeability) {
-			return n.fieldH, Inferred
+	case kind.MagneticFieldStrength.Dim().Base():
+		if has(kind.MagneticFluxDensity) && has(kind.Permeability) {
+			return kind.MagneticFieldStrength, Inferred
 		}
-	}
-	if has(n.permittivity) && d.Base() == n.permittivity.Info().Dim.Base() && (len(in) == 1 || len(in) == 2 && has(n.relPermittivity)) {
-		return n.permittivity, Inferred
+	case kind.Permittivity.Dim().Base():
+		if has(kind.Permittivity) && (len(in) == 1 || len(in) == 2 && has(kind.RelativePermittivity)) {
+			return kind.Permittivity, Inferred
+		}
 	}
 	return 0, Unknown
 }
+
+// electromagnetic reports the kinds whose products with each other make
+// electromagnetic energies and powers.
+func electromagnetic(k kind.ID) bool {
+	switch k.Info().Class {
+	case kind.ClassAmplitude, kind.ClassEnergy, kind.ClassPower, kind.ClassPowerFlux, kind.ClassSourceWork:
+		return true
+	}
+	for _, c := range []kind.ID{kind.Capacitance, kind.Permittivity, kind.Inductance, kind.Permeability, kind.Resistance, kind.Conductivity} {
+		if k.Is(c) {
+			return true
+		}
+	}
+	return false
+}
+
+// oscillates reports a kind whose quantity may vary in time: fields, voltages,
+// currents, energies, powers, forces.
+func oscillates(k kind.ID) bool { return k.Info().Class != kind.ClassOther }
 
 // signal reports whether an unqualified expression may still oscillate: it
 // carries a kind that is no parameter of the set-up.
@@ -195,16 +155,10 @@ func signal(t typed) bool {
 	if t.plain || t.Dim.IsOne() && t.Kind == 0 {
 		return false
 	}
-	n := named()
 	if t.Kind != 0 {
-		return !n.parameters[t.Kind]
+		return oscillates(t.Kind)
 	}
-	for _, k := range t.kinds {
-		if !n.parameters[k] {
-			return true
-		}
-	}
-	return len(t.kinds) == 0
+	return len(t.kinds) == 0 || slices.ContainsFunc(t.kinds, oscillates)
 }
 
 // productQualifier is the statistic of a product. A factor that does not
@@ -218,10 +172,13 @@ func productQualifier(op Op, x, y typed) (kind.Qualifier, Standing) {
 		return a, min(x.QualBy, Inferred)
 	case b != kind.Unqualified && a == kind.Unqualified && !signal(x) && op != OpDiv:
 		return b, min(y.QualBy, Inferred)
-	case a == kind.Static && b == kind.Static, a == kind.Instantaneous && b == kind.Instantaneous:
+	case op == OpDiv && a == b && (a == kind.Static || a == kind.Instantaneous):
 		return a, by
-	case a == kind.RMS && b == kind.RMS && op != OpDiv:
-		return kind.Average, by
+	case op == OpDiv:
+		return kind.Unqualified, Unknown
+	}
+	if q, ok := kind.Product(a, b); ok && q != kind.Unqualified {
+		return q, by
 	}
 	return kind.Unqualified, Unknown
 }

@@ -25,6 +25,9 @@ func (e *elab) literal(l *Literal) typed {
 			return unknown()
 		}
 		t.Absolute = u.Affine()
+		if id, ok := kind.Default(t.Dim); ok {
+			t.Kind, t.KindBy, t.kinds = id, Guessed, []kind.ID{id}
+		}
 	}
 	if l.Spread != nil {
 		t.code = e.uncertain(l, x)
@@ -39,21 +42,13 @@ func (e *elab) toSI(l *Literal, u unit.Unit) (float64, bool) {
 	if u.Level == nil {
 		return u.ToSI(l.Num.Value), true
 	}
-	root, known := e.rootPower(u)
-	if !known {
+	root, known := kind.RootPower(e.want)
+	if u.ByKind() && !known {
 		e.fault("unknown-kind", l, fmt.Sprintf("%s: whether %s counts a power or a field is not known", l.Num.Text+" "+l.Unit.Text, l.Unit.Text),
 			"name the kind after a comma: `G, gain = …` or `a, voltage ratio = …`")
 		return 0, false
 	}
 	return u.Level.ToLinear(l.Num.Value, root), true
-}
-
-// rootPower tells whether a level unit stands for a root-power quantity.
-func (e *elab) rootPower(u unit.Unit) (root, known bool) {
-	if r, fixed := u.Level.Fixed(); fixed {
-		return r, true
-	}
-	return kind.RootPower(e.want)
 }
 
 // unit reads a unit phrase and reports what is wrong with it.
@@ -151,11 +146,12 @@ func (e *elab) cellValue(c *cell, at Tree) typed {
 	if c.cyclic || !c.sym.Facts.Known {
 		return unknown()
 	}
-	t := typed{Facts: c.sym.Facts, pi: c.pi, kinds: c.kinds(), plain: c.plain}
-	t.code = eval.Slot(c.slot, eval.Type{Shape: t.Shape, Complex: t.Complex})
-	if !c.sym.Result.Known {
-		t.code = e.a.missing(c)
+	t := typed{Facts: c.sym.Facts, pi: c.pi, kinds: c.kinds(), plain: c.plain, blind: !c.sym.Result.Known}
+	if c.role == RoleConstant {
+		t.code = eval.Const(c.sym.Value)
+		return t
 	}
+	t.code = eval.Slot(c.slot, eval.Type{Shape: t.Shape, Complex: t.Complex})
 	return t
 }
 
@@ -236,15 +232,14 @@ func (e *elab) component(m *Member, t typed, field string) typed {
 	i, j, n := axes(m.Field.Text)
 	switch {
 	case t.Shape == eval.Vector && n == 1:
-		t.code = eval.Component(t.code, i)
+		t.Shape, t.lit = eval.Scalar, nil
+		return e.built(t, m)(eval.Component(m.ID, i, t.code))
 	case t.Shape == eval.Tensor && n == 2:
-		t.code = eval.TensorComponent(t.code, i, j)
-	default:
-		e.fault("unknown-property", m, fmt.Sprintf("%s has no part .%s", sketch(m.X), m.Field.Text), partsHint(t.Shape))
-		return unknown()
+		t.Shape, t.lit = eval.Scalar, nil
+		return e.built(t, m)(eval.TensorComponent(m.ID, i, j, t.code))
 	}
-	t.Shape, t.lit = eval.Scalar, nil
-	return t
+	e.fault("unknown-property", m, fmt.Sprintf("%s has no part .%s", sketch(m.X), m.Field.Text), partsHint(t.Shape))
+	return unknown()
 }
 
 // axes reads "x" or "xz".

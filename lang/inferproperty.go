@@ -25,7 +25,7 @@ func (e *elab) property(medium *cell, field string, at Tree) (typed, bool) {
 		}
 		t := e.ownProperty(medium, c, at)
 		if t.Known {
-			t = e.derive(t, d, field)
+			t = e.derive(t, d, field, at)
 		}
 		return t, true
 	}
@@ -41,26 +41,24 @@ func (e *elab) ownProperty(medium, c *cell, at Tree) typed {
 }
 
 // derive gives a property that follows from another one.
-func (e *elab) derive(t typed, d derivation, field string) typed {
+func (e *elab) derive(t typed, d derivation, field string, at Tree) typed {
+	_, id, _ := kind.Parse(standardProperties()[field])
+	t.Kind, t.KindBy, t.kinds, t.lit = id, Inferred, []kind.ID{id}, nil
 	if d.how == 'i' {
-		if t.Shape == eval.Tensor {
-			t.code = e.builtin("inv", nil, t.code)
-		} else {
-			t.code = eval.Div(0, eval.Const(eval.Real(1)), t.code)
-		}
 		t.Dim = unit.Dim{}.Div(t.Dim)
-	} else {
-		by := e.a.cells[d.by]
-		k := eval.Slot(by.slot, eval.Type{})
-		if d.how == '*' {
-			t.code, t.Dim = eval.Mul(t.code, k), t.Dim.Mul(by.sym.Facts.Dim)
-		} else {
-			t.code, t.Dim = eval.Div(0, t.code, k), t.Dim.Div(by.sym.Facts.Dim)
+		if t.Shape == eval.Tensor {
+			return e.built(t, at)(eval.Builtin("inv", at.Index(), []eval.Code{t.code}))
 		}
+		return e.built(t, at)(eval.Div(at.Index(), eval.Num(1), t.code))
 	}
-	_, t.Kind, _ = kind.Parse(standardProperties()[field])
-	t.KindBy, t.kinds = Inferred, []kind.ID{t.Kind}
-	return t
+	by := e.a.cells[d.by]
+	k := eval.Const(by.sym.Value)
+	if d.how == '*' {
+		t.Dim = t.Dim.Mul(by.sym.Facts.Dim)
+		return e.built(t, at)(eval.Mul(at.Index(), t.code, k))
+	}
+	t.Dim = t.Dim.Div(by.sym.Facts.Dim)
+	return e.built(t, at)(eval.Div(at.Index(), t.code, k))
 }
 
 // complexPermittivity is eps' − j·eps” of a harmonic note (e^{+jωt}), from the
@@ -77,23 +75,36 @@ func (e *elab) complexPermittivity(medium *cell, at Tree) (typed, bool) {
 	if !loss.Known {
 		return unknown(), true
 	}
-	j := eval.Const(eval.Cplx(1i))
-	if !conducting {
-		if t.Complex {
-			e.fault("unknown-property", at, fmt.Sprintf("%s states a complex permittivity and a loss factor: the loss would count twice", medium.title()), "keep one of the two")
-			return unknown(), true
-		}
-		one := eval.Const(eval.Real(1))
-		t.code = eval.Mul(t.code, eval.Sub(one, eval.Mul(j, loss.code)))
-	} else {
+	if !conducting && t.Complex {
+		e.fault("unknown-property", at, fmt.Sprintf("%s states a complex permittivity and a loss factor: the loss would count twice", medium.title()), "keep one of the two")
+		return unknown(), true
+	}
+	second := loss.code // eps” itself, or the conductivity
+	var err error
+	if conducting {
 		w, known := e.angularFrequency(at)
 		if !known {
 			return unknown(), true
 		}
-		t.code = eval.Sub(t.code, eval.Mul(j, eval.Div(0, loss.code, w)))
+		second, err = eval.Div(at.Index(), loss.code, w)
+	} else {
+		second, err = eval.Mul(at.Index(), t.code, loss.code)
 	}
-	t.Complex = true
-	return t, true
+	t.join(loss)
+	t.Complex, t.kinds, t.lit = true, []kind.ID{t.Kind}, nil
+	return e.minusJ(t, second, err, at), true
+}
+
+// minusJ is eps' − j·eps” (e^{+jωt}).
+func (e *elab) minusJ(t typed, second eval.Code, err error, at Tree) typed {
+	if err != nil {
+		return e.refused(at, err)
+	}
+	im, err := eval.Mul(at.Index(), second, eval.Const(eval.Cplx(1i)))
+	if err != nil {
+		return e.refused(at, err)
+	}
+	return e.built(t, at)(eval.Sub(at.Index(), t.code, im))
 }
 
 // lossOf finds what makes a medium lossy.
@@ -114,10 +125,11 @@ func (e *elab) angularFrequency(at Tree) (eval.Code, bool) {
 		return eval.Code{}, false
 	}
 	w := eval.Slot(r.slot, eval.Type{})
-	if r.sym.Facts.Dim[unit.Cycle].Sign() > 0 {
-		w = eval.Mul(eval.Const(eval.Real(2*pi)), w)
+	if r.sym.Facts.Dim[unit.Cycle].Sign() <= 0 {
+		return w, true
 	}
-	return w, true
+	w, err := eval.Mul(at.Index(), eval.Num(2*pi), w)
+	return w, err == nil
 }
 
 // unknownProperty reports a property that a medium does not have.

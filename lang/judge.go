@@ -21,11 +21,11 @@ func (a *analysis) judge(c *cell) {
 		if t.Text != nil {
 			j.Text = t.Text.Text
 		}
-		j.Per = quoted(t.Per)
+		j.Per = t.Per.text()
 	case *Criterion:
-		j.Word, rel, j.Per = "criterion", t.Rel, quoted(t.Per)
+		j.Word, rel, j.Per = "criterion", t.Rel, t.Per.text()
 	case *Check:
-		j.Word, rel, j.Per = "check", t.Rel, quoted(t.Per)
+		j.Word, rel, j.Per = "check", t.Rel, t.Per.text()
 	}
 	c.judged = j
 	if rel != nil {
@@ -34,7 +34,8 @@ func (a *analysis) judge(c *cell) {
 	}
 }
 
-func quoted(q *Quote) string {
+// text is the quoted text, "" where there is none.
+func (q *Quote) text() string {
 	if q == nil {
 		return ""
 	}
@@ -225,7 +226,7 @@ func (e *elab) both(r *Relation, i int, ts []typed) string {
 	text := ""
 	for k := range 2 {
 		x, t := r.Terms[i+k], ts[i+k]
-		o := e.a.runQuiet(e.c, r.ID, t.code)
+		o := e.a.run(e.c, r.ID, t.code)
 		if u.IsZero() {
 			u = chosenUnit(t.Facts, o.value)
 		}
@@ -299,7 +300,7 @@ func (e *elab) byDigits(literal Expr, computed, stated eval.Value) bool {
 		u = e.a.readUnit(p.Text).unit
 	}
 	digit, ok := finestDigit(literal)
-	return ok && agrees(computed, stated, u, 0.5*math.Pow(10, float64(digit)))
+	return ok && agrees(computed, stated, u, digit, false)
 }
 
 // sides writes the two sides of an equation.

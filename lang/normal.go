@@ -41,8 +41,8 @@ type Factor struct {
 	Over    *Symbol // the region of an integral: an extensive factor
 }
 
-// maxTerms bounds the growth of a form; a larger one becomes opaque.
-const maxTerms = 64
+// mostTerms bounds the growth of a form; a larger one becomes opaque.
+const mostTerms = 64
 
 // Single returns the form's only term, if there is exactly one.
 func (f *Form) Single() (Term, bool) {
@@ -133,7 +133,7 @@ func (f *Form) tidy() *Form {
 
 // mul is f · g, nil where it would grow beyond the bound.
 func (f *Form) mul(g *Form) *Form {
-	if f == nil || g == nil || len(f.Terms)*len(g.Terms) > maxTerms {
+	if f == nil || g == nil || len(f.Terms)*len(g.Terms) > mostTerms {
 		return nil
 	}
 	out := &Form{}

@@ -28,7 +28,7 @@ func (a *analysis) newSlot() int {
 // outcome is what a run gave.
 type outcome struct {
 	value               eval.Value
-	grad                eval.Gradient
+	grad                []float64
 	standard, low, high float64
 	fault               *eval.Fault
 }
@@ -40,21 +40,7 @@ func (a *analysis) run(c *cell, node int, code eval.Code) outcome {
 	if fault != nil {
 		return outcome{fault: fault}
 	}
-	o := outcome{value: v}
-	in := a.uncertain(c)
-	if len(in) == 0 {
-		return o
-	}
-	g, fault := m.frame.Propagate(node, code, in)
-	if fault != nil {
-		return outcome{fault: fault}
-	}
-	o.grad = g
-	if v.Shape() == eval.Scalar && v.IsReal() {
-		o.standard = g.Standard()
-		o.low, o.high = g.Bounds(v)
-	}
-	return o
+	return outcome{value: v}
 }
 
 // value runs an expression at once where it reads nothing that varies.

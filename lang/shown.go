@@ -211,10 +211,8 @@ func (e *elab) shownUnit(d *Definition) unit.Unit {
 // chosenUnit is the SI unit of the kind with a prefix that gives 1 to 999.
 func chosenUnit(f Facts, v eval.Value) unit.Unit {
 	u := unit.Coherent(f.Dim)
-	if k := f.Kind.Info(); k != nil && k.Dim.Compatible(f.Dim) {
-		if own, err := unit.Parse(k.Unit); err == nil {
-			u = own
-		}
+	if f.Kind != 0 && f.Kind.Dim().Compatible(f.Dim) {
+		u = f.Kind.Unit()
 	}
 	largest := 0.0
 	for i := range v.Len() {

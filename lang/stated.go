@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"inkjoule/lang/eval"
+	"inkjoule/lang/kind"
 	"inkjoule/lang/unit"
 )
 
@@ -77,7 +78,7 @@ func (e *elab) member2(d *Definition, m Expr) {
 	if !e.c.sym.Result.Known {
 		return
 	}
-	r := e.a.runQuiet(e.c, t.code)
+	r := e.a.run(e.c, m.Index(), t.code)
 	if r.fault != nil {
 		e.evalFault(r.fault, m)
 		return
@@ -121,8 +122,8 @@ func (e *elab) verifyStated(d *Definition, m Expr, stated eval.Value) {
 	if !ok {
 		return
 	}
-	half := 0.5 * math.Pow(10, float64(digit))
-	if agrees(e.c.sym.Value, stated, u, half) {
+	root, _ := kind.RootPower(e.c.sym.Facts.Kind)
+	if agrees(e.c.sym.Value, stated, u, digit, root) {
 		e.verifySpread(d, m, u)
 		return
 	}
@@ -164,16 +165,16 @@ func (e *elab) verifySubstituted(d *Definition, m Expr, v eval.Value) {
 
 // ratio is v / w where that is a number: scalars, or the magnitudes of others.
 func ratio(v, w eval.Value) (float64, bool) {
-	a, b := v.Norm(), w.Norm()
+	a, b := norm(v), norm(w)
 	if b == 0 || math.IsNaN(a) || math.IsNaN(b) || math.IsInf(a, 0) {
 		return 0, false
 	}
 	r := a / b
-	if v.IsReal() && w.IsReal() && v.Shape == eval.Scalar && v.Re()*w.Re() < 0 {
+	if v.IsReal() && w.IsReal() && v.Shape() == eval.Scalar && v.Re()*w.Re() < 0 {
 		r = -r
 	}
-	if v.Shape != eval.Scalar || !v.IsReal() || !w.IsReal() {
-		if v.Distance(w) > substitutionTolerance*b && math.Abs(r-1) <= substitutionTolerance {
+	if v.Shape() != eval.Scalar || !v.IsReal() || !w.IsReal() {
+		if distance(v, w) > substitutionTolerance*b && math.Abs(r-1) <= substitutionTolerance {
 			return 0, false
 		}
 	}
@@ -181,9 +182,10 @@ func ratio(v, w eval.Value) (float64, bool) {
 }
 
 // agrees compares computed and stated values, half a last digit in the unit.
-func agrees(computed, stated eval.Value, u unit.Unit, half float64) bool {
+func agrees(computed, stated eval.Value, u unit.Unit, digit int, root bool) bool {
+	half := 0.5 * math.Pow(10, float64(digit))
 	if u.Level != nil {
-		return levelAgrees(computed, stated, u, half)
+		return levelAgrees(computed, stated, u, half, root)
 	}
 	scale := 1.0
 	if !u.IsZero() {
@@ -191,7 +193,7 @@ func agrees(computed, stated eval.Value, u unit.Unit, half float64) bool {
 	}
 	n := max(computed.Len(), stated.Len())
 	for i := 0; i < n; i++ {
-		c, s := computed.At(i), stated.At(i)
+		c, s := computed.At(i).C(), stated.At(i).C()
 		tol := half*scale*(1+relativeSlack) + relativeSlack*cabs(c)
 		if math.Abs(real(c)-real(s)) > tol || math.Abs(imag(c)-imag(s)) > tol {
 			return false
@@ -201,8 +203,7 @@ func agrees(computed, stated eval.Value, u unit.Unit, half float64) bool {
 }
 
 // levelAgrees compares in decibels: the digits written are those of the level.
-func levelAgrees(computed, stated eval.Value, u unit.Unit, half float64) bool {
-	root, _ := u.Level.Fixed()
+func levelAgrees(computed, stated eval.Value, u unit.Unit, half float64, root bool) bool {
 	c, s := u.Level.FromLinear(computed.Re(), root), u.Level.FromLinear(stated.Re(), root)
 	return math.Abs(c-s) <= half*(1+relativeSlack)
 }
