@@ -45,7 +45,7 @@ func (c *Config) Excludes(path string, folder bool) bool {
 
 // file is the shape of the configuration file.
 type file struct {
-	FailLevel *level           `toml:"fail-level"`
+	FailLevel failLevel        `toml:"fail-level"`
 	Exclude   []string         `toml:"exclude"`
 	Severity  map[string]level `toml:"severity"`
 }
@@ -56,8 +56,23 @@ type level lang.Severity
 // UnmarshalText reads error, caution, advice or off.
 func (l *level) UnmarshalText(text []byte) error {
 	s, err := ParseSeverity(string(text))
-	*l = level(s)
+	if err == nil {
+		*l = level(s)
+	}
 	return err
+}
+
+// failLevel is a severity that is not off.
+type failLevel lang.Severity
+
+// UnmarshalText reads error, caution or advice.
+func (l *failLevel) UnmarshalText(text []byte) error {
+	s, err := ParseSeverity(string(text))
+	if err != nil || s == 0 {
+		return fmt.Errorf("%q is none of error, caution, advice", text)
+	}
+	*l = failLevel(s)
+	return nil
 }
 
 // ParseSeverity reads error, caution or advice, and off as 0.
@@ -88,8 +103,8 @@ func parseConfig(path string, data []byte, known *check.Catalogue) (*Config, err
 	c.Path = path
 	var f file
 	faults := decode(path, data, &f)
-	if f.FailLevel != nil {
-		c.FailLevel = lang.Severity(*f.FailLevel)
+	if f.FailLevel != 0 {
+		c.FailLevel = lang.Severity(f.FailLevel)
 	}
 	c.Severity = map[string]lang.Severity{}
 	at := newPositions(data)

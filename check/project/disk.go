@@ -41,7 +41,7 @@ func (d Disk) Read(ctx context.Context, path string) (string, error) {
 	if !within(d.Root, resolved(abs)) {
 		return "", fmt.Errorf("%s lies outside the folder of this work", path)
 	}
-	return ReadFile(path)
+	return ReadFile(filepath.Clean(path))
 }
 
 // resolved follows links as far as the path exists.

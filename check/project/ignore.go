@@ -116,7 +116,7 @@ func translateOne(b *strings.Builder, glob string, i int) (int, bool) {
 	}
 }
 
-// translateStars handles `*`, and `**` where it fills a whole path segment.
+// translateStars handles `*`, and `**` (or more) where it fills a whole segment.
 func translateStars(b *strings.Builder, glob string, i int) int {
 	end := i
 	for end < len(glob) && glob[end] == '*' {
@@ -124,9 +124,9 @@ func translateStars(b *strings.Builder, glob string, i int) int {
 	}
 	starts := i == 0 || glob[i-1] == '/'
 	switch {
-	case end-i == 2 && starts && end == len(glob):
+	case end-i >= 2 && starts && end == len(glob):
 		b.WriteString(".+")
-	case end-i == 2 && starts && glob[end] == '/':
+	case end-i >= 2 && starts && glob[end] == '/':
 		b.WriteString("(?:.*/)?")
 		return end + 1
 	default:

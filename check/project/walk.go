@@ -91,7 +91,7 @@ func (s *find) folder(path, abs string, ignore Ignore) int {
 		s.faults = append(s.faults, plain(path, err))
 	}
 	if holdsGit(entries) {
-		ignore = nil // a repository within another one has its own rules
+		ignore = ownList(abs) // a repository within another one has its own rules
 	}
 	ignore = ignore.With(abs)
 	found := 0
@@ -166,10 +166,7 @@ func ignoresAbove(abs string) Ignore {
 	if top == "" {
 		return nil
 	}
-	var g Ignore
-	if data, err := os.ReadFile(filepath.Join(top, ".git", "info", "exclude")); err == nil {
-		g = append(g, ParsePatterns(filepath.ToSlash(top), string(data)))
-	}
+	g := ownList(top)
 	rest, err := filepath.Rel(top, abs)
 	if err != nil || rest == "." {
 		return g
@@ -180,6 +177,15 @@ func ignoresAbove(abs string) Ignore {
 		folder = filepath.Join(folder, part)
 	}
 	return g
+}
+
+// ownList is what the repository of a folder leaves out by its own list.
+func ownList(top string) Ignore {
+	data, err := os.ReadFile(filepath.Join(top, ".git", "info", "exclude"))
+	if err != nil {
+		return nil
+	}
+	return Ignore{ParsePatterns(filepath.ToSlash(top), string(data))}
 }
 
 // repository gives the nearest folder upward that holds `.git`, or "".

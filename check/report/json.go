@@ -10,9 +10,9 @@ import (
 	"inkjoule/lang"
 )
 
-// jsonVersion is raised when a field changes its meaning; fields are added
-// without it, and none is ever renamed.
-const jsonVersion = 1
+// opening begins every document. The version is raised when a field changes its
+// meaning; fields are added without it, and none is ever renamed.
+const opening = `{"version": 1, "notes": [`
 
 // jsonWriter streams one object: a note a line within "notes".
 type jsonWriter struct {
@@ -27,7 +27,7 @@ func newJSON(w io.Writer, _ Options) Writer { return &jsonWriter{w: w} }
 func (j *jsonWriter) Note(n *Note) error {
 	lead := ",\n"
 	if !j.begun {
-		lead = `{"version": 1, "notes": [` + "\n"
+		lead = opening + "\n"
 		j.begun = true
 	}
 	j.count.Add(CountOf(n))
@@ -42,7 +42,7 @@ func (j *jsonWriter) Problem(message string) error {
 func (j *jsonWriter) Close() error {
 	lead := "\n], \"problems\": "
 	if !j.begun {
-		lead = `{"version": 1, "notes": [], "problems": `
+		lead = opening + `], "problems": `
 	}
 	if j.problems == nil {
 		j.problems = []string{}
