@@ -15,6 +15,7 @@ type state struct {
 	all     []*cell
 	byStmt  map[*Stmt][]*cell
 	symbols map[string]*Symbol
+	imports map[string]*Note
 	inputs  int
 }
 
@@ -42,6 +43,7 @@ func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
 		c.slot = i
 	}
 	a.machine = newMachine(ctx, len(a.all))
+	a.placeForeign()
 	for _, c := range order {
 		if err := ctx.Err(); err != nil {
 			return nil, err
@@ -122,6 +124,8 @@ func (a *analysis) work(c *cell) {
 		a.region(c, t)
 	case *Table:
 		a.table(c, t)
+	case *Column:
+		a.column(c, t)
 	case *Assume, *Criterion, *Check:
 		a.judge(c)
 	case *Plot:
@@ -147,7 +151,7 @@ func (a *analysis) readUnit(text string) unitReading {
 func (a *analysis) freeze() *Note {
 	n := &Note{Path: a.opt.Path, Script: a.script}
 	st := &state{cells: a.cells, all: a.all, byStmt: make(map[*Stmt][]*cell, len(a.script.Stmts)),
-		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs}
+		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, imports: a.imported}
 	n.state = st
 	for _, c := range a.all {
 		st.byStmt[c.stmt] = append(st.byStmt[c.stmt], c)
@@ -173,7 +177,12 @@ func (a *analysis) freezeSymbols(n *Note) {
 		st.symbols[c.key] = s
 	}
 	for key, c := range a.cells {
-		if c.stmt == nil {
+		switch {
+		case c.path != "":
+			s := c.symbol(st)
+			s.Path = c.path
+			st.symbols[key] = s
+		case c.stmt == nil:
 			s := c.sym
 			s.Key, s.Role = key, c.role
 			st.symbols[key] = &s

@@ -15,6 +15,9 @@ import (
 
 // call infers a function call or a form that binds a variable.
 func (e *elab) call(c *Call) typed {
+	if c.Of != nil {
+		return e.propertyCall(c)
+	}
 	key := CanonicalName(c.Fn.Text)
 	if f := e.a.cells[key]; f != nil && f.role == RoleFunction {
 		e.use(f.key, c.Fn.Span)
@@ -249,7 +252,7 @@ const maxCallDepth = 100
 // instance elaborates the body of a function for one call.
 func (e *elab) instance(c *Call, f *cell, d *Definition, xs []typed) typed {
 	slots, codes := make([]int, len(xs)), make([]eval.Code, len(xs))
-	inner := &elab{a: e.a, c: f, quiet: 1, depth: e.depth + 1, work: e.work}
+	inner := &elab{a: f.home(e.a), c: f, quiet: 1, depth: e.depth + 1, work: e.work}
 	blind := false
 	for i, p := range d.Params {
 		codes[i] = xs[i].code
@@ -270,7 +273,7 @@ func (e *elab) instance(c *Call, f *cell, d *Definition, xs []typed) typed {
 // declaredOver puts what a function declares over what its body gives.
 func (c *cell) declaredOver(t typed) typed {
 	s := c.sym.Facts
-	if s.Kind != 0 && s.KindBy == Declared && s.Kind.Dim().Compatible(t.Dim) {
+	if s.Kind != 0 && s.KindBy >= Inferred && s.Kind.Dim().Compatible(t.Dim) {
 		t.Kind, t.KindBy, t.kinds = s.Kind, Declared, []kind.ID{s.Kind}
 		t.Dim = absorb(s.Kind, t.Dim)
 	}
@@ -296,4 +299,62 @@ func plural(word string, n int) string {
 		return word
 	}
 	return word + "s"
+}
+
+// propertyCall infers mica.eps_r(T): a property that is a function, stated or
+// derived from one that is.
+func (e *elab) propertyCall(c *Call) typed {
+	n, ok := c.Of.(*Name)
+	medium, through := e.ownerOf(c.Of)
+	if ok {
+		medium = e.a.cells[CanonicalName(n.Text)]
+	}
+	switch {
+	case through && medium.role == RoleMedium:
+		return e.mediumCall(c, medium)
+	case !ok:
+		e.expr(c.Of)
+		e.fault("unknown-function", &c.Fn, fmt.Sprintf("%s has no function %s", sketch(c.Of), c.Fn.Text), "")
+		return unknown()
+	case medium == nil:
+		e.unknownName(n, n.Text, "unknown-name")
+		return unknown()
+	case medium.role == RoleNote:
+		return e.foreignCall(c, medium)
+	case medium.role != RoleMedium:
+		e.fault("unknown-function", &c.Fn, fmt.Sprintf("%s is a %s and has no function %s", n.Text, roleName(medium.role), c.Fn.Text), "")
+		return unknown()
+	}
+	return e.mediumCall(c, medium)
+}
+
+// mediumCall calls a property of a medium that is a function.
+func (e *elab) mediumCall(c *Call, medium *cell) typed {
+	e.use(medium.key, c.Of.Place())
+	field := CanonicalName(c.Fn.Text)
+	if f := e.a.cells[medium.key+"."+field]; f != nil {
+		return e.applyProperty(c, medium, f)
+	}
+	for _, d := range derivations(field) {
+		if f := e.a.cells[medium.key+"."+d.from]; f != nil {
+			if t := e.applyProperty(c, medium, f); t.Known {
+				return e.derive(t, d, field, c)
+			}
+			return unknown()
+		}
+	}
+	return e.unknownProperty(&Member{Node: c.Node, X: c.Of, Field: Ident(c.Fn)}, medium)
+}
+
+// applyProperty calls a property, which must be a function.
+func (e *elab) applyProperty(c *Call, medium, f *cell) typed {
+	e.use(f.key, c.Fn.Span)
+	d, ok := f.tree.(*Definition)
+	if !ok || len(d.Params) == 0 {
+		e.fault("unknown-function", &c.Fn, fmt.Sprintf("%s is a value, not a function", f.title()), "leave the parenthesis out, or state the property as a function")
+		return unknown()
+	}
+	t := e.applied(c, f)
+	t.addMedium(medium.key)
+	return t
 }

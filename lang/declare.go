@@ -19,11 +19,15 @@ type analysis struct {
 	old    map[Tree]*cell // finished cells of the previous analysis, by tree
 	faults []Fault        // that belong to no cell, note offsets
 
-	ctx       context.Context
-	previous  *state
-	machine   *machine
-	inputs    int              // uncertain inputs numbered so far
-	firstSoft map[string]*cell // the first cell whose unit phrase hides a name
+	ctx        context.Context
+	previous   *state
+	machine    *machine
+	inputs     int // uncertain inputs numbered so far
+	pending    []pendingNames
+	imported   map[string]*Note
+	views      []*analysis
+	incomplete bool             // a referred note could not be read: names may come from it
+	firstSoft  map[string]*cell // the first cell whose unit phrase hides a name
 }
 
 // unitReading is a unit phrase read once for the whole note.
@@ -65,7 +69,7 @@ func (a *analysis) cellsOf(s *Stmt) []*cell {
 	case *Region:
 		return one(RoleRegion, t, &t.Name)
 	case *Table:
-		return one(RoleTable, t, &t.Name)
+		return a.tableCells(s, t)
 	case *Regime:
 		if t.Name != nil {
 			return one(RoleCondition, t, t.Name)

@@ -33,14 +33,9 @@ func (e *elab) measure(m *Member, c *cell, field string) typed {
 	e.notYet(m, "region")
 	return unknown()
 }
-func (e *elab) column(m *Member, c *cell, field string) typed  { e.notYet(m, "table"); return unknown() }
-func (e *elab) foreign(m *Member, c *cell, field string) typed { e.notYet(m, "uses"); return unknown() }
-func (e *elab) lookup(l *Lookup) typed                         { e.notYet(l, "at"); return unknown() }
-func (e *elab) cell(l *Cell) typed                             { e.notYet(l, "cell"); return unknown() }
+func (e *elab) lookup(l *Lookup) typed { e.notYet(l, "at"); return unknown() }
 
 func (a *analysis) region(c *cell, r *Region) {}
-func (a *analysis) table(c *cell, t *Table)   {}
-func (a *analysis) imports()                  {}
 
 func (e *elab) uncertain(l *Literal, x float64) eval.Code         { return eval.Num(x) }
 func (e *elab) spreadOver(p *Paren, t typed, s *Spread) typed     { return t }

@@ -112,10 +112,8 @@ func (e *elab) name(n *Name) typed {
 	if key == "j" {
 		return typed{Facts: Facts{Known: true, Complex: true}, plain: true, code: eval.Const(eval.Cplx(1i))}
 	}
-	if e.c.owner != nil {
-		if t, ok := e.property(e.c.owner, key, n); ok {
-			return t
-		}
+	if t, ok := e.sibling(key, n); ok {
+		return t
 	}
 	c := e.a.cells[key]
 	if c == nil {
@@ -124,6 +122,24 @@ func (e *elab) name(n *Name) typed {
 	}
 	e.use(c.key, n.Span)
 	return e.cellValue(c, n)
+}
+
+// sibling infers the use of a property or column from inside the same medium
+// or table.
+func (e *elab) sibling(key string, n *Name) (typed, bool) {
+	owner := e.c.owner
+	switch {
+	case owner == nil:
+		return unknown(), false
+	case owner.role == RoleMedium:
+		return e.property(owner, key, n)
+	}
+	c := e.a.cells[owner.key+"."+key]
+	if c == nil {
+		return unknown(), false
+	}
+	e.use(c.key, n.Span)
+	return e.cellValue(c, n), true
 }
 
 // use records where a name is used.
@@ -193,35 +209,43 @@ func roleHint(c *cell) string {
 func (e *elab) member(m *Member) typed {
 	field := CanonicalName(m.Field.Text)
 	n, ok := m.X.(*Name)
-	if !ok {
+	c, through := e.ownerOf(m.X)
+	if !ok && !through {
 		return e.component(m, e.expr(m.X), field)
 	}
-	key := CanonicalName(n.Text)
-	if s := e.local(key); s != nil {
-		return e.component(m, s.t, field)
+	if ok {
+		key := CanonicalName(n.Text)
+		if s := e.local(key); s != nil {
+			return e.component(m, s.t, field)
+		}
+		if c = e.a.cells[key]; c == nil {
+			e.unknownName(n, n.Text, "unknown-name")
+			return unknown()
+		}
 	}
-	c := e.a.cells[key]
-	if c == nil {
-		e.unknownName(n, n.Text, "unknown-name")
-		return unknown()
-	}
+	return e.memberOf(m, c, field)
+}
+
+// memberOf infers what stands after the point of a known owner.
+func (e *elab) memberOf(m *Member, c *cell, field string) typed {
+	at := m.X.Place()
 	switch c.role {
 	case RoleMedium:
-		e.use(c.key, n.Span)
+		e.use(c.key, at)
 		if t, ok := e.property(c, field, m); ok {
 			return t
 		}
 		return e.unknownProperty(m, c)
 	case RoleRegion:
-		e.use(c.key, n.Span)
+		e.use(c.key, at)
 		return e.measure(m, c, field)
 	case RoleTable:
-		e.use(c.key, n.Span)
-		return e.column(m, c, field)
+		e.use(c.key, at)
+		return e.ownColumn(m, c, field)
 	case RoleNote:
 		return e.foreign(m, c, field)
 	}
-	return e.component(m, e.expr(n), field)
+	return e.component(m, e.expr(m.X), field)
 }
 
 // component infers D.x, eps.xz.

@@ -134,19 +134,9 @@ func (e *elab) angularFrequency(at Tree) (eval.Code, bool) {
 
 // unknownProperty reports a property that a medium does not have.
 func (e *elab) unknownProperty(m *Member, c *cell) typed {
-	var have []string
-	for _, o := range e.a.all {
-		if o.owner == c {
-			have = append(have, o.name.Text)
-		}
-	}
-	detail := "it has none yet"
-	if len(have) > 0 {
-		detail = "it has " + list(have)
-	}
 	e.report(Fault{
 		Rule: "unknown-property", Severity: Error, Span: m.Field.Span,
-		Message: fmt.Sprintf("medium %s has no property %s", c.title(), m.Field.Text), Detail: detail,
+		Message: fmt.Sprintf("medium %s has no property %s", c.title(), m.Field.Text), Detail: e.a.owned(c),
 		Related: e.relate(c, "the medium"),
 	})
 	return unknown()

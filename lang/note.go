@@ -68,6 +68,7 @@ type Result struct {
 type Symbol struct {
 	Name  string // as its definition spells it
 	Key   string // canonical; a property or column is "owner.key"
+	Path  string // the note that defines it; "" for the note itself
 	Role  Role
 	Owner *Symbol // medium, table or region that it belongs to
 	Stmt  *Stmt   // nil for constants
@@ -124,6 +125,8 @@ type Options struct {
 	Path     string
 	Files    Files // nil: references to other notes are unknown
 	Previous *Note // an earlier analysis of the same path, for reuse; may be nil
+
+	within []string // the notes that led here, to find circles
 }
 
 // Analyze reads, resolves, infers and evaluates a note. The error is non-nil

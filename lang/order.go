@@ -56,7 +56,7 @@ func (w *walk) visit(c *cell) {
 	w.colour[c] = grey
 	w.path = append(w.path, c)
 	for i, d := range c.deps {
-		if d != nil && !c.needs[i].soft && d.stmt != nil {
+		if d != nil && !c.needs[i].soft && d.stmt != nil && d.path == "" {
 			w.visit(d)
 		}
 	}

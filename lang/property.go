@@ -43,7 +43,7 @@ func standardProperties() map[string]string {
 // else those it is derived from; none where the medium has no such property.
 func (a *analysis) propertyCells(medium, property string) []string {
 	c := a.cells[medium]
-	if c == nil || c.role != RoleMedium && c.role != RoleNote {
+	if c == nil || c.role != RoleMedium && c.role != RoleNote && c.role != RoleTable {
 		return nil
 	}
 	if own := medium + "." + property; a.cells[own] != nil {

@@ -42,8 +42,8 @@ func (a *analysis) needsOf(c *cell) []need {
 		if t.Shape != nil {
 			k.all(t.Shape.Args)
 		}
-	case *Table:
-		k.table(t)
+	case *Column:
+		k.expr(t.Formula)
 	case *Regime:
 		k.expr(t.X)
 	case *Assume:
@@ -84,18 +84,6 @@ func (k *collector) limits(r *Range) {
 	k.expr(r.From)
 	k.expr(r.To)
 	k.expr(r.At)
-}
-
-func (k *collector) table(t *Table) {
-	var own []string
-	for _, c := range t.Columns {
-		own = append(own, CanonicalName(c.Name.Text))
-	}
-	k.hide(own, 1)
-	for _, c := range t.Columns {
-		k.expr(c.Formula)
-	}
-	k.hide(own, -1)
 }
 
 func (k *collector) relation(r *Relation) {
@@ -178,6 +166,7 @@ func (k *collector) member(m *Member) {
 	n, ok := m.X.(*Name)
 	if !ok {
 		k.expr(m.X)
+		k.through(m)
 		return
 	}
 	base := CanonicalName(n.Text)
@@ -193,8 +182,24 @@ func (k *collector) member(m *Member) {
 	}
 }
 
+// through handles `ref.mica.eps`: a property of a referred note's medium.
+func (k *collector) through(m *Member) {
+	o, ok := m.X.(*Member)
+	if !ok {
+		return
+	}
+	if n, ok := o.X.(*Name); ok {
+		owner := CanonicalName(n.Text) + "." + CanonicalName(o.Field.Text)
+		for _, f := range k.a.propertyCells(owner, CanonicalName(m.Field.Text)) {
+			k.add(f, m.Span)
+		}
+	}
+}
+
 func (k *collector) call(c *Call) {
-	if name := CanonicalName(c.Fn.Text); k.a.cells[name] != nil {
+	if n, ok := c.Of.(*Name); ok {
+		k.member(&Member{Node: c.Node, X: n, Field: Ident(c.Fn)})
+	} else if name := CanonicalName(c.Fn.Text); k.a.cells[name] != nil {
 		k.add(name, c.Fn.Span)
 	}
 	k.unit(c.Unit)

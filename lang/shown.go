@@ -211,6 +211,10 @@ func (e *elab) shownUnit(d *Definition) unit.Unit {
 // chosenUnit is the SI unit of the kind with a prefix that gives 1 to 999.
 func chosenUnit(f Facts, v eval.Value) unit.Unit {
 	u := unit.Coherent(f.Dim)
+	if f.Absolute {
+		u, _ = unit.Parse("°C")
+		return u
+	}
 	if f.Kind != 0 && f.Kind.Dim().Compatible(f.Dim) {
 		u = f.Kind.Unit()
 	}

@@ -93,6 +93,9 @@ func editDistance(a, b string, most int) int {
 
 // unknownName reports a name that nothing defines, with the nearest one.
 func (e *elab) unknownName(at Tree, name, rule string) {
+	if e.a.incomplete {
+		return
+	}
 	f := Fault{Rule: rule, Severity: Error, Span: at.Place(), Message: fmt.Sprintf("%s is not defined in this note", name)}
 	if near := nearest(name, e.a.names()); near != "" {
 		f.Detail = fmt.Sprintf("did you mean %s?", near)

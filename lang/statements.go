@@ -184,7 +184,7 @@ func (c *cell) neglected() (Fault, bool) {
 		f.Rule = "unasked-result"
 		f.Message = fmt.Sprintf("nobody states or uses %s (%s)", c.title(), c.sym.Shown)
 		f.Detail = "end it with `= __` to show the result, or remove it"
-	case c.role == RoleQuantity && c.sym.Input, c.role != RoleQuantity:
+	case c.role == RoleQuantity && c.sym.Input && c.sym.Facts.Known, c.role != RoleQuantity:
 		f.Rule = "unused-definition"
 		f.Message = fmt.Sprintf("nothing uses %s", c.title())
 		f.Detail = "remove it if it is left over"
