@@ -61,14 +61,14 @@ func reach(first, rest string) (lo, hi int) {
 	return -30, 30
 }
 
-// outside is the distance in decades of x/10^exp from 1 to 999.95, which is
-// what prints as 1 to 999.9; x is positive.
+// outside is the distance in decades of x/10^exp from the range in which four
+// digits print as 1.000 to 999.9; x is positive.
 func outside(x float64, exp int) float64 {
 	lg := math.Log10(x) - float64(exp)
-	const top = 2.999978 // lg 999.95
+	const top = 2.9999782840 // lg 999.95
 	switch {
-	case lg < -1e-12:
-		return -lg
+	case lg < top-3:
+		return top - 3 - lg
 	case lg >= top:
 		return lg - top + 1e-9
 	}

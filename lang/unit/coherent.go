@@ -10,8 +10,8 @@ var readable = [...]string{
 	"m^2", "m^3", "m^-1", "m^-2", "m^-3", "s^-1", "s^-2", "m/s", "m/s^2", "rad/s", "rad/s^2", "rad/m",
 	"kg/m^3", "kg/m", "kg/m^2", "kg/s", "kg/mol", "N/m", "N/m^3", "Pa·s", "N·s", "J·s",
 	"C/m", "C/m^2", "C/m^3", "C·m", "C/kg", "A/m", "A/m^2", "A·m^2", "A/s", "A^2", "A^2·s", "V/m", "V/m^2", "V·m", "V^2", "V/s", "V/K",
-	"F/m", "F/m^2", "F^-1", "H/m", "H^-1", "S/m", "Ω·m", "Ω/m", "Wb/m", "Wb·m", "T/m", "T/s", "T^2", "m^2/(V·s)",
-	"J/m", "J/m^2", "J/kg", "J/mol", "J/K", "J/(kg·K)", "J/(m^3·K)", "J/(mol·K)",
+	"F/m", "F/m^2", "F^-1", "H/m", "H^-1", "S/m", "Ω·m", "Ω/m", "Wb/m", "Wb·m", "T/m", "T^2", "m^2/(V·s)",
+	"J/kg", "J/mol", "J/K", "J/(kg·K)", "J/(m^3·K)", "J/(mol·K)",
 	"W/m", "W/m^2", "W/m^3", "W/kg", "W/K", "W/(m·K)", "W/(m^2·K)", "W/sr", "W/(m^2·sr)", "W/(m^2·K^4)",
 	"K/W", "K/s", "K/m", "K^-1", "m/K", "m^2/s", "m^3/s", "m·K/W", "m^2·K/W",
 	"V/Hz^(1/2)", "A/Hz^(1/2)", "W/Hz", "V^2/Hz", "s^(1/2)", "m^(1/2)",
@@ -46,11 +46,7 @@ func Coherent(d Dim) Unit {
 	if u, ok := m[d.Base()]; ok {
 		return u
 	}
-	phrase := search(d.Base())
-	u, err := Parse(phrase)
-	if err != nil {
-		return Unit{}
-	}
+	u, _ := Unit{Symbol: search(d.Base()), Dim: d.Base()}.finish()
 	return u
 }
 

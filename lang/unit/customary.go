@@ -14,12 +14,14 @@ import (
 // is built when the first of them is read, about 0.1 ms, and is not changed.
 var supplied = sync.OnceValue(func() map[string]Factor {
 	return map[string]Factor{
-		"in": fromGoUnits(units.Inch, units.Meter, 0),
-		"ft": fromGoUnits(units.Foot, units.Meter, 0),
-		"yd": fromGoUnits(units.Yard, units.Meter, 0),
-		"mi": fromGoUnits(units.Mile, units.Meter, 0),
-		"oz": fromGoUnits(units.Ounce, units.Gram, -3),
-		"lb": fromGoUnits(units.Pound, units.Gram, -3),
+		"in":  fromGoUnits(units.Inch, units.Meter, 0),
+		"ft":  fromGoUnits(units.Foot, units.Meter, 0),
+		"yd":  fromGoUnits(units.Yard, units.Meter, 0),
+		"mi":  fromGoUnits(units.Mile, units.Meter, 0),
+		"oz":  fromGoUnits(units.Ounce, units.Gram, -3),
+		"lb":  fromGoUnits(units.Pound, units.Gram, -3),
+		"Å":   fromGoUnits(units.Angstrom, units.Meter, 0),
+		"cal": fromGoUnits(units.Calorie, units.Joule, 0),
 	}
 })
 

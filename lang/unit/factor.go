@@ -102,8 +102,17 @@ func (f Factor) withBig(q *big.Rat) Factor {
 		return f
 	}
 	x, _ := q.Float64()
-	f.rest = combineRest(f.rest, x, 1)
+	f.rest = combineRest(f.rest, irrational(x), 1)
 	return f
+}
+
+// irrational guards a remainder: one that has left the range of float64 is NaN,
+// never the 0 that stands for none.
+func irrational(x float64) float64 {
+	if x == 0 || math.IsInf(x, 0) {
+		return math.NaN()
+	}
+	return x
 }
 
 // combineRest multiplies irrational remainders, where 0 stands for none.
@@ -115,9 +124,9 @@ func combineRest(a, b float64, sign int) float64 {
 		a = 1
 	}
 	if sign < 0 {
-		return a / b
+		return irrational(a / b)
 	}
-	return a * b
+	return irrational(a * b)
 }
 
 // small multiplies the mantissas in 64 bits, if that is possible.
@@ -156,7 +165,7 @@ func (f Factor) Pow(p Rat) Factor {
 		return Factor{Measured: f.Measured}
 	}
 	if !whole {
-		return Factor{rest: math.Pow(f.Float64(), p.Float64()), Measured: f.Measured}
+		return Factor{rest: irrational(math.Pow(f.Float64(), p.Float64())), Measured: f.Measured}
 	}
 	out := Factor{}
 	for range abs(n) {
@@ -180,6 +189,9 @@ func (f Factor) Float64() float64 {
 // rounded, which 7·0.001 is not.
 func (f Factor) split() (mul, div float64) {
 	mul, div = 1, 1
+	if abs(f.exp) > 22 && f.big == nil && f.den <= 1 && f.pi == 0 && f.rest == 0 {
+		return f.farDecimal(), 1
+	}
 	switch {
 	case f.big != nil:
 		mul, div = splitBig(f.big)
@@ -200,6 +212,15 @@ func (f Factor) split() (mul, div float64) {
 		mul *= f.rest
 	}
 	return mul, div
+}
+
+// farDecimal is a decimal factor beyond the powers of ten that float64 holds
+// exactly, correctly rounded.
+func (f Factor) farDecimal() float64 {
+	buf := strconv.AppendInt(make([]byte, 0, 32), max(f.num, 1), 10)
+	buf = strconv.AppendInt(append(buf, 'e'), int64(f.exp), 10)
+	x, _ := strconv.ParseFloat(string(buf), 64)
+	return x
 }
 
 // splitBig gives numerator and denominator as floats, or the quotient over 1

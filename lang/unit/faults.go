@@ -39,7 +39,7 @@ func groupEnd(s string, from int) int {
 }
 
 // splitFactors splits at the operators outside parentheses and takes the
-// parentheses off factors that are products.
+// parentheses off factors that are products. Empty factors are left out.
 func splitFactors(s string) []string {
 	var parts []string
 	depth, from := 0, 0
@@ -50,11 +50,18 @@ func splitFactors(s string) []string {
 		case r == ')':
 			depth--
 		case depth == 0 && isOperator(r) && !decimalPoint(s, i):
-			parts = append(parts, bare(s[from:i]))
+			parts = appendFactor(parts, s[from:i])
 			from = i + utf8.RuneLen(r)
 		}
 	}
-	return append(parts, bare(s[from:]))
+	return appendFactor(parts, s[from:])
+}
+
+func appendFactor(parts []string, s string) []string {
+	if s == "" {
+		return parts
+	}
+	return append(parts, bare(s))
 }
 
 func isOperator(r rune) bool { return r == '/' || r == '.' || r == '·' || r == '⋅' }
@@ -113,8 +120,18 @@ func (p *parser) stray() {
 	}
 }
 
-// printable replaces a byte that is not text, so that a message stays valid.
-func printable(s string) string { return strings.ToValidUTF8(s, "\uFFFD") }
+// printable makes text fit for a message: valid, and no longer than a line.
+func printable(s string) string {
+	const longest = 240
+	if len(s) > longest {
+		cut := longest
+		for cut > longest-utf8.UTFMax && !utf8.RuneStart(s[cut]) {
+			cut--
+		}
+		s = s[:cut] + "…"
+	}
+	return strings.ToValidUTF8(s, "\uFFFD")
+}
 
 // blank reports a blank inside the phrase.
 func (p *parser) blank() {
@@ -130,6 +147,9 @@ func (p *parser) blank() {
 
 // unknown reports a symbol that is no unit.
 func (p *parser) unknown(start int, symbol string) *PhraseError {
+	if isLevel(symbol) {
+		return levelInside(start, start+len(symbol))
+	}
 	e := &PhraseError{Start: start, End: start + len(symbol), Rule: "unknown-unit", Symbol: symbol,
 		Message: "`" + printable(symbol) + "` is not a unit"}
 	a := advise(symbol)

@@ -35,9 +35,12 @@ var levelRows = [...]levelRow{
 	{"dBuA/m", "decibel over 1 µA/m", RootPower, 1e-6, dimCurrent.Div(dimLength), false, srcLevel},
 }
 
-// isLevel reports a phrase that begins with dB or Np.
+// isLevel reports a phrase that begins with dB or Np; dBq is a becquerel.
 func isLevel(s string) bool {
-	return len(s) >= 2 && (s[0] == 'd' && s[1] == 'B' || s[0] == 'N' && s[1] == 'p')
+	if len(s) < 2 || s[:2] != "dB" && s[:2] != "Np" {
+		return false
+	}
+	return len(s) < 3 || s[2] != 'q'
 }
 
 // microAsU writes both micro signs as `u`.
@@ -129,6 +132,13 @@ func reference(phrase string) (Unit, *PhraseError) {
 	}
 	u, _ := Unit{Symbol: phrase, Dim: ref.Dim, Level: l}.finish()
 	return u, nil
+}
+
+// levelInside reports a level unit at [start, end) among other units.
+func levelInside(start, end int) *PhraseError {
+	e := levelFault("dB/")
+	e.Start, e.End = start, end
+	return e
 }
 
 // levelFault reports a phrase that begins like a level unit and is none.

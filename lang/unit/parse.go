@@ -67,7 +67,7 @@ type parser struct {
 
 func (p *parser) fail(start, end int, message, detail, suggest string) {
 	if p.err == nil {
-		p.err = &PhraseError{Start: start, End: end, Rule: "syntax", Message: message, Detail: detail, Suggest: suggest}
+		p.err = &PhraseError{Start: start, End: end, Rule: "syntax", Message: printable(message), Detail: printable(detail), Suggest: suggest}
 	}
 }
 

@@ -79,7 +79,7 @@ var rows = [...]row{
 	{"C", "coulomb", "", dimCharge, 1, 1, 0, 0, anyPrefix, srcSI, false},
 	{"V", "volt", "", dimVoltage, 1, 1, 0, 0, anyPrefix, srcSI, false},
 	{"F", "farad", "", of(-2, -1, 4, 2), 1, 1, 0, 0, anyPrefix, srcSI, false},
-	{"Ω", "ohm", "ohm Ω", of(2, 1, -3, -2), 1, 1, 0, 0, anyPrefix, srcSI, false},
+	{"Ω", "ohm", "ohm \u2126", of(2, 1, -3, -2), 1, 1, 0, 0, anyPrefix, srcSI, false},
 	{"S", "siemens", "", of(-2, -1, 3, 2), 1, 1, 0, 0, anyPrefix, srcSI, false},
 	{"Wb", "weber", "", dimFlux, 1, 1, 0, 0, anyPrefix, srcSI, false},
 	{"T", "tesla", "", dimTesla, 1, 1, 0, 0, anyPrefix, srcSI, false},
@@ -120,8 +120,8 @@ var rows = [...]row{
 	{"VAh", "volt ampere hour", "", dimEnergy, 3600, 1, 0, 0, upKMG, srcIEC, false},
 	{"varh", "var hour", "", dimEnergy, 3600, 1, 0, 0, upKMG, srcIEC, false},
 
-	// Length, area, mass, force: customary. in, ft, yd, mi, oz and lb have
-	// their factors from go-units (customary.go); these lines name them.
+	// Length, area, mass, force: customary. A line without a factor has it from
+	// go-units (customary.go).
 	{"in", "inch", "", dimLength, 0, 0, 0, 0, noPrefix, srcGoUnits, false},
 	{"ft", "foot", "", dimLength, 0, 0, 0, 0, noPrefix, srcGoUnits, false},
 	{"yd", "yard", "", dimLength, 0, 0, 0, 0, noPrefix, srcGoUnits, false},
@@ -129,7 +129,7 @@ var rows = [...]row{
 	{"oz", "ounce", "", dimMass, 0, 0, 0, 0, noPrefix, srcGoUnits, false},
 	{"lb", "pound", "lbm", dimMass, 0, 0, 0, 0, noPrefix, srcGoUnits, false},
 	{"mil", "mil (0.001 in)", "thou", dimLength, 254, 1, -7, 0, noPrefix, srcSP811, false},
-	{"Å", "ångström", "Å", dimLength, 1, 1, -10, 0, noPrefix, srcSP811, false},
+	{"Å", "ångström", "\u212B A\u030A", dimLength, 0, 0, 0, 0, noPrefix, srcGoUnits, false},
 	{"cmil", "circular mil", "", dimArea, 64516, 4, -14, 1, noPrefix, srcSP811, false},
 	{"kcmil", "thousand circular mils", "", dimArea, 64516, 4, -11, 1, noPrefix, srcSP811, false},
 	{"lbf", "pound-force", "", dimForce, 44482216152605, 1, -13, 0, noPrefix, srcSP811, false},
@@ -147,7 +147,7 @@ var rows = [...]row{
 
 	// Energy and power.
 	{"erg", "erg", "", dimEnergy, 1, 1, -7, 0, noPrefix, srcSP811, false},
-	{"cal", "calorie (thermochemical)", "", dimEnergy, 4184, 1, -3, 0, kiloMega, srcSP811, false},
+	{"cal", "calorie (thermochemical)", "", dimEnergy, 0, 0, 0, 0, kiloMega, srcGoUnits, false},
 	{"cal_IT", "calorie (International Table)", "", dimEnergy, 41868, 1, -4, 0, kiloMega, srcSP811, false},
 	{"BTU", "British thermal unit (International Table)", "Btu", dimEnergy, 105505585262, 1, -8, 0, noPrefix, srcSP811, false},
 	{"hp", "horsepower (550 ft·lbf/s)", "", dimPower, 74569987158227022, 1, -14, 0, noPrefix, srcSP811, false},
