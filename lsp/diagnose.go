@@ -17,13 +17,10 @@ const source = "inkjoule"
 // diagnostics turns the findings of a note into what the client shows. Where
 // the client can't show a part, the text says it.
 func (v *view) diagnostics(s *snapshot, a *analysis) []protocol.Diagnostic {
-	w := reporter{view: v, snap: s, at: s.mapper().ascending(), caps: "textDocument.publishDiagnostics"}
-	if v.client.pulls {
-		w.caps = "textDocument.diagnostic"
-	}
+	w := v.reporter(s)
 	out := []protocol.Diagnostic{}
 	for _, f := range a.findings {
-		if f.Waived == "" && (f.Path == "" || f.Path == s.path) {
+		if !f.IsWaived() && (f.Path == "" || f.Path == s.home.path) {
 			out = append(out, w.diagnostic(f))
 		}
 	}
@@ -36,6 +33,14 @@ type reporter struct {
 	snap *snapshot
 	at   mapper
 	caps string // the path of the client's capabilities for diagnostics
+}
+
+func (v *view) reporter(s *snapshot) reporter {
+	w := reporter{view: v, snap: s, at: s.mapper().ascending(), caps: "textDocument.publishDiagnostics"}
+	if v.client.pulls {
+		w.caps = "textDocument.diagnostic"
+	}
+	return w
 }
 
 func (w reporter) diagnostic(f check.Finding) protocol.Diagnostic {
@@ -107,7 +112,7 @@ func (w reporter) listed(all []lang.Related) []string {
 			continue
 		}
 		where := fmt.Sprintf("line %d", loc.Range.Start.Line+1)
-		if r.Path != "" && r.Path != w.snap.path {
+		if r.Path != "" && r.Path != w.snap.home.path {
 			where = r.Path + ", " + where
 		}
 		out = append(out, where+": "+strings.TrimSpace(r.Message))

@@ -102,7 +102,7 @@ func TestDiagnosticShowsWhatTheClientCan(t *testing.T) {
 func TestTags(t *testing.T) {
 	unused := func(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
 		f := lang.Fault{Rule: "unused-definition", Severity: lang.Advice, Message: "nothing uses a"}
-		waived := check.Finding{Fault: lang.Fault{Rule: "x", Severity: lang.Error}, Waived: "agreed"}
+		waived := check.Finding{Fault: lang.Fault{Rule: "x", Severity: lang.Error}, Waived: "agreed", WaivedBy: lang.Span{Start: 1, End: 3}}
 		foreign := check.Finding{Fault: lang.Fault{Rule: "y", Severity: lang.Error}, Path: "other.joule"}
 		return nil, []check.Finding{{Fault: f, Path: in.Path}, waived, foreign}, nil
 	}
@@ -237,6 +237,7 @@ func TestRefreshForDependents(t *testing.T) {
 func TestTheFolderIsAWall(t *testing.T) {
 	top := t.TempDir()
 	dir := filepath.Join(top, "w")
+	writeNote(t, dir, "inkjoule.toml", "")
 	writeNote(t, top, "secret.joule", "the secret")
 	note := writeNote(t, dir, "sub/a.joule", "")
 	if err := os.Symlink(filepath.Join(top, "secret.joule"), filepath.Join(dir, "link.joule")); err != nil {
@@ -258,22 +259,21 @@ func TestTheFolderIsAWall(t *testing.T) {
 	e.quit()
 }
 
-func TestLocate(t *testing.T) {
-	v := &view{folders: []folder{"/w", "/w/inner", "/other"}}
-	for _, c := range []struct{ uri, root, name string }{
-		{"file:///w/a.joule", "/w", "a.joule"},
-		{"file:///w/inner/b/a.joule", "/w", "inner/b/a.joule"},
-		{"file:///wide/a.joule", "/wide", "a.joule"},
-		{"file:///lone/%C3%BC%20x%231.joule", "/lone", "ü x#1.joule"},
-		{"untitled:Untitled-1", "", "Untitled-1"},
+func TestHome(t *testing.T) {
+	dir := t.TempDir()
+	writeNote(t, dir, "w/inkjoule.toml", "")
+	for _, c := range []struct{ name, root, path string }{
+		{"w/a.joule", "w", "a.joule"},
+		{"w/inner/b/a.joule", "w", "inner/b/a.joule"},
+		{"lone/ü x#1.joule", "lone", "ü x#1.joule"},
 	} {
-		u, err := uri.Parse(c.uri)
-		if err != nil {
-			t.Fatal(err)
+		u := uri.URI(writeNote(t, dir, c.name, ""))
+		if got, want := homeOf(u), (home{filepath.Join(dir, c.root), c.path}); got != want {
+			t.Errorf("%s: %+v, want %+v", c.name, got, want)
 		}
-		if root, name := v.locate(u); root != c.root || name != c.name {
-			t.Errorf("%s: %q %q, want %q %q", c.uri, root, name, c.root, c.name)
-		}
+	}
+	if got := homeOf("untitled:Untitled-1"); got != (home{"", "Untitled-1"}) {
+		t.Errorf("untitled: %+v", got)
 	}
 }
 

@@ -21,6 +21,10 @@ func features() []feature {
 	return []feature{
 		textSync(),
 		pulledDiagnostics(),
+		inlayHints(),
+		hovers(),
+		documentSymbols(),
+		codeActions(),
 	}
 }
 

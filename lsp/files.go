@@ -4,32 +4,46 @@ import (
 	"context"
 	"errors"
 	"fmt"
-	"io"
-	"io/fs"
-	"os"
 	"path"
 	"path/filepath"
 	"strings"
 	"sync"
-	"time"
 
 	"go.lsp.dev/uri"
 
+	"inkjoule/check/project"
 	"inkjoule/lang"
 )
 
-// maxNote is the largest note that is read from the disk, in bytes.
-const maxNote = 64 << 20
+// home is where a note stands: the folder of its work, which is the wall of
+// what it may refer to, and its path in it.
+type home struct {
+	root string // absolute; "" for a text that is not a file of this machine
+	path string // slash-separated
+}
 
-// bom is the UTF-8 byte order mark. Editors do not count it as a character, so
-// it is taken off a text of the disk.
-const bom = "\ufeff"
+// homeOf finds the home of a note as the command line does, so that both find
+// the same.
+func homeOf(u uri.URI) home {
+	if !u.IsFile() {
+		return home{"", strings.TrimPrefix(u.Path(), "/")}
+	}
+	file := filepath.Clean(u.FsPath())
+	root := project.Workspace(filepath.Dir(file))
+	rel, err := filepath.Rel(root, file)
+	if err != nil {
+		return home{filepath.Dir(file), filepath.Base(file)}
+	}
+	return home{root, filepath.ToSlash(rel)}
+}
 
-// files gives a note's analysis the other notes of its folder: as the editor
-// has them, else as the disk has them. The folder is a wall.
+// file is the absolute path of a note of the same work.
+func (h home) file(path string) string { return filepath.Join(h.root, filepath.FromSlash(path)) }
+
+// files gives a note's analysis the other notes of its work: as the editor has
+// them, else as the disk has them.
 type files struct {
-	root string // absolute folder; "" for a text that has none
-	disk *disk
+	home home
 	mu   sync.Mutex
 	open map[uri.URI]*lang.Source // the editor's texts; nil once the analysis is made
 	read map[uri.URI]bool         // what was asked for, existing or not
@@ -37,21 +51,22 @@ type files struct {
 
 // Read implements lang.Files.
 func (f *files) Read(ctx context.Context, name string) (string, error) {
-	if err := ctx.Err(); err != nil {
-		return "", err
-	}
-	name = path.Clean(name)
-	if f.root == "" {
+	if f.home.root == "" {
 		return "", errors.New("save the note to a folder first, so that it can refer to other notes")
 	}
-	if !fs.ValidPath(name) {
-		return "", fmt.Errorf("%s lies outside the workspace folder", name)
+	name = path.Clean(name)
+	if strings.HasPrefix(name, "../") || path.IsAbs(name) {
+		return "", fmt.Errorf("%s lies outside the folder of this work", name)
 	}
-	u := uri.File(filepath.Join(f.root, filepath.FromSlash(name)))
-	if src := f.ask(u); src != nil {
-		return src.Text, nil
+	file := f.home.file(name)
+	if src := f.ask(uri.File(file)); src != nil {
+		return src.Text, ctx.Err()
 	}
-	return f.disk.read(f.root, name)
+	text, err := project.DiskFor(f.home.file(f.home.path)).Read(ctx, filepath.ToSlash(file))
+	if err != nil {
+		err = errors.New(strings.ReplaceAll(err.Error(), filepath.ToSlash(file), name))
+	}
+	return text, err
 }
 
 // ask notes that a text was wanted and returns the editor's, or nil.
@@ -75,60 +90,4 @@ func (f *files) reads(u uri.URI) bool {
 	f.mu.Lock()
 	defer f.mu.Unlock()
 	return f.read[u]
-}
-
-// disk remembers the texts of notes until their file changes. Whether it has
-// is asked at each use, so that no event is needed to be up to date.
-type disk struct {
-	mu    sync.Mutex
-	texts map[string]stored
-}
-
-type stored struct {
-	at   time.Time
-	size int64
-	text string
-}
-
-func newDisk() *disk { return &disk{texts: map[string]stored{}} }
-
-// read returns the text of a note below root. A path or link that leads
-// outside root is refused.
-func (d *disk) read(root, name string) (string, error) {
-	dir, err := os.OpenRoot(root)
-	if err != nil {
-		return "", err
-	}
-	defer dir.Close()
-	file, err := dir.Open(filepath.FromSlash(name))
-	if err != nil {
-		return "", err
-	}
-	defer file.Close()
-	info, err := file.Stat()
-	switch {
-	case err != nil:
-		return "", err
-	case !info.Mode().IsRegular():
-		return "", fmt.Errorf("%s is not a file", name)
-	case info.Size() > maxNote:
-		return "", fmt.Errorf("%s has %d bytes, more than the %d that are read", name, info.Size(), maxNote)
-	}
-	return d.text(filepath.Join(root, filepath.FromSlash(name)), info, file)
-}
-
-// text returns the remembered text, or reads it.
-func (d *disk) text(key string, info fs.FileInfo, file io.Reader) (string, error) {
-	d.mu.Lock()
-	defer d.mu.Unlock()
-	if s, ok := d.texts[key]; ok && s.at.Equal(info.ModTime()) && s.size == info.Size() {
-		return s.text, nil
-	}
-	data, err := io.ReadAll(io.LimitReader(file, maxNote))
-	if err != nil {
-		return "", err
-	}
-	text := strings.TrimPrefix(string(data), bom)
-	d.texts[key] = stored{info.ModTime(), info.Size(), text}
-	return text, nil
 }

@@ -2,7 +2,6 @@ package lsp
 
 import (
 	"path/filepath"
-	"strings"
 
 	"go.lsp.dev/uri"
 )
@@ -34,32 +33,4 @@ func appendFolder(to []folder, u string) []folder {
 		return to
 	}
 	return append(to, folder(filepath.Clean(parsed.FsPath())))
-}
-
-// contains reports whether the file lies in the folder.
-func (f folder) contains(file string) bool {
-	rest, ok := strings.CutPrefix(file, string(f))
-	return ok && (rest == "" || rest[0] == filepath.Separator || strings.HasSuffix(string(f), string(filepath.Separator)))
-}
-
-// locate gives the folder that a note may refer to and its path in it: the
-// outermost workspace folder, else the folder that holds the file. A text that
-// is not a file of this machine has no folder.
-func (v *view) locate(u uri.URI) (root, name string) {
-	if !u.IsFile() {
-		return "", u.Path()
-	}
-	file := filepath.Clean(u.FsPath())
-	root = filepath.Dir(file)
-	found := false
-	for _, f := range v.folders {
-		if f.contains(file) && (!found || len(f) < len(root)) {
-			root, found = string(f), true
-		}
-	}
-	rel, err := filepath.Rel(root, file)
-	if err != nil {
-		rel = filepath.Base(file)
-	}
-	return root, filepath.ToSlash(rel)
 }

@@ -9,7 +9,6 @@ import (
 
 	"go.lsp.dev/jsonrpc2"
 	"go.lsp.dev/protocol"
-	"go.lsp.dev/uri"
 )
 
 // refreshPause gathers the reasons for a refresh into one.
@@ -70,14 +69,6 @@ func fingerprint(items []protocol.Diagnostic) (string, error) {
 		h.Write(raw)
 	}
 	return fmt.Sprintf("%x", h.Sum64()), nil
-}
-
-// note is an open document, or a note of the disk.
-func (v *view) note(u uri.URI) (*snapshot, error) {
-	if doc := v.docs[u]; doc != nil {
-		return doc, nil
-	}
-	return nil, jsonrpc2.Errorf(jsonrpc2.InvalidParams, "%s is not open", u)
 }
 
 // refresh asks a pulling client to ask again, once for all that changes within

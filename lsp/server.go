@@ -31,19 +31,20 @@ type Analyser func(ctx context.Context, in Input) (*lang.Note, []check.Finding, 
 
 // Input is what an Analyser gets.
 type Input struct {
-	Path     string     // slash-separated, relative to the workspace folder
+	Root     string     // the folder of the work, absolute; "" if the text is no file
+	Path     string     // slash-separated, relative to Root
 	Text     string     // the newest text, of the editor or of the disk
-	Files    lang.Files // the other notes of the folder
+	Files    lang.Files // the other notes of the work
 	Previous *lang.Note // an earlier analysis of the same note, or nil
 }
 
 // Options of a server.
 type Options struct {
-	Version string        // shown to the client
-	Analyse Analyser      // required
-	Rules   []*check.Rule // for hover and completion of rule names
-	Pages   string        // address of the rules' documentation, which a rule name completes; "" if none
-	Log     *slog.Logger  // nil: nothing is logged
+	Version   string           // shown to the client
+	Analyse   Analyser         // required
+	Catalogue *check.Catalogue // the rules, for hover and completion; nil: none
+	Pages     string           // address of the rules' documentation, which a rule name completes; "" if none
+	Log       *slog.Logger     // nil: nothing is logged
 }
 
 // Serve speaks the language server protocol on in and out until the client
@@ -52,6 +53,9 @@ type Options struct {
 func Serve(ctx context.Context, in io.Reader, out io.Writer, opt Options) error {
 	if opt.Log == nil {
 		opt.Log = slog.New(slog.DiscardHandler)
+	}
+	if opt.Catalogue == nil {
+		opt.Catalogue = &check.Catalogue{}
 	}
 	ctx, cancel := context.WithCancel(ctx)
 	defer cancel()

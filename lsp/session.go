@@ -10,22 +10,24 @@ import (
 	"time"
 
 	"go.lsp.dev/uri"
+
+	"inkjoule/check"
 )
 
 // session holds the state of a connection: the newest view, and the work that
 // follows from it.
 type session struct {
-	ctx     context.Context
-	stop    context.CancelFunc
-	log     *slog.Logger
-	analyse Analyser
-	peer    peer
-	disk    *disk
-	cpu     chan struct{} // one token for each analysis that may run
-	gate    sync.Mutex    // guards the start of work against the end of the session
-	work    sync.WaitGroup
-	publish sync.Mutex // orders the diagnostics that are pushed
-	pages   string     // address of the rules' documentation, which a rule name completes
+	ctx       context.Context
+	stop      context.CancelFunc
+	log       *slog.Logger
+	analyse   Analyser
+	peer      peer
+	cpu       chan struct{} // one token for each analysis that may run
+	gate      sync.Mutex    // guards the start of work against the end of the session
+	work      sync.WaitGroup
+	publish   sync.Mutex       // orders the diagnostics that are pushed
+	catalogue *check.Catalogue // the rules, for their documentation
+	pages     string           // address of the rules' documentation, which a rule name completes
 
 	refreshing atomic.Bool // a refresh is on its way
 
@@ -43,19 +45,20 @@ type peer interface {
 // one. Requests hold the view of the moment when they arrived.
 type view struct {
 	*session
-	client  *client
-	folders []folder
-	docs    map[uri.URI]*snapshot // the open documents
+	client   *client
+	folders  []folder
+	settings settings
+	docs     map[uri.URI]*snapshot // the open documents
 }
 
 func newSession(ctx context.Context, s *server) *session {
 	ctx, stop := context.WithCancel(ctx)
 	out := &session{
-		ctx: ctx, stop: stop, log: s.log, analyse: s.opt.Analyse, peer: s,
-		disk: newDisk(), pages: s.opt.Pages,
-		cpu: make(chan struct{}, max(1, runtime.GOMAXPROCS(0))),
+		ctx: ctx, stop: stop, log: s.log, analyse: s.opt.Analyse, peer: s, catalogue: s.opt.Catalogue,
+		pages: s.opt.Pages,
+		cpu:   make(chan struct{}, max(1, runtime.GOMAXPROCS(0))),
 	}
-	out.view = &view{session: out, client: &client{}, docs: map[uri.URI]*snapshot{}}
+	out.view = &view{session: out, client: &client{}, settings: defaults(), docs: map[uri.URI]*snapshot{}}
 	return out
 }
 
@@ -64,6 +67,7 @@ func (s *session) start(c *client, h *hello) {
 	s.change(func(v *view) {
 		v.client = c
 		v.folders = foldersOf(h)
+		v.settings = defaults().with(h.Options)
 	})
 }
 

@@ -22,7 +22,7 @@ type snapshot struct {
 	uri     uri.URI
 	version int32 // as the client counts; of no meaning for a text of the disk
 	open    bool  // the text is the editor's
-	path    string
+	home    home
 	src     *lang.Source
 	enc     encoding
 	files   *files
@@ -45,15 +45,22 @@ type analysis struct {
 	cost     time.Duration
 }
 
-// snap makes a snapshot of a text in a view.
-func (v *view) snap(u uri.URI, src *lang.Source) *snapshot {
-	ctx, cancel := context.WithCancelCause(v.ctx)
-	root, path := v.locate(u)
+// snap makes a snapshot of a text in a view. It lasts as long as somebody holds
+// it.
+func (v *view) snap(u uri.URI, at home, src *lang.Source) *snapshot {
 	return &snapshot{
-		uri: u, path: path, src: src, enc: v.client.enc, session: v.session,
-		files: &files{root: root, disk: v.disk, open: v.texts(), read: map[uri.URI]bool{}},
-		ctx:   ctx, supersede: cancel, done: make(chan struct{}),
+		uri: u, home: at, src: src, enc: v.client.enc, session: v.session,
+		files: &files{home: at, open: v.texts(), read: map[uri.URI]bool{}},
+		ctx:   v.ctx, supersede: func(error) {}, done: make(chan struct{}),
 	}
+}
+
+// opened makes it the snapshot of an open document, which ends when it is
+// superseded.
+func (s *snapshot) opened(version int32) *snapshot {
+	s.version, s.open = version, true
+	s.ctx, s.supersede = context.WithCancelCause(s.ctx)
+	return s
 }
 
 // texts are the open documents' texts.
@@ -128,15 +135,15 @@ func (s *snapshot) run() {
 func (s *snapshot) analyse() (a analysis, err error) {
 	defer func() {
 		if r := recover(); r != nil {
-			s.session.log.Error("panic", "note", s.path, "value", fmt.Sprint(r), "stack", string(debug.Stack()))
-			err = jsonrpc2.Errorf(jsonrpc2.InternalError, "internal error while checking %s; the log has the details", s.path)
+			s.session.log.Error("panic", "note", s.home.path, "value", fmt.Sprint(r), "stack", string(debug.Stack()))
+			err = jsonrpc2.Errorf(jsonrpc2.InternalError, "internal error while checking %s; the log has the details", s.home.path)
 		}
 		if cause := context.Cause(s.ctx); cause != nil {
 			err = cause
 		}
 	}()
 	begun := time.Now()
-	in := Input{Path: s.path, Text: s.src.Text, Files: s.files, Previous: s.previous.Load()}
+	in := Input{Root: s.home.root, Path: s.home.path, Text: s.src.Text, Files: s.files, Previous: s.previous.Load()}
 	a.note, a.findings, err = s.session.analyse(s.ctx, in)
 	a.cost = time.Since(begun)
 	return a, err

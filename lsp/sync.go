@@ -122,10 +122,10 @@ func (s *session) replace(u uri.URI, version int32, edit func(old *snapshot) (*l
 		if src, err = edit(old); err != nil {
 			return
 		}
-		doc = v.snap(u, src)
-		doc.version, doc.open = version, true
-		if old != nil {
-			doc.after(old)
+		if old == nil {
+			doc = v.snap(u, homeOf(u), src).opened(version)
+		} else {
+			doc = v.snap(u, old.home, src).opened(version).after(old)
 			old.supersede(errStale)
 		}
 		v.docs[u] = doc
@@ -146,8 +146,7 @@ func (v *view) renew(changed uri.URI) []*snapshot {
 		if !old.uses(changed) {
 			continue
 		}
-		doc := v.snap(u, old.src).after(old)
-		doc.version, doc.open = old.version, true
+		doc := v.snap(u, old.home, old.src).opened(old.version).after(old)
 		old.supersede(errStale)
 		v.docs[u] = doc
 		out = append(out, doc)

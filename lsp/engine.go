@@ -1,0 +1,127 @@
+package lsp
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"os"
+	"path"
+	"path/filepath"
+	"strings"
+	"sync"
+	"time"
+
+	"inkjoule/check"
+	"inkjoule/check/project"
+	"inkjoule/lang"
+)
+
+// NewAnalyser is the analysis that the command line makes too: the language,
+// the rules, and the configuration that holds for the note's folder.
+func NewAnalyser(rules []*check.Rule, catalogue *check.Catalogue) Analyser {
+	e := &engine{rules: rules, catalogue: catalogue, loaded: map[string]loaded{}}
+	return e.analyse
+}
+
+type engine struct {
+	rules     []*check.Rule
+	catalogue *check.Catalogue
+	mu        sync.Mutex
+	loaded    map[string]loaded // by the path of the configuration file
+}
+
+// loaded is a configuration made ready, as its file was at that time.
+type loaded struct {
+	at     time.Time
+	size   int64
+	runner check.Runner
+	fault  error // what is wrong with the file
+}
+
+func (e *engine) analyse(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
+	if err := readable(in); err != nil {
+		src := lang.NewSource(in.Text)
+		return &lang.Note{Path: in.Path, Script: &lang.Script{Source: src}}, []check.Finding{remark(in, err)}, nil
+	}
+	note, err := lang.Analyze(ctx, in.Text, lang.Options{Path: in.Path, Files: in.Files, Previous: in.Previous})
+	if err != nil {
+		return nil, nil, err
+	}
+	config := e.config(in)
+	found, err := config.runner.Run(ctx, note)
+	if ctx.Err() != nil {
+		return nil, nil, ctx.Err()
+	}
+	for _, err := range []error{config.fault, err} {
+		if err != nil {
+			found = append([]check.Finding{remark(in, err)}, found...)
+		}
+	}
+	return note, found, nil
+}
+
+// readable says why a text is not read as a note.
+func readable(in Input) error {
+	if len(in.Text) <= project.MaxSize && strings.IndexByte(in.Text, 0) < 0 {
+		return nil
+	}
+	_, err := project.Read(in.Path, strings.NewReader(in.Text))
+	return err
+}
+
+// remark is a finding about the work itself, at the start of the note: a
+// configuration or a rule that can't be used must not look like a clean review.
+func remark(in Input, err error) check.Finding {
+	f := check.Finding{Path: in.Path, Fault: lang.Fault{Rule: "configuration", Severity: lang.Error, Message: err.Error()}}
+	var broken *check.Broken
+	if errors.As(err, &broken) {
+		f.Rule = "not-checked"
+	}
+	return f
+}
+
+// config is what holds for a note. The file is looked for at each analysis and
+// read again when it has changed, so that no event is needed.
+func (e *engine) config(in Input) loaded {
+	file := ""
+	if in.Root != "" {
+		file = project.Find(filepath.Join(in.Root, filepath.FromSlash(path.Dir(in.Path))))
+	}
+	e.mu.Lock()
+	defer e.mu.Unlock()
+	now, ok := e.loaded[file]
+	at, size := stamp(file)
+	if !ok || !now.at.Equal(at) || now.size != size {
+		now = e.load(file)
+		now.at, now.size = at, size
+		e.loaded[file] = now
+	}
+	return now
+}
+
+func (e *engine) load(file string) loaded {
+	config, err := project.DefaultConfig(), error(nil)
+	if file != "" {
+		config, err = project.LoadConfig(file, e.catalogue)
+	}
+	runner, broken := check.NewRunner(check.Config{Rules: e.rules, Severity: config.Severity})
+	if err == nil {
+		err = broken
+	}
+	if err != nil {
+		err = fmt.Errorf("the configuration can't be used as it is: %w", err)
+	}
+	return loaded{runner: runner, fault: err}
+}
+
+// stamp tells a version of a file from another; zero if there is none.
+func stamp(file string) (time.Time, int64) {
+	if file == "" {
+		return time.Time{}, 0
+	}
+	info, err := os.Stat(file)
+	if err != nil {
+		return time.Time{}, 0
+	}
+	return info.ModTime(), info.Size()
+}

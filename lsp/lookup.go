@@ -1,0 +1,124 @@
+package lsp
+
+import (
+	"context"
+	"slices"
+	"sort"
+
+	"go.lsp.dev/protocol"
+	"go.lsp.dev/uri"
+
+	"inkjoule/lang"
+)
+
+// A spot is a place in an analysed note, as most requests name it.
+type spot struct {
+	view *view
+	doc  *snapshot
+	note *lang.Note
+	all  *analysis
+	at   int // note offset
+}
+
+// spot finds what a position means. It waits for the analysis.
+func (v *view) spot(ctx context.Context, p protocol.TextDocumentPositionParams) (*spot, error) {
+	s, err := v.whole(ctx, p.TextDocument.URI)
+	if err == nil {
+		s.at = s.doc.mapper().PositionToOffset(p.Position)
+	}
+	return s, err
+}
+
+// whole is the spot of a request for a whole note.
+func (v *view) whole(ctx context.Context, u uri.URI) (*spot, error) {
+	doc, err := v.note(u)
+	if err != nil {
+		return nil, err
+	}
+	a, err := doc.analysis(ctx)
+	if err != nil {
+		return nil, err
+	}
+	return &spot{view: v, doc: doc, note: a.note, all: a}, nil
+}
+
+// stmt is the statement at the spot, or nil. Its end belongs to it.
+func (s *spot) stmt() *lang.Stmt { return stmtAt(s.note, s.at) }
+
+func stmtAt(note *lang.Note, at int) *lang.Stmt {
+	all := note.Script.Stmts
+	i := sort.Search(len(all), func(i int) bool { return all[i].At > at }) - 1
+	if i < 0 || at > all[i].At+len(all[i].Text) {
+		return nil
+	}
+	return all[i]
+}
+
+// path is the chain of nodes at the spot, outermost first; a node's end
+// belongs to it, and of two that touch the later one is taken.
+func (s *spot) path() []lang.Tree {
+	stmt := s.stmt()
+	if stmt == nil || stmt.Tree == nil {
+		return nil
+	}
+	return pathTo(stmt.Tree, s.at-stmt.At)
+}
+
+func pathTo(top lang.Tree, at int) []lang.Tree {
+	path := []lang.Tree{top}
+	for {
+		var next lang.Tree
+		for _, c := range lang.Children(path[len(path)-1]) {
+			if c.Place().Contains(at) {
+				next = c
+			}
+		}
+		if next == nil {
+			return path
+		}
+		path = append(path, next)
+	}
+}
+
+// use is the use or definition of a name at the spot, or nil. A name is also
+// found from its end, unless another begins there.
+func (s *spot) use() *lang.Use {
+	uses := s.note.Uses
+	i := sort.Search(len(uses), func(i int) bool { return uses[i].Span.Start > s.at })
+	for i--; i >= 0; i-- {
+		if uses[i].Span.Contains(s.at) {
+			return &uses[i]
+		}
+		if uses[i].Span.Start < s.at && uses[i].Span.End < s.at {
+			return nil
+		}
+	}
+	return nil
+}
+
+// usesOf lists all places of a name, each once, in text order.
+func usesOf(note *lang.Note, sym *lang.Symbol) []lang.Use {
+	var out []lang.Use
+	for _, u := range note.Uses {
+		if sameSymbol(u.Symbol, sym) {
+			out = append(out, u)
+		}
+	}
+	return slices.CompactFunc(out, func(a, b lang.Use) bool { return a.Span == b.Span })
+}
+
+// sameSymbol reports whether two symbols, perhaps of two analyses, are one.
+func sameSymbol(a, b *lang.Symbol) bool {
+	return a == b || a != nil && b != nil && a.Key == b.Key && a.Role == b.Role && a.Role != lang.RoleParameter
+}
+
+// members are the properties, columns or parts of a name.
+func members(note *lang.Note, owner *lang.Symbol) []*lang.Symbol {
+	var out []*lang.Symbol
+	for _, m := range note.Symbols {
+		if m.Owner == owner {
+			out = append(out, m)
+		}
+	}
+	return out
+}
