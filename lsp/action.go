@@ -43,7 +43,7 @@ func actions(ctx context.Context, v *view, p *actionParams) (any, error) {
 		return nil, err
 	}
 	within := s.doc.mapper().RangeToSpan(p.Range)
-	out := protocol.CommandOrCodeActionSlice{}
+	out := []protocol.CommandOrCodeAction{}
 	for _, offer := range actionKinds() {
 		if wanted(offer.kind, p.Context.Only) {
 			out = append(out, offer.make(s, within)...)

@@ -3,7 +3,6 @@ package lsp
 import (
 	"context"
 	"slices"
-	"sort"
 
 	"go.lsp.dev/protocol"
 	"go.lsp.dev/uri"
@@ -43,16 +42,7 @@ func (v *view) whole(ctx context.Context, u uri.URI) (*spot, error) {
 }
 
 // stmt is the statement at the spot, or nil. Its end belongs to it.
-func (s *spot) stmt() *lang.Stmt { return stmtAt(s.note, s.at) }
-
-func stmtAt(note *lang.Note, at int) *lang.Stmt {
-	all := note.Script.Stmts
-	i := sort.Search(len(all), func(i int) bool { return all[i].At > at }) - 1
-	if i < 0 || at > all[i].At+len(all[i].Text) {
-		return nil
-	}
-	return all[i]
-}
+func (s *spot) stmt() *lang.Stmt { return s.note.StmtAt(s.at) }
 
 // path is the chain of nodes at the spot, outermost first; a node's end
 // belongs to it, and of two that touch the later one is taken.
@@ -80,20 +70,13 @@ func pathTo(top lang.Tree, at int) []lang.Tree {
 	}
 }
 
-// use is the use or definition of a name at the spot, or nil. A name is also
-// found from its end, unless another begins there.
+// use is the use or definition of a name at the spot, or nil.
 func (s *spot) use() *lang.Use {
-	uses := s.note.Uses
-	i := sort.Search(len(uses), func(i int) bool { return uses[i].Span.Start > s.at })
-	for i--; i >= 0; i-- {
-		if uses[i].Span.Contains(s.at) {
-			return &uses[i]
-		}
-		if uses[i].Span.Start < s.at && uses[i].Span.End < s.at {
-			return nil
-		}
+	u, ok := s.note.UseAt(s.at)
+	if !ok {
+		return nil
 	}
-	return nil
+	return &u
 }
 
 // usesOf lists all places of a name, each once, in text order.

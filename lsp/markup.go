@@ -90,7 +90,7 @@ func fence(code string) string {
 // escape keeps text from being read as Markdown or HTML.
 func escape(text string) string {
 	var b strings.Builder
-	for _, r := range text {
+	for i, r := range text {
 		switch {
 		case r == '<':
 			b.WriteString("&lt;")
@@ -98,7 +98,7 @@ func escape(text string) string {
 		case r == '&':
 			b.WriteString("&amp;")
 			continue
-		case strings.ContainsRune("\\`*_{}[]()#+-.!|>~", r):
+		case strings.ContainsRune("\\`*_[]#~|>", r), i == 0 && strings.ContainsRune("-+", r):
 			b.WriteByte('\\')
 		}
 		b.WriteRune(r)

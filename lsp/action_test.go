@@ -1,0 +1,136 @@
+package lsp
+
+import (
+	"context"
+	"strings"
+	"testing"
+
+	"inkjoule/check"
+	"inkjoule/lang"
+)
+
+type acted struct {
+	Title, Kind string
+	IsPreferred bool
+	Diagnostics []struct{ Code string }
+	Edit        struct {
+		Changes         map[string][]changed
+		DocumentChanges []struct {
+			TextDocument struct {
+				URI     string
+				Version *int
+			}
+			Edits []changed
+		}
+	}
+}
+
+type changed struct {
+	Range   reach
+	NewText string
+}
+
+// applied is the text of the note after its edits.
+func (d *desk) applied(edits []changed) string {
+	d.t.Helper()
+	m := newMapper(lang.NewSource(d.text), d.enc)
+	text := d.text
+	for i := len(edits) - 1; i >= 0; i-- { // the server gives them in the order of the text
+		span := m.RangeToSpan(toRange(edits[i].Range))
+		text = text[:span.Start] + edits[i].NewText + text[span.End:]
+	}
+	return text
+}
+
+func (d *desk) actions(mark string, only ...string) []acted {
+	d.t.Helper()
+	p := d.position(mark)
+	context := object{"diagnostics": []int{}}
+	if only != nil {
+		context["only"] = only
+	}
+	var out []acted
+	d.must("textDocument/codeAction", object{"textDocument": object{"uri": d.uri}, "range": object{"start": p, "end": p}, "context": context}, &out)
+	return out
+}
+
+func TestWriteAskedValue(t *testing.T) {
+	d := sit(t, able, capacitor)
+	got := d.actions("__| %")
+	if len(got) != 1 || got[0].Kind != "quickfix" || got[0].Title != "Write the result 3.390 %" {
+		t.Fatalf("got %s", show(got))
+	}
+	doc := got[0].Edit.DocumentChanges[0]
+	if doc.TextDocument.Version == nil || *doc.TextDocument.Version != 1 {
+		t.Errorf("version %v, want 1", doc.TextDocument.Version)
+	}
+	if text := d.applied(doc.Edits); text != strings.Replace(capacitor, "__ %", "3.390 %", 1) {
+		t.Errorf("the note becomes:\n%s", text)
+	}
+	d.quit()
+}
+
+func TestWriteResult(t *testing.T) {
+	d := sit(t, able, capacitor)
+	got := d.actions("N = om|ega")
+	if len(got) != 1 || got[0].Kind != "refactor.rewrite" {
+		t.Fatalf("got %s", show(got))
+	}
+	if text := d.applied(got[0].Edit.DocumentChanges[0].Edits); !strings.Contains(text, "N = omega*2 s = 628.3 rad  ") {
+		t.Errorf("the note becomes:\n%s", text)
+	}
+	if got := d.actions("N = om|ega", "quickfix"); len(got) != 0 {
+		t.Errorf("a client that asks for quick fixes gets %s", show(got))
+	}
+	if got := d.actions("N = om|ega", "refactor"); len(got) != 1 {
+		t.Errorf("a client that asks for refactorings gets %s", show(got))
+	}
+	d.quit()
+}
+
+// swapping is an analyser that offers to swap each `a` for `b`.
+func swapping(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
+	note, _, err := letters(ctx, in)
+	var found []check.Finding
+	for i, r := range in.Text {
+		if r == 'a' {
+			at := lang.Span{Start: i, End: i + 1}
+			fix := &lang.Fix{Title: "Write b", Edits: []lang.Edit{{Span: at, New: "b"}}}
+			found = append(found, check.Finding{Path: in.Path, Fault: lang.Fault{Rule: "swap", Severity: lang.Error, Span: at, Message: "an a", Fix: fix}})
+		}
+	}
+	return note, found, err
+}
+
+func TestFixes(t *testing.T) {
+	for _, caps := range []object{able, {"textDocument": object{"codeAction": object{"codeActionLiteralSupport": object{}}}}} {
+		d := &desk{editor: launch(t, Options{Analyse: swapping}), uri: "file:///a.joule", text: "x a y a z"}
+		d.start(caps)
+		d.open(d.uri, d.text)
+		one := d.actions("a y|")
+		if len(one) != 0 {
+			t.Errorf("actions where there is no finding: %s", show(one))
+		}
+		one = d.actions("x |a")
+		if len(one) != 1 || one[0].Title != "Write b" || len(one[0].Diagnostics) != 1 || one[0].Diagnostics[0].Code != "swap" {
+			t.Fatalf("got %s", show(one))
+		}
+		all := d.actions("x |a", "source.fixAll")
+		if len(all) != 1 || all[0].Kind != "source.fixAll.joule" {
+			t.Fatalf("got %s", show(all))
+		}
+		edits := all[0].Edit.Changes[d.uri]
+		if _, rich := caps["workspace"]; rich {
+			edits = all[0].Edit.DocumentChanges[0].Edits
+		}
+		if text := d.applied(edits); text != "x b y b z" {
+			t.Errorf("the note becomes %q", text)
+		}
+		d.edit(d.uri, 2, "x")
+		d.text = "x"
+		if none := d.actions("|x", "source.fixAll"); len(none) != 0 {
+			t.Errorf("an action that does nothing: %s", show(none))
+		}
+		d.quit()
+	}
+}
