@@ -148,7 +148,7 @@ func nameFaults() []*Rule {
     uses "no-such-note"
 `},
 			Right: Example{`
-    uses "handbook/solids"
+    uses "handbook/gases"
 `},
 		}),
 		firm(Rule{

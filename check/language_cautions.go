@@ -28,12 +28,12 @@ Field between the plates:
 			Wrong: Example{`
     d = 3 mm
     A = d^2 = 9 mm^2
-    E = 12 kV/d = __
+    E = 2*6 kV/d = __
 `},
 			Right: Example{`
     d = 3 mm
     A = d^2 = 9 mm^2
-    E = 12 kV / d = 4.0 kV/mm
+    E = 2*6 kV / d = 4.0 kV/mm
 `},
 		}),
 		graded(lang.Caution, Rule{
