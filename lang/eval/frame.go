@@ -26,8 +26,12 @@ type Frame struct {
 	steps    int64 // steps left after the chunk
 	memory   int64 // bytes left
 
-	fault Fault
-	level int // depth of nested integrals
+	fault    Fault
+	forgiven Fault // the last fault that an integrand had at a single point
+	level    int   // workspaces in use
+	depth    int   // nested integrals
+	marks    []mark
+	work     []*workspace
 }
 
 // chunkSteps is how many steps pass between two looks at clock and context:
@@ -55,7 +59,7 @@ func (f *Frame) Restart(b Budget) {
 	}
 	f.budget, f.steps, f.memory = b, b.Steps, b.Memory
 	f.chunk, f.deadline = 0, time.Now().Add(b.Time)
-	f.fault, f.ok, f.level = Fault{}, true, 0
+	f.fault, f.ok = Fault{}, true
 }
 
 // Set puts a value, with its tangent if it has one, into slot i. Slots beyond
@@ -92,7 +96,8 @@ func (f *Frame) Run(node int, c Code) (Value, *Fault) { return f.run(node, c, fa
 func (f *Frame) RunDual(node int, c Code) (Value, *Fault) { return f.run(node, c, true) }
 
 func (f *Frame) run(node int, c Code, dual bool) (Value, *Fault) {
-	f.fault, f.ok, f.level = Fault{}, true, 0
+	f.fault, f.forgiven, f.ok = Fault{}, Fault{}, true
+	f.level, f.depth, f.marks = 0, 0, f.marks[:0]
 	f.dual = dual
 	if c.slots > len(f.slots) {
 		f.Set(c.slots-1, Value{})
