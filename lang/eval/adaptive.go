@@ -118,6 +118,7 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 	if st, point = f.examine(w, p, interval{a: a, b: b, left: true, right: true}, e); st != converged {
 		return st, point
 	}
+	stuck := 0
 	for !w.settled(p, want) {
 		if len(w.heap) == 0 || len(w.iv) >= maxIntervals {
 			return w.giveUp(p)
@@ -137,15 +138,31 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 		if v.b-v.a < 64*epsilon*max(math.Abs(v.a), math.Abs(v.b)) || !(v.a < mid && mid < v.b) {
 			continue // frozen: its error stays in the sum
 		}
+		before := v.err[0]
 		w.remove(p, i)
 		l := interval{a: v.a, b: mid, depth: v.depth + 1, left: v.left, at: v.at}
 		r := interval{a: mid, b: v.b, depth: v.depth + 1, right: v.right, at: -1}
 		if st, point = f.halves(w, p, i, l, r, e); st != converged {
 			return st, point
 		}
+		if stuck = w.stuck(i, stuck, before); stuck > maxStuck && p.onAbs {
+			return w.giveUp(p)
+		}
 	}
 	w.resum(p)
 	return converged, 0
+}
+
+// maxStuck is how many more halvings may fail than help in an inner integral:
+// it is noise then, and would be paid for at every point of the outer one.
+const maxStuck = 200
+
+// stuck counts halvings that did not lessen the error, less those that did.
+func (w *workspace) stuck(left, count int, before float64) int {
+	if w.iv[left].err[0]+w.iv[len(w.iv)-1].err[0] >= 0.99*before {
+		return count + 1
+	}
+	return max(0, count-1)
 }
 
 // halves evaluates both halves of interval i, the left one in its place.
@@ -273,7 +290,7 @@ func (w *workspace) demand(p *problem, g int) float64 {
 	if w.share != 0 {
 		size *= w.share
 	}
-	return max(p.rel[g]*size, 1e-13*w.abs[g])
+	return max(p.rel[g]*size, roundoff*w.abs[g])
 }
 
 // giveUp tells how an integral failed: by a piece that cannot be halved any

@@ -204,7 +204,7 @@ func Let(node int, slots []int, args []Code, body Code) Code {
 	if len(slots) != len(args) || len(args) == 0 {
 		return body
 	}
-	c := body
+	c := Code{Type: body.Type}
 	cost := min(body.cost, 1<<20)
 	if bind := bindReal(slots, args); bind != nil && body.Real != nil {
 		c.Real = func(f *Frame) float64 {
@@ -225,7 +225,7 @@ func Let(node int, slots []int, args []Code, body Code) Code {
 	if body.Real != nil && c.Real == nil {
 		c.Real = func(f *Frame) float64 { return real(general(f).x) }
 	}
-	c.vec, c.Any = nil, general
+	c.Any = general
 	c.info = letInfo(slots, args, body)
 	c.slots = max(slotsOf(args...), body.slots, slices.Max(slots)+1)
 	c.diff = func(d *differ) (Code, error) { return d.let(node, slots, args, body) }

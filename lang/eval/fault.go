@@ -17,6 +17,8 @@ const (
 	RuleNoRoot = "no-root"
 	// RuleTable: a table read outside its rows.
 	RuleTable = "table-outside-rows"
+	// RuleRange: a value outside all the pieces of a function.
+	RuleRange = "outside-stated-range"
 	// RuleBudget: out of steps, memory or time, or beyond the range of numbers.
 	RuleBudget = "over-budget"
 )

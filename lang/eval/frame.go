@@ -31,6 +31,8 @@ type Frame struct {
 	level    int   // workspaces in use
 	depth    int   // nested integrals
 	marks    []mark
+	curves   map[[4]any]*prepared
+	roots    map[int]int // nodes of equations with more than one root
 	work     []*workspace
 }
 

@@ -60,7 +60,6 @@ func TestIntegralsOfKnownValue(t *testing.T) {
 		{"zero", func(float64) float64 { return 0 }, 0, 1, 0},
 		{"zero out", func(float64) float64 { return 0 }, 0, inf, 0},
 		{"sinc", func(x float64) float64 { return math.Sin(x) / x }, 0, 10, 1.6583475942188740493},                // Si(10), A&S table 5.1
-		{"sin/x^2 out", func(x float64) float64 { return math.Sin(x) / (x * x) }, 1, inf, 0.50406706190692837199}, // sin 1 - Ci(1), A&S 5.2.2
 		{"logarithm in a cable gap", func(x float64) float64 { return 1 / x }, 0.0004, 0.0011, math.Log(11.0 / 4)},
 	}
 	for _, c := range cases {

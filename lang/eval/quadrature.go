@@ -33,7 +33,7 @@ func (f *Frame) quadrature(p *problem, seg segment, out []float64) bool {
 	defer f.leave()
 	clear(w.acc)
 	w.segs = append(w.segs[:0], seg)
-	var err, abs [2]float64
+	var abs [2]float64
 	for len(w.segs) > 0 {
 		s := w.segs[len(w.segs)-1]
 		w.segs = w.segs[:len(w.segs)-1]
@@ -52,15 +52,21 @@ func (f *Frame) quadrature(p *problem, seg segment, out []float64) bool {
 			w.acc[k] += w.total[k]
 		}
 		for g := range 2 {
-			err[g] += w.err[g]
 			abs[g] += w.abs[g]
 		}
 	}
 	for k := range p.m {
-		out[k] += w.acc[k]
+		if math.Abs(w.acc[k]) > roundoff*abs[p.group(k)] {
+			out[k] += w.acc[k]
+		}
 	}
 	return true
 }
+
+// roundoff is what rounding leaves of the integral of the magnitude. An
+// integral below it is zero: the rest of a cancellation would be noise to an
+// outer integral.
+const roundoff = 1e-13
 
 // scale is the size of what has been integrated so far.
 func (w *workspace) scale(p *problem) (size [2]float64) {

@@ -103,8 +103,9 @@ func extremeOf(name string, vs []Value) int {
 	return at
 }
 
-// neumaier sums with a compensation for what rounding drops, in each of the
-// four parts (real, imaginary, their tangents); A. Neumaier, ZAMM 54 (1974) 39.
+// neumaier sums with a compensation for what rounding drops, kept apart until
+// the end (A. Neumaier, ZAMM 54 (1974) 39), in each of the four parts: real,
+// imaginary, their tangents.
 type neumaier struct{ sum, lost [4]float64 }
 
 func (s *neumaier) add(v Value) {
@@ -113,15 +114,12 @@ func (s *neumaier) add(v Value) {
 	}
 }
 
-// compensated adds x to a sum and its rounding loss.
+// compensated adds x to a sum and its rounding loss (Knuth's TwoSum, The Art of
+// Computer Programming 2, 4.2.2: no branch, exact whichever is larger).
 func compensated(sum, lost, x float64) (float64, float64) {
 	t := sum + x
-	if math.Abs(sum) >= math.Abs(x) {
-		lost += (sum - t) + x
-	} else {
-		lost += (x - t) + sum
-	}
-	return t, lost
+	y := t - sum
+	return t, lost + ((sum - (t - y)) + (x - y))
 }
 
 func (s *neumaier) value(t Type) Value {
