@@ -59,7 +59,7 @@ func TestIntegralsOfKnownValue(t *testing.T) {
 		{"log off any node", func(x float64) float64 { return math.Log(math.Abs(x - 0.3)) }, 0, 1, 0.3*math.Log(0.3) + 0.7*math.Log(0.7) - 1},
 		{"zero", func(float64) float64 { return 0 }, 0, 1, 0},
 		{"zero out", func(float64) float64 { return 0 }, 0, inf, 0},
-		{"sinc", func(x float64) float64 { return math.Sin(x) / x }, 0, 10, 1.6583475942188740493},                // Si(10), A&S table 5.1
+		{"sinc", func(x float64) float64 { return math.Sin(x) / x }, 0, 10, 1.6583475942188740493}, // Si(10), A&S table 5.1
 		{"logarithm in a cable gap", func(x float64) float64 { return 1 / x }, 0.0004, 0.0011, math.Log(11.0 / 4)},
 	}
 	for _, c := range cases {
