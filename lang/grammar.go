@@ -4,6 +4,7 @@ import (
 	"sync"
 
 	"github.com/alecthomas/participle/v2"
+	"github.com/alecthomas/participle/v2/lexer"
 )
 
 // This file is the grammar of the statements: the tags of the structs are read
@@ -28,13 +29,35 @@ type statementLine struct {
 	Plot      *Plot      `parser:"| @@"`
 }
 
-// grammar is built on first use: it costs some tenths of a millisecond.
-var grammar = sync.OnceValue(func() *participle.Parser[statementLine] {
-	return participle.MustBuild[statementLine](
-		participle.Lexer(lexing{}),
-		participle.ParseTypeWith(parseExpr),
-	)
+// production parses one kind of statement.
+type production func(*lexer.PeekingLexer) (Statement, error)
+
+// productions are the kinds of statements by their first word, which saves the
+// parser to try one after the other. The grammar is built on first use: it costs
+// some tenths of a millisecond.
+var productions = sync.OnceValue(func() map[string]production {
+	g := participle.MustBuild[statementLine](participle.Lexer(lexing{}), participle.ParseTypeWith(parseExpr))
+	return map[string]production{
+		"medium": productionOf[Medium](g), "region": productionOf[Region](g), "table": productionOf[Table](g),
+		"regime": productionOf[Regime](g), "uses": productionOf[Uses](g), "assume": productionOf[Assume](g),
+		"criterion": productionOf[Criterion](g), "check": productionOf[Check](g), "safety": productionOf[Safety](g),
+		"waive": productionOf[Waive](g), "plot": productionOf[Plot](g),
+	}
 })
+
+func productionOf[T any, P interface {
+	*T
+	Statement
+}](g *participle.Parser[statementLine]) production {
+	parser, err := participle.ParserForProduction[T](g)
+	if err != nil {
+		panic(err) // the grammar is fixed; a test builds it
+	}
+	return func(lex *lexer.PeekingLexer) (Statement, error) {
+		tree, err := parser.ParseFromLexer(lex)
+		return P(tree), err
+	}
+}
 
 // Statement is one of the statement nodes below.
 type Statement interface {

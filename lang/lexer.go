@@ -40,7 +40,7 @@ func (lexing) Lex(_ string, r io.Reader) (lexer.Lexer, error) {
 	if err != nil {
 		return nil, err
 	}
-	return &tokenList{left: scan(string(text))}, nil
+	return &tokenList{left: scan(nil, string(text))}, nil
 }
 
 // tokenList serves tokens that are scanned already. The last must be EOF.
@@ -64,7 +64,8 @@ const (
 )
 
 // scanner turns the text of one statement into tokens. Pos.Line of a token is
-// 0-based within the statement; Pos.Column is not used.
+// 0-based within the statement; Pos.Column of the first is the number of tokens,
+// which lets a hook see all of them.
 type scanner struct {
 	text      string
 	at        int
@@ -77,15 +78,18 @@ type scanner struct {
 	head      bool // left of the first `=` of a definition, where `in` is a keyword
 }
 
-// scan never fails; its last token is EOF.
-func scan(text string) []lexer.Token {
-	s := &scanner{text: text, base: -1, toks: make([]lexer.Token, 0, 4+len(text)/3)}
+// scan puts the tokens of a statement into the buffer. It never fails; the last
+// token is EOF.
+func scan(buffer []lexer.Token, text string) []lexer.Token {
+	s := scanner{text: text, base: -1, toks: buffer[:0]}
 	s.begin()
 	for s.skip() {
 		s.startLine()
 		s.token()
 	}
-	return append(s.toks, lexer.EOFToken(s.pos(len(text))))
+	toks := append(s.toks, lexer.EOFToken(s.pos(len(text))))
+	toks[0].Pos.Column = len(toks)
+	return toks
 }
 
 // begin looks at the first word, which decides the layout of the statement.

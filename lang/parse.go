@@ -12,19 +12,28 @@ import (
 // the end of its last continuation line. It cannot fail: what is not a
 // statement becomes an Unread with one fault.
 func ParseStatement(text string) *Stmt {
+	var p statementParser
+	return p.parse(text)
+}
+
+// statementParser parses one statement after the other with the same buffer.
+type statementParser struct{ toks []lexer.Token }
+
+// parse gives the statement its own copy of the text, so that its tree does not
+// keep a whole older note alive.
+func (p *statementParser) parse(text string) *Stmt {
 	s := &Stmt{Text: strings.Clone(text)}
-	s.parse()
+	if len(text) > maxStatement {
+		s.tooLong()
+		return s
+	}
+	p.toks = scan(p.toks, s.Text)
+	s.build(p.toks)
 	return s
 }
 
-// parse fills Tree, Nodes and Faults from Text. The text is owned by the
-// statement, so that its tree does not keep a whole older note alive.
-func (s *Stmt) parse() {
-	if len(s.Text) > maxStatement {
-		s.tooLong()
-		return
-	}
-	toks := scan(s.Text)
+// build fills Tree, Nodes and Faults.
+func (s *Stmt) build(toks []lexer.Token) {
 	tree, broken := parseTokens(toks)
 	if broken != nil {
 		s.Faults = append(s.Faults, explain(toks, broken))
@@ -52,22 +61,25 @@ func (s *Stmt) tooLong() {
 
 // parseTokens gives the tree, or the place where it breaks.
 func parseTokens(toks []lexer.Token) (Statement, *breakage) {
-	lex, err := lexer.Upgrade(&tokenList{left: toks})
-	if err != nil {
-		return nil, &breakage{expected: "a statement"}
-	}
 	if !isStatementWord(toks[0].Value) || toks[0].Type != tokWord {
-		r := reader{lex: lex}
+		r := reader{toks: toks}
 		d := &Definition{}
 		r.definition(d)
 		r.end()
 		return d, r.broken
 	}
-	line, err := grammar().ParseFromLexer(lex)
+	lex, err := lexer.Upgrade(&tokenList{left: toks})
+	if err != nil {
+		return nil, &breakage{expected: "a statement"}
+	}
+	tree, err := productions()[toks[0].Value](lex)
 	if err != nil {
 		return nil, breakageOf(err, toks)
 	}
-	return line.finish()
+	if c, ok := tree.(interface{ check() *breakage }); ok {
+		return tree, c.check()
+	}
+	return tree, nil
 }
 
 // breakageOf turns an error of the grammar into the place where it breaks.
@@ -93,31 +105,43 @@ func tokenAt(toks []lexer.Token, t lexer.Token) int {
 	return len(toks) - 1
 }
 
-// finish gives the one statement of the line and checks what tags cannot say.
-func (l *statementLine) finish() (Statement, *breakage) {
-	switch {
-	case l.Medium != nil:
-		return l.Medium, nil
-	case l.Region != nil:
-		return l.Region, nil
-	case l.Table != nil:
-		return l.Table, nil
-	case l.Regime != nil:
-		return l.Regime, nil
-	case l.Uses != nil:
-		return l.Uses, nil
-	case l.Assume != nil:
-		return l.Assume, nil
-	case l.Criterion != nil:
-		return l.Criterion, nil
-	case l.Check != nil:
-		return l.Check, nil
-	case l.Safety != nil:
-		return l.Safety, nil
-	case l.Waive != nil:
-		return l.Waive, nil
+// check refuses a table without columns.
+func (t *Table) check() *breakage {
+	if len(t.Columns) > 0 || t.File != nil {
+		return nil
 	}
-	return l.Plot, nil
+	return &breakage{span: t.Name.Span, message: "this table has no columns",
+		detail: "name them behind a colon, each with its unit: `table " + t.Name.Text + ": H [A/m], B [T]`"}
+}
+
+// check refuses words that name no regime.
+func (g *Regime) check() *breakage {
+	switch g.Word.Text {
+	case "harmonic":
+		return nil
+	case "static", "transient":
+		if g.Name == nil {
+			return nil
+		}
+		return &breakage{span: g.Name.Span, message: "a " + g.Word.Text + " regime has no frequency",
+			detail: "write `regime: " + g.Word.Text + "` or `regime: harmonic at " + g.Name.Text + " = …`"}
+	}
+	return &breakage{span: g.Word.Span, message: code(g.Word.Text) + " names no regime",
+		detail: "a regime is `static`, `harmonic at f = …` or `transient`"}
+}
+
+// check refuses a waiver for anything but a name or a property.
+func (w *Waive) check() *breakage {
+	switch x := w.For.(type) {
+	case nil, *Name:
+		return nil
+	case *Member:
+		if _, ok := x.X.(*Name); ok {
+			return nil
+		}
+	}
+	return &breakage{span: w.For.Place(), message: "a waiver is for a name or a property",
+		detail: "write `waive RULE for NAME: \"reason\"`, or leave `for` out to waive it for the note"}
 }
 
 // definedName is the name that a broken statement would have defined.

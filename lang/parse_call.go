@@ -1,5 +1,7 @@
 package lang
 
+import "strconv"
+
 // call reads the arguments of a call, and the forms that bind a variable, from
 // the opening parenthesis on.
 func (r *reader) call(c *Call) Expr {
@@ -58,6 +60,6 @@ func (r *reader) ranges(c *Call) {
 
 // componentCount says that a parenthesis has two or more than three parts.
 func (r *reader) componentCount(n int) {
-	r.failWith(&breakage{message: "a vector has three components, this parenthesis has " + plainCount(n),
+	r.failWith(&breakage{message: "a vector has three components, this parenthesis has " + strconv.Itoa(n),
 		detail: "is a comma meant as the decimal sign? Write a point, as in `1.5`"})
 }

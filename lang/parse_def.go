@@ -5,7 +5,7 @@ import "github.com/alecthomas/participle/v2/lexer"
 // definition reads a definition or a property up to its end, which the caller
 // checks.
 func (r *reader) definition(d *Definition) {
-	start := r.peek().Pos.Offset
+	start, from := r.peek().Pos.Offset, r.at
 	d.Name = r.ident("a name")
 	r.head(d)
 	if r.accept("=") {
@@ -19,6 +19,7 @@ func (r *reader) definition(d *Definition) {
 	d.Per = r.perQuote()
 	r.pieces(d)
 	d.Span = r.spanFrom(start)
+	r.noDeeperStart(from)
 }
 
 // head reads what stands between the name and the first `=`.
@@ -91,6 +92,10 @@ func (r *reader) unit() *UnitPhrase {
 	t := r.peek()
 	if t.Type != tokUnit {
 		return nil
+	}
+	if q := qualifiedUnit(t.Value); q != "" {
+		f := qualifierFault(&r.toks[0], q)
+		r.failWith(&breakage{message: f.Message, detail: f.Detail})
 	}
 	r.next()
 	return &UnitPhrase{Span: spanOf(t), Text: t.Value}

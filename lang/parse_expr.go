@@ -105,7 +105,7 @@ func (r *reader) sign(op Op, operand func() Expr) Expr {
 
 // nothing stands for an expression that is broken.
 func (r *reader) nothing() Expr {
-	at := r.lex.Peek().Pos.Offset
+	at := r.toks[r.at].Pos.Offset
 	return &Broken{Node{Span: Span{at, at}}}
 }
 
@@ -131,33 +131,31 @@ func (r *reader) signedNumber() bool {
 
 func (r *reader) power() Expr {
 	x := r.operand(true)
-	for {
-		t := r.peek()
-		switch {
-		case t.Type == tokPower:
-			r.unitPower(x)
-			r.next()
-			x = r.join(OpPow, Span{t.Pos.Offset, t.Pos.Offset}, x, superscriptLiteral(t))
-		case is(t, "^"):
-			r.unitPower(x)
-			r.next()
-			return r.join(OpPow, spanOf(t), x, r.exponent())
-		default:
-			return x
+	t := r.peek()
+	switch {
+	case t.Type == tokPower:
+		r.powerOf(x)
+		r.next()
+		x = r.join(OpPow, Span{t.Pos.Offset, t.Pos.Offset}, x, superscriptLiteral(t))
+		if p := r.peek(); p.Type == tokPower || is(p, "^") {
+			r.failWith(&breakage{message: "a power of a power can be read in two ways", detail: "set parentheses"})
 		}
+	case is(t, "^"):
+		r.powerOf(x)
+		r.next()
+		x = r.join(OpPow, spanOf(t), x, r.exponent())
 	}
+	return x
 }
 
-// unitPower refuses a power of a literal with a unit: `3 m ^2` reads as a
-// square metre to one and as a square to the other.
-func (r *reader) unitPower(x Expr) {
-	l, ok := x.(*Literal)
-	if !ok || l.Unit == nil {
-		return
+// powerOf refuses a power of what ends with a unit or with the value of a
+// lookup: `3 m ^2` reads as square metres to one and as a square to the other.
+func (r *reader) powerOf(x Expr) {
+	if hasUnit(x) {
+		text := PrintExpr(x)
+		r.failWith(&breakage{message: "a power after " + code(text) + " can be read in two ways",
+			detail: "a unit phrase has no blanks, as in `m^2`; the power of the whole is " + code("("+text+")^2")})
 	}
-	r.failWith(&breakage{message: "a power after a unit can be read in two ways",
-		detail: "a unit phrase has no blanks, as in `" + l.Num.Text + " " + l.Unit.Text + "^2`; the power of the quantity is `(" +
-			l.Num.Text + " " + l.Unit.Text + ")^2`"})
 }
 
 func (r *reader) exponent() Expr {

@@ -10,10 +10,17 @@ import (
 // The Parse methods below are the grammar's hooks (participle.Parseable); they
 // are not meant for other callers. Each reads its node from the tokens at lex.
 
-// hook runs read on the tokens and reports the place where it breaks.
+// hook runs read on the tokens of the statement, from the place of the grammar,
+// and puts the grammar behind what was read. It reports the place where that
+// breaks.
 func hook(lex *lexer.PeekingLexer, read func(r *reader)) error {
-	r := reader{lex: lex}
+	count := lex.Range(0, 1)[0].Pos.Column
+	start := int(lex.RawCursor())
+	r := reader{toks: lex.Range(0, lexer.RawCursor(count)), at: start}
 	read(&r)
+	for n := start; n < r.at; n++ {
+		lex.Next()
+	}
 	if r.broken != nil {
 		return r.broken
 	}
@@ -49,28 +56,26 @@ func (w *Words) Parse(lex *lexer.PeekingLexer) error {
 // it keeps its name, and what is wrong is kept until the statement is put
 // together.
 func (d *Definition) Parse(lex *lexer.PeekingLexer) error {
-	r := reader{lex: lex}
-	start := lex.Peek().Pos.Offset
-	r.definition(d)
-	r.end()
-	if r.broken == nil {
-		return nil
-	}
-	d.broken = r.broken
-	for t := lex.Peek(); !t.EOF() && t.Type != tokLine; t = lex.Peek() {
-		lex.Next()
-	}
-	r.broken = nil
-	span := r.spanFrom(start)
-	*d = Definition{Node: Node{Span: span}, Name: d.Name, broken: d.broken,
-		Members: []Expr{&Broken{Node{Span: span}}}}
-	return nil
+	return hook(lex, func(r *reader) {
+		start := r.peek().Pos.Offset
+		r.definition(d)
+		r.end()
+		if r.broken == nil {
+			return
+		}
+		*d = Definition{Name: d.Name, broken: r.broken}
+		r.broken = nil
+		for t := r.peek(); !t.EOF() && t.Type != tokLine; t = r.peek() {
+			r.next()
+		}
+		d.Span = r.spanFrom(start)
+		d.Members = []Expr{&Broken{Node{Span: d.Span}}}
+	})
 }
 
 // Parse reads a comparison or a chain of them.
 func (rel *Relation) Parse(lex *lexer.PeekingLexer) error {
-	word := lex.Range(0, 1)[0].Value
-	return hook(lex, func(r *reader) { r.relation(rel, word == "check") })
+	return hook(lex, func(r *reader) { r.relation(rel, r.toks[0].Value == "check") })
 }
 
 // Parse reads `for VAR from A to B`.

@@ -37,14 +37,9 @@ func (r *reader) numeral() *Literal {
 		l.Spread = standardSpread(Span{at, at + len(inner) + 2}, inner, l.Num)
 	}
 	if !isFinite(l.Num) {
-		r.tooLarge(t)
+		r.failWith(&breakage{message: "this number is outside the range from 1e-308 to 1e308", span: span})
 	}
 	return l
-}
-
-// tooLarge refuses a number that the arithmetic cannot hold.
-func (r *reader) tooLarge(*lexer.Token) {
-	r.failWith(&breakage{message: "the number before this place is outside the range from 1e-308 to 1e308"})
 }
 
 // isFinite reports that the nearest float is neither infinite nor a lost digit.

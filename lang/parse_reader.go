@@ -14,7 +14,7 @@ type breakage struct {
 	message  string
 	detail   string
 	fix      *Fix
-	end      int // with a message: index of the last token that is wrong; 0: at alone
+	span     Span // with a message: what is wrong; zero for the token
 }
 
 func (b *breakage) Error() string { return "expected " + b.expected }
@@ -25,53 +25,42 @@ const (
 	maxTerms = 10000 // operators in one expression
 )
 
-// reader reads expressions and definitions from tokens. The first breakage
-// sticks: from then on peek sees the end, so that every loop finishes and no
-// caller has to ask.
+// reader reads expressions and definitions from the tokens of a statement. The
+// first breakage sticks: from then on peek sees the end, so that every loop
+// finishes and no caller has to ask.
 type reader struct {
-	lex    *lexer.PeekingLexer
+	toks   []lexer.Token // of the whole statement; the last is EOF
+	at     int           // index of the next token
 	depth  int
 	terms  int
 	opener int // the innermost open bracket or bar, index + 1
 	broken *breakage
 }
 
-func (r *reader) peek() *lexer.Token {
-	if r.broken != nil {
-		return &noToken
-	}
-	return r.lex.Peek()
-}
+func (r *reader) peek() *lexer.Token { return r.ahead(0) }
 
 // ahead is the token n places after the next one.
 func (r *reader) ahead(n int) *lexer.Token {
-	at := r.lex.RawCursor()
-	for ; n > 0 && r.broken == nil; n-- {
-		if r.lex.Range(at, at+1)[0].EOF() {
-			break
-		}
-		at++
-	}
 	if r.broken != nil {
 		return &noToken
 	}
-	return &r.lex.Range(at, at+1)[0]
+	return &r.toks[min(r.at+n, len(r.toks)-1)]
 }
 
 // before is the token that was read last.
 func (r *reader) before() *lexer.Token {
-	at := r.lex.RawCursor()
-	if at == 0 {
+	if r.at == 0 {
 		return &noToken
 	}
-	return &r.lex.Range(at-1, at)[0]
+	return &r.toks[r.at-1]
 }
 
 func (r *reader) next() *lexer.Token {
-	if r.broken != nil {
-		return &noToken
+	t := r.peek()
+	if r.broken == nil && r.at < len(r.toks)-1 {
+		r.at++
 	}
-	return r.lex.Next()
+	return t
 }
 
 // accept reads the operator or word if it comes next.
@@ -91,7 +80,7 @@ func (r *reader) fail(expected string) {
 // failWith notes a breakage at the next token.
 func (r *reader) failWith(b *breakage) {
 	if r.broken == nil {
-		b.at, b.opener = int(r.lex.RawCursor()), r.opener
+		b.at, b.opener = r.at, r.opener
 		r.broken = b
 	}
 }
@@ -119,7 +108,7 @@ func (r *reader) leave() { r.depth-- }
 // open reads an opening bracket or bar and returns the one that was open before.
 func (r *reader) open() (outer int) {
 	outer = r.opener
-	r.opener = int(r.lex.RawCursor()) + 1
+	r.opener = r.at + 1
 	r.next()
 	return outer
 }

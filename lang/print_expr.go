@@ -155,10 +155,10 @@ func isOp(x Expr, op Op) bool {
 }
 
 func (p *printer) power(n *Binary) {
-	if base, ok := n.X.(*Binary); hasUnit(n.X) || isSigned(n.X) || ok && !(base.Op == OpPow && isSuperscripted(base.Y)) {
+	if hasUnit(n.X) || isSigned(n.X) {
 		p.inParens(n.X)
 	} else {
-		p.expr(n.X, levelPower)
+		p.expr(n.X, levelOperand)
 	}
 	if isSuperscripted(n.Y) {
 		p.write(n.Y.(*Literal).Num.Text)

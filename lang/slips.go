@@ -6,31 +6,127 @@ import (
 	"unicode/utf8"
 
 	"github.com/alecthomas/participle/v2/lexer"
+
+	"inkjoule/lang/unit"
 )
 
 // ruleSyntax is the name of every finding about the form of a statement.
 const ruleSyntax = "syntax"
 
+// clue is what a slip is recognised by: the tokens, and where they break.
+type clue struct {
+	toks []lexer.Token
+	at   int
+	*breakage
+}
+
+// slips are the usual mistakes that deserve their own message, tried in order;
+// the first that fits explains the breakage. Each returns nil where it does not
+// fit.
+var slips = [...]func(*clue) *Fault{
+	badToken, statementAsName, misspeltStatement, reservedName, deeperLine,
+	kindBeforeMedium, missingEqual, chainAfterRange, resultIn, bracketedUnit,
+	qualifierAfterUnit, powerOfTen, missingTimes, unitBehindName, numbersInRow, attosecond,
+	sourceUnquoted, blankAlone, equalInClaim, formOfCall, spreadOfName, strayAt,
+}
+
 // explain turns the place where a statement breaks into a fault, with the right
 // form where a usual slip explains it.
 func explain(toks []lexer.Token, b *breakage) Fault {
-	b.at = min(b.at, len(toks)-1)
-	f := Fault{Rule: ruleSyntax, Severity: Error, Span: faultSpan(toks, b.at)}
-	if b.message != "" {
-		f.Message, f.Detail, f.Fix = b.message, b.detail, b.fix
-		return f
+	c := &clue{toks, min(b.at, len(toks)-1), b}
+	f := c.fault()
+	f.Rule, f.Severity = ruleSyntax, Error
+	if f.Span == (Span{}) {
+		f.Span = c.place()
 	}
-	f.Message = "expected " + b.expected + ", found " + foundWords(&toks[b.at])
-	return f
+	if b.opener > 0 && f.Detail == "" && f.Fix == nil {
+		c.openerHint(f)
+	}
+	return *f
 }
 
-// faultSpan is the token that is wrong; where the statement ends too early, the
-// token before its end.
-func faultSpan(toks []lexer.Token, at int) Span {
-	for at > 0 && len(toks[at].Value) == 0 {
+func (c *clue) fault() *Fault {
+	if c.message != "" {
+		return &Fault{Message: c.message, Detail: c.detail, Fix: c.fix, Span: c.span}
+	}
+	for _, slip := range slips {
+		if f := slip(c); f != nil {
+			return f
+		}
+	}
+	return &Fault{Message: "expected " + c.expected + ", found " + foundWords(c.tok(0))}
+}
+
+// tok is the token n places from the break; an EOF token outside.
+func (c *clue) tok(n int) *lexer.Token {
+	if i := c.at + n; 0 <= i && i < len(c.toks) {
+		return &c.toks[i]
+	}
+	return &noToken
+}
+
+// place is the token that is wrong; where the statement or line ends too early,
+// the token before its end.
+func (c *clue) place() Span {
+	at := c.at
+	for at > 0 && c.toks[at].Value == "" {
 		at--
 	}
-	return spanOf(&toks[at])
+	return spanOf(&c.toks[at])
+}
+
+// openerHint points to the bracket or bar that is still open.
+func (c *clue) openerHint(f *Fault) {
+	open := &c.toks[min(c.opener-1, len(c.toks)-1)]
+	f.Related = []Related{{Span: spanOf(open), Message: "`" + open.Value + "` is opened here"}}
+	if t := c.tok(0); t.EOF() || t.Type == tokLine || is(t, "=") || isClosing(t) {
+		f.Detail = "close `" + open.Value + "`"
+	}
+}
+
+func isClosing(t *lexer.Token) bool { return is(t, ")") || is(t, "]") || is(t, "|") }
+
+// endsOperand reports a token after which an operator is due.
+func endsOperand(t *lexer.Token) bool {
+	switch t.Type {
+	case tokNumber, tokUnit, tokPower:
+		return true
+	case tokWord:
+		return !isReserved(t.Value) || t.Value == "j" || t.Value == "pi" || t.Value == "π"
+	}
+	return is(t, ")") || is(t, "]") || is(t, "|")
+}
+
+// isUnit reports a unit phrase that the unit table knows.
+func isUnit(phrase string) bool {
+	_, err := unit.Parse(phrase)
+	return err == nil
+}
+
+// phraseAt is the text of the touching tokens from the break on, as far as they
+// can be a unit phrase, and the number of those tokens.
+func (c *clue) phraseAt(n int) (text string, count int) {
+	for i := n; ; i++ {
+		t := c.tok(i)
+		ok := t.Type == tokWord || t.Type == tokNumber || t.Type == tokPower || t.Type == tokUnit ||
+			t.Type == tokBad && t.Value == "%" ||
+			t.Type == tokOp && strings.Contains("/·.^-()⋅−", t.Value)
+		if !ok || i > n && !touch(c.tok(i-1), t) {
+			return strings.TrimRight(text, "/·.^("), i - n
+		}
+		text += t.Value
+	}
+}
+
+// edit replaces the tokens from the n-th to the m-th place after the break.
+func (c *clue) edit(n, m int, text string) []Edit {
+	return []Edit{{spanOf(c.tok(n)).to(spanOf(c.tok(m))), text}}
+}
+
+// insert puts text before the token n places from the break.
+func (c *clue) insert(n int, text string) []Edit {
+	at := c.tok(n).Pos.Offset
+	return []Edit{{Span{at, at}, text}}
 }
 
 // foundWords describes a token.
@@ -45,14 +141,15 @@ func foundWords(t *lexer.Token) string {
 	case !utf8.ValidString(t.Value):
 		return "bytes that are not UTF-8"
 	}
-	return "`" + shorten(t.Value) + "`"
+	return code(t.Value)
 }
 
-func shorten(s string) string {
+// code shows a piece of the note in a message, shortened.
+func code(s string) string {
 	if r := []rune(s); len(r) > 40 {
-		return string(r[:40]) + "…"
+		s = string(r[:40]) + "…"
 	}
-	return s
+	return "`" + strings.Join(strings.Fields(s), " ") + "`"
 }
 
 // plainWords are the grammar's nodes in words.
@@ -69,7 +166,7 @@ func expectedWords(message string) string {
 		return "the end of the statement"
 	}
 	first, _, _ := strings.Cut(strings.TrimLeft(strings.TrimSuffix(list, ")"), "( "), " ")
-	if word, err := strconv.Unquote(first); err == nil {
+	if word, err := strconv.Unquote(strings.Trim(first, "()?*")); err == nil {
 		return "`" + word + "`"
 	}
 	if plain, ok := plainWords[strings.Trim(first, "()?*")]; ok {
@@ -77,15 +174,3 @@ func expectedWords(message string) string {
 	}
 	return "another form"
 }
-
-// nearestStatementWord is the statement word that a word resembles, or "".
-func nearestStatementWord(word string) string {
-	if isStatementWord(word) {
-		return word
-	}
-	return ""
-}
-
-func plainCount(n int) string { return strconv.Itoa(n) }
-
-func formCautions(Statement, []lexer.Token) []Fault { return nil }

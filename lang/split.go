@@ -4,26 +4,29 @@ import "strings"
 
 // block is the text of one statement and where it stands.
 type block struct {
-	at   int
+	at   int // note offset
 	text string
 }
 
 // divided is a note's text, divided.
 type divided struct {
 	blocks []block
-	prose  []int // 0-based lines that are not blank
-	fenced map[int]bool
+	prose  []int   // 0-based lines that are not blank
+	faults []Fault // note offsets
 }
 
-// splitter divides a note line by line.
+// splitter divides a note line by line, in one pass.
 type splitter struct {
-	src    *Source
-	out    divided
-	fence  string // the run that opened the code block, "" outside
-	above  lineKind
-	indent int // of the statement that is open
-	start  int // offset of the open statement, -1 if none is
-	end    int
+	src     *Source
+	out     divided
+	fence   fence
+	above   lineKind
+	indent  int // column of the open statement
+	start   int // offset of the open statement, -1 if none is
+	end     int
+	anchor  int       // offset of the statement whose column counts: the open one, or one above it
+	defines bool      // the open statement is a definition
+	tail    lineState // of the open statement, up to its end
 }
 
 // lineKind is what the line above was.
@@ -46,6 +49,7 @@ func split(src *Source) divided {
 		s.line(n, span)
 	}
 	s.close()
+	s.openFence()
 	return s.out
 }
 
@@ -53,9 +57,8 @@ func (s *splitter) line(n int, span Span) {
 	text := s.src.Text[span.Start:span.End]
 	lead := leading(text)
 	switch {
-	case s.fence != "":
-		s.prose(n, lead == len(text))
-		s.closeFence(text[lead:])
+	case s.fence.mark != "":
+		s.fenced(n, text[lead:])
 	case lead == len(text):
 		s.above = aboveBlank
 	default:
@@ -67,37 +70,76 @@ func (s *splitter) line(n int, span Span) {
 func (s *splitter) filled(n int, span Span, lead int) {
 	text := s.src.Text[span.Start:span.End]
 	indent := columns(text[:lead])
-	deeper := s.start >= 0 && indent > s.indent
+	content := Span{span.Start + lead, span.Start + len(strings.TrimRight(text, " \t"))}
 	switch {
-	case indent < 4:
-		s.openFence(text[lead:])
-		s.prose(n, false)
-	case s.above == aboveProse:
-		s.prose(n, false)
-	case opensProse(text[lead:]) && !(deeper && s.above == aboveCalculation):
-		s.prose(n, false)
+	case indent < 4 && s.fence.open(text[lead:], n):
+		s.prose(n)
+	case indent < 4, s.above == aboveProse, s.isMarked(text[lead:], indent):
+		s.unread(content)
+		s.prose(n)
 	default:
-		s.calculation(indent, Span{span.Start + lead, span.Start + len(strings.TrimRight(text, " \t"))})
+		s.calculation(n, indent, content)
 	}
 }
 
-func (s *splitter) prose(n int, blank bool) {
+// isMarked reports a list, quote or table mark, which makes a line prose. A
+// deeper line right under a calculation line continues it whatever it begins
+// with: `- b` below `W = a` must not be lost in silence.
+func (s *splitter) isMarked(text string, indent int) bool {
+	if s.above == aboveCalculation && s.start >= 0 && indent > s.indent {
+		return false
+	}
+	return strings.HasPrefix(text, "- ") || strings.HasPrefix(text, "* ") ||
+		strings.HasPrefix(text, "> ") || strings.HasPrefix(text, "|")
+}
+
+func (s *splitter) prose(n int) {
 	s.close()
 	s.above = aboveProse
-	if !blank {
-		s.out.prose = append(s.out.prose, n)
-	}
+	s.out.prose = append(s.out.prose, n)
 }
 
 // calculation adds a line to the open statement or begins one.
-func (s *splitter) calculation(indent int, content Span) {
+func (s *splitter) calculation(n, indent int, content Span) {
 	s.above = aboveCalculation
-	if s.start >= 0 && indent > s.indent {
-		s.end = content.End
-		return
+	text := s.src.Text[content.Start:content.End]
+	if strings.HasPrefix(text, "#") {
+		return // a remark belongs to no statement
 	}
-	s.close()
-	s.start, s.end, s.indent = content.Start, content.End, indent
+	if s.start >= 0 && indent > s.indent {
+		if !s.deeperDefinition(n, content, text) {
+			s.tail.read(s.src.Text[s.end:content.End])
+			s.end = content.End
+			return
+		}
+		s.close()
+		s.start, s.end = content.Start, content.End
+	} else {
+		s.close()
+		s.start, s.end, s.anchor, s.indent = content.Start, content.End, content.Start, indent
+	}
+	s.defines = !isStatementWord(text[:wordEnd(text, 0)])
+	s.tail = lineState{}
+	s.tail.read(text)
+}
+
+// deeperDefinition reports a definition that would continue the one above, and
+// files the fault. It is read as a statement of its own all the same, so that
+// its name is known.
+func (s *splitter) deeperDefinition(n int, content Span, text string) bool {
+	if !s.defines || s.tail.goesOn() || !strings.Contains(text, "=") || !opensDefinition(scan(nil, text)) {
+		return false
+	}
+	above := s.src.Line(s.anchor)
+	lead := s.src.Text[s.src.LineSpan(above).Start:s.anchor]
+	f := Fault{Rule: ruleSyntax, Severity: Error, Span: content, Message: deeperMessage(above + 1), Detail: deeperDetail}
+	name := s.src.Text[content.Start : content.Start+wordEnd(text, 0)]
+	f.Span.End = content.Start + len(name)
+	if leading(lead) == len(lead) {
+		f.Fix = &Fix{"Align it with line " + itoa(above+1), []Edit{{Span{s.src.LineSpan(n).Start, content.Start}, lead}}}
+	}
+	s.out.faults = append(s.out.faults, f)
+	return true
 }
 
 // close ends the open statement.
@@ -119,28 +161,4 @@ func leading(text string) int {
 		n += size
 	}
 	return n
-}
-
-// opensProse reports a list, quote or table mark.
-func opensProse(text string) bool {
-	return strings.HasPrefix(text, "- ") || strings.HasPrefix(text, "* ") ||
-		strings.HasPrefix(text, "> ") || strings.HasPrefix(text, "|")
-}
-
-// openFence notes a line that opens a code block.
-func (s *splitter) openFence(text string) {
-	for _, mark := range [...]string{"`", "~"} {
-		n := len(text) - len(strings.TrimLeft(text, mark))
-		if n >= 3 && !(mark == "`" && strings.Contains(text[n:], "`")) {
-			s.fence = text[:n]
-		}
-	}
-}
-
-// closeFence ends the code block at a line of its mark alone, at least as long.
-func (s *splitter) closeFence(text string) {
-	text = strings.TrimRight(text, " \t")
-	if len(text) >= len(s.fence) && strings.Trim(text, s.fence[:1]) == "" {
-		s.fence = ""
-	}
 }
