@@ -41,4 +41,3 @@ func (e *elab) uncertain(l *Literal, x float64) eval.Code         { return eval.
 func (e *elab) spreadOver(p *Paren, t typed, s *Spread) typed     { return t }
 func (e *elab) verifySpread(d *Definition, m Expr, u interface{}) {}
 func (e *elab) writeResult(m Expr, u interface{}) *Fix            { return nil }
-func PrintExpr(x Expr) string                                     { return fmt.Sprint(x.Place()) }

@@ -31,6 +31,9 @@ func ReservedWords() []string {
 		"for", "from", "to", "in", "over", "at", "per", "as", "j", "pi"}
 }
 
+// statementWords is the number of statement words among the reserved ones.
+const statementWords = 11
+
 // IsReserved reports whether the word is reserved, in any spelling.
 func IsReserved(word string) bool { return isReserved(word) }
 

@@ -90,7 +90,11 @@ func breakageOf(err error, toks []lexer.Token) *breakage {
 	}
 	var unexpected *participle.UnexpectedTokenError
 	if errors.As(err, &unexpected) {
-		return &breakage{at: tokenAt(toks, unexpected.Unexpected), expected: expectedWords(unexpected.Message())}
+		b := &breakage{at: tokenAt(toks, unexpected.Unexpected), expected: expectedWords(unexpected.Message())}
+		if toks[0].Value == "medium" || toks[0].Value == "table" {
+			b.expected = strings.Replace(b.expected, expectedEnd, "a comma or a new line", 1)
+		}
+		return b
 	}
 	return &breakage{expected: "a statement"}
 }

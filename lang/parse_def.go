@@ -1,6 +1,10 @@
 package lang
 
-import "github.com/alecthomas/participle/v2/lexer"
+import (
+	"strings"
+
+	"github.com/alecthomas/participle/v2/lexer"
+)
 
 // definition reads a definition or a property up to its end, which the caller
 // checks.
@@ -94,8 +98,10 @@ func (r *reader) unit() *UnitPhrase {
 		return nil
 	}
 	if q := qualifiedUnit(t.Value); q != "" {
+		end := t.Pos.Offset + len(strings.TrimSuffix(strings.TrimSuffix(t.Value, q), "_"))
 		f := qualifierFault(&r.toks[0], q)
-		r.failWith(&breakage{message: f.Message, detail: f.Detail})
+		r.failWith(&breakage{message: f.Message, detail: f.Detail,
+			fix: qualifierFix(r.toks, q, Edit{Span{end, spanOf(t).End}, ""})})
 	}
 	r.next()
 	return &UnitPhrase{Span: spanOf(t), Text: t.Value}

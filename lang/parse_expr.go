@@ -151,11 +151,15 @@ func (r *reader) power() Expr {
 // powerOf refuses a power of what ends with a unit or with the value of a
 // lookup: `3 m ^2` reads as square metres to one and as a square to the other.
 func (r *reader) powerOf(x Expr) {
-	if hasUnit(x) {
-		text := PrintExpr(x)
-		r.failWith(&breakage{message: "a power after " + code(text) + " can be read in two ways",
-			detail: "a unit phrase has no blanks, as in `m^2`; the power of the whole is " + code("("+text+")^2")})
+	if !hasUnit(x) {
+		return
 	}
+	text := PrintExpr(x)
+	detail := "a unit phrase has no blanks, as in `m^2`; the power of the whole is " + code("("+text+")^2")
+	if _, ok := x.(*Lookup); ok {
+		detail = "set parentheses around the lookup or around its value"
+	}
+	r.failWith(&breakage{message: "a power after " + code(text) + " can be read in two ways", detail: detail})
 }
 
 func (r *reader) exponent() Expr {

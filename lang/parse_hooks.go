@@ -120,7 +120,7 @@ func (r *reader) relation(rel *Relation, equal bool) {
 		rel.Terms = append(rel.Terms, r.expr())
 	}
 	if len(rel.Ops) == 0 {
-		r.fail("a comparison (`<`, `<=`, `>`, `>=`, `<<`, `>>`)")
+		r.fail(expectedComparison)
 	}
 	rel.Span = r.spanFrom(start)
 }

@@ -19,6 +19,12 @@ type breakage struct {
 
 func (b *breakage) Error() string { return "expected " + b.expected }
 
+// What is expected where a statement or a comparison may go on.
+const (
+	expectedEnd        = "the end of the statement"
+	expectedComparison = "a comparison (`<`, `<=`, `>`, `>=`, `<<`, `>>`)"
+)
+
 // limits on one statement, so that every walk over its tree stays shallow.
 const (
 	maxDepth = 200   // levels of parentheses, calls, signs and powers
@@ -124,7 +130,7 @@ func (r *reader) closing(text string, outer int) {
 // end fails unless the statement, or the line of a property or row, ends here.
 func (r *reader) end() {
 	if t := r.peek(); !t.EOF() && t.Type != tokLine {
-		r.fail("the end of the statement")
+		r.fail(expectedEnd)
 	}
 }
 

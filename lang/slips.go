@@ -27,7 +27,7 @@ var slips = [...]func(*clue) *Fault{
 	badToken, statementAsName, misspeltStatement, reservedName, deeperLine,
 	kindBeforeMedium, missingEqual, chainAfterRange, resultIn, bracketedUnit,
 	qualifierAfterUnit, powerOfTen, missingTimes, unitBehindName, numbersInRow, attosecond,
-	sourceUnquoted, blankAlone, equalInClaim, formOfCall, spreadOfName, strayAt,
+	commaAfterValue, sourceUnquoted, blankAlone, equalInClaim, formOfCall, spreadOfName, strayAt,
 }
 
 // explain turns the place where a statement breaks into a fault, with the right
@@ -39,7 +39,7 @@ func explain(toks []lexer.Token, b *breakage) Fault {
 	if f.Span == (Span{}) {
 		f.Span = c.place()
 	}
-	if b.opener > 0 && f.Detail == "" && f.Fix == nil {
+	if b.opener > 0 && c.wantsClosing() && f.Detail == "" && f.Fix == nil {
 		c.openerHint(f)
 	}
 	return *f
@@ -79,12 +79,37 @@ func (c *clue) place() Span {
 func (c *clue) openerHint(f *Fault) {
 	open := &c.toks[min(c.opener-1, len(c.toks)-1)]
 	f.Related = []Related{{Span: spanOf(open), Message: "`" + open.Value + "` is opened here"}}
-	if t := c.tok(0); t.EOF() || t.Type == tokLine || is(t, "=") || isClosing(t) {
+	if t := c.tok(0); t.EOF() || t.Type == tokLine || is(t, "=") || is(t, ")") || is(t, "]") {
 		f.Detail = "close `" + open.Value + "`"
 	}
 }
 
-func isClosing(t *lexer.Token) bool { return is(t, ")") || is(t, "]") || is(t, "|") }
+// wantsClosing reports that a closing bracket or bar was expected.
+func (c *clue) wantsClosing() bool {
+	return c.expected == "`)`" || c.expected == "`|`" || c.expected == "`]`"
+}
+
+// inExpression reports a break where an expression could have gone on.
+func (c *clue) inExpression() bool {
+	if !isStatementWord(c.toks[0].Value) && !c.seen("=") {
+		return false
+	}
+	switch c.expected {
+	case expectedEnd, expectedComparison, "`to`", "`for`":
+		return true
+	}
+	return c.wantsClosing()
+}
+
+// seen reports an operator or word before the break.
+func (c *clue) seen(text string) bool {
+	for i := range c.toks[:c.at] {
+		if is(&c.toks[i], text) {
+			return true
+		}
+	}
+	return false
+}
 
 // endsOperand reports a token after which an operator is due.
 func endsOperand(t *lexer.Token) bool {
@@ -163,7 +188,7 @@ var plainWords = map[string]string{
 func expectedWords(message string) string {
 	_, list, ok := strings.Cut(message, " (expected ")
 	if !ok {
-		return "the end of the statement"
+		return expectedEnd
 	}
 	first, _, _ := strings.Cut(strings.TrimLeft(strings.TrimSuffix(list, ")"), "( "), " ")
 	if word, err := strconv.Unquote(strings.Trim(first, "()?*")); err == nil {

@@ -64,13 +64,42 @@ func qualifierAfterUnit(c *clue) *Fault {
 	if t.Type != tokWord || !isQualifier(t.Value) || c.tok(-1).Type != tokUnit {
 		return nil
 	}
-	return qualifierFault(&c.toks[0], t.Value)
+	f := qualifierFault(&c.toks[0], t.Value)
+	f.Fix = qualifierFix(c.toks, t.Value, Edit{Span{spanOf(c.tok(-1)).End, spanOf(t).End}, ""})
+	return f
 }
 
+// qualifierFix moves a qualifier into the head of a definition; nil where the
+// head has one already or the word leaves open which.
+func qualifierFix(toks []lexer.Token, word string, cut Edit) *Fix {
+	name := qualifierNames[strings.ToLower(word)]
+	if name == "" || isStatementWord(toks[0].Value) {
+		return nil
+	}
+	for i := range toks {
+		switch t := &toks[i]; {
+		case is(t, ","):
+			if isQualifier(toks[i+1].Value) {
+				return nil
+			}
+			at := spanOf(t).End
+			return &Fix{"Put " + code(name) + " before the kind", []Edit{{Span{at, at}, " " + name}, cut}}
+		case is(t, "=") && i > 0:
+			at := spanOf(&toks[i-1]).End
+			return &Fix{"Put " + code(name) + " behind the name", []Edit{{Span{at, at}, ", " + name}, cut}}
+		}
+	}
+	return nil
+}
+
+// qualifierNames are the qualifiers and the trade abbreviations that say which.
+var qualifierNames = map[string]string{"rms": "rms", "eff": "rms", "peak": "peak", "pk": "peak", "pp": "peak-to-peak",
+	"average": "average", "avg": "average", "mean": "average", "static": "static", "dc": "static", "instantaneous": "instantaneous"}
+
 func qualifierFault(name *lexer.Token, qualifier string) *Fault {
-	word := map[string]string{"pk": "peak", "pp": "peak-to-peak", "avg": "average", "mean": "average", "eff": "rms", "dc": "static", "ac": "rms"}[strings.ToLower(qualifier)]
+	word := qualifierNames[strings.ToLower(qualifier)]
 	if word == "" {
-		word = strings.ToLower(qualifier)
+		word = "rms"
 	}
 	head := "E"
 	if isWordToken(name) {
@@ -175,7 +204,8 @@ func isFunction(name string) bool {
 // unitBehindName explains `E = U/d kV/mm`, and two names in a row.
 func unitBehindName(c *clue) *Fault {
 	before, t := c.tok(-1), c.tok(0)
-	if t.Type != tokWord && t.Value != "%" && t.Value != "°" || isReserved(t.Value) || !endsOperand(before) || before.Type == tokNumber {
+	if t.Type != tokWord && t.Value != "%" && t.Value != "°" || isReserved(t.Value) || !c.inExpression() ||
+		!endsOperand(before) || before.Type == tokNumber {
 		return nil
 	}
 	phrase, count := c.phraseAt(0)
@@ -242,9 +272,10 @@ func formOfCall(c *clue) *Fault {
 	}
 	switch t := c.tok(0); {
 	case is(t, "for"):
-		return &Fault{Message: "`for` stands inside `integral`, `sum`, `solve` and `derivative` alone"}
+		return &Fault{Message: "`for` stands inside `integral`, `sum`, `solve` and `derivative` alone",
+			Detail: "the range of a function's parameter stands behind its definition: `f(x) = … for x from a to b`"}
 	case is(t, "over"):
-		return &Fault{Message: "`over` stands inside `integral` alone"}
+		return &Fault{Message: "`over` stands inside `integral` alone", Detail: "write `integral(w over disc)`"}
 	case is(t, "=") && hasClosing(c.toks[c.at:]):
 		return &Fault{Message: "`=` inside a parenthesis", Detail: "an equation stands inside `solve(LEFT = RIGHT for x from A to B)` alone"}
 	}

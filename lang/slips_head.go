@@ -32,50 +32,16 @@ func misspeltStatement(c *clue) *Fault {
 // nearestStatementWord is the statement word that a word is or resembles: in
 // small letters, or with few letters changed, left out or added. Else "".
 func nearestStatementWord(word string) string {
-	lower := strings.ToLower(word)
-	best, least := "", 3
-	for _, w := range ReservedWords() {
-		if !isStatementWord(w) {
-			continue
-		}
-		d := editDistance(lower, w)
-		if d < least && d <= len(w)/3 {
-			best, least = w, d
-		}
+	if isStatementWord(word) {
+		return word
 	}
-	return best
-}
-
-// editDistance counts the letters to change, leave out, add or swap; 9 where
-// the lengths differ so much that the count does not matter.
-func editDistance(a, b string) int {
-	if len(a) > len(b)+2 || len(b) > len(a)+2 {
-		return 9
-	}
-	before, row := make([]int, len(b)+1), make([]int, len(b)+1)
-	for j := range row {
-		row[j] = j
-	}
-	for i := range len(a) {
-		last := row
-		row = make([]int, len(b)+1)
-		row[0] = i + 1
-		for j := range len(b) {
-			cost := b2i(a[i] != b[j])
-			row[j+1] = min(last[j+1]+1, row[j]+1, last[j]+cost)
-			if i > 0 && j > 0 && a[i] == b[j-1] && a[i-1] == b[j] {
-				row[j+1] = min(row[j+1], before[j-1]+1)
-			}
-		}
-		before = last
-	}
-	return row[len(b)]
+	return Nearest(strings.ToLower(word), ReservedWords()[:statementWords])
 }
 
 // reservedName explains a reserved word where a name is defined or bound.
 func reservedName(c *clue) *Fault {
 	t := c.tok(0)
-	if t.Type != tokWord || !isReserved(t.Value) || !strings.Contains(c.expected, "a name") && !strings.Contains(c.expected, "the name") {
+	if t.Type != tokWord || !isReserved(t.Value) || !strings.HasPrefix(c.expected, "a name") && !strings.HasPrefix(c.expected, "the name") {
 		return nil
 	}
 	f := &Fault{Message: code(t.Value) + " is reserved and cannot be a name", Detail: "choose another name"}
@@ -152,14 +118,24 @@ func sourceUnquoted(c *clue) *Fault {
 
 // chainAfterRange explains `… for x from a to b = 3`.
 func chainAfterRange(c *clue) *Fault {
-	if !is(c.tok(0), "=") || c.expected != "the end of the statement" {
+	if !is(c.tok(0), "=") || c.expected != expectedEnd {
 		return nil
 	}
-	for i := range c.toks[:c.at] {
-		if is(&c.toks[i], "for") {
-			return &Fault{Message: "a chain of equals cannot follow `for`",
-				Detail: "the stated result comes before the range: `= … = 3 for x from a to b`"}
-		}
+	if !c.seen("for") {
+		return nil
 	}
-	return nil
+	return &Fault{Message: "a chain of equals cannot follow `for`",
+		Detail: "the stated result comes before the range: `= … = 3 for x from a to b`"}
+}
+
+// commaAfterValue explains a comma behind the first piece of a definition.
+func commaAfterValue(c *clue) *Fault {
+	if !is(c.tok(0), ",") || c.expected != expectedEnd || isStatementWord(c.toks[0].Value) {
+		return nil
+	}
+	if c.tok(-1).Type == tokNumber && c.tok(1).Type == tokNumber && touch(c.tok(-1), c.tok(0)) && touch(c.tok(0), c.tok(1)) {
+		return decimalComma(c)
+	}
+	return &Fault{Message: "a comma separates pieces, and each piece needs its range",
+		Detail: "write `= A for x from a to b, B for x from b to c`"}
 }
