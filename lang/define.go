@@ -147,6 +147,7 @@ func (e *elab) evaluate(d *Definition, t typed) {
 		c.sym.Why = r.fault.Message
 		return
 	}
+	e.severalRoots()
 	c.sym.Result.Known = true
 	c.sym.Value, c.grad = r.value, r.grad
 	c.sym.Standard, c.sym.Low, c.sym.High = r.standard, r.low, r.high

@@ -134,8 +134,11 @@ func (e *elab) pieces(d *Definition, first typed) typed {
 
 // piecewise compiles the branches.
 func (e *elab) piecewise(d *Definition, v typed, all []piece, t typed) typed {
-	e.notYet(d, "a piecewise definition")
-	return unknown()
+	ps := make([]eval.Piece, len(all))
+	for i, p := range all {
+		ps[i] = eval.Piece{From: p.from.code, To: p.to.code, Body: p.x.code}
+	}
+	return e.built(t, d)(eval.Choose(d.ID, v.code, ps))
 }
 
 // domain checks the arguments of a call against the stated ranges: a wrong

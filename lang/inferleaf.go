@@ -116,7 +116,10 @@ func (e *elab) name(n *Name) typed {
 		return t
 	}
 	c := e.a.cells[key]
-	if c == nil {
+	switch {
+	case c == nil && key == "inf":
+		return infinity()
+	case c == nil:
 		e.unknownName(n, n.Text, "unknown-name")
 		return unknown()
 	}
