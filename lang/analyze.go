@@ -2,8 +2,10 @@ package lang
 
 import (
 	"context"
+	"maps"
 	"sort"
 
+	"inkjoule/lang/eval"
 	"inkjoule/lang/unit"
 )
 
@@ -17,6 +19,9 @@ type state struct {
 	symbols map[string]*Symbol
 	imports map[string]*Note
 	inputs  int
+	spreads map[int]eval.Spread
+
+	foreignIn map[foreignInput]int
 }
 
 func (s *state) cellOf(sym *Symbol) *cell {
@@ -27,7 +32,7 @@ func (s *state) cellOf(sym *Symbol) *cell {
 }
 
 func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
-	a := &analysis{opt: opt, ctx: ctx, cells: map[string]*cell{}, units: map[string]unitReading{}, firstSoft: map[string]*cell{}}
+	a := &analysis{opt: opt, ctx: ctx, cells: map[string]*cell{}, units: map[string]unitReading{}, firstSoft: map[string]*cell{}, spreads: map[int]eval.Spread{}}
 	var previous *Script
 	if p := opt.Previous; p != nil && p.state != nil {
 		previous = p.Script
@@ -59,7 +64,7 @@ func (a *analysis) takeOver(s *state) {
 	for _, c := range s.all {
 		a.old[c.tree] = c
 	}
-	a.previous = s
+	a.previous, a.inputs, a.foreignIn = s, s.inputs, maps.Clone(s.foreignIn)
 }
 
 // finish analyses one cell, or takes over its earlier result where its tree
@@ -67,6 +72,7 @@ func (a *analysis) takeOver(s *state) {
 func (a *analysis) finish(c *cell) {
 	if old := a.old[c.tree]; old != nil && old.same(c) {
 		c.adopt(old)
+		a.replaceInputs(c)
 	} else {
 		a.work(c)
 		c.made = c
@@ -137,6 +143,9 @@ func (a *analysis) work(c *cell) {
 	}
 }
 
+// budget is what one evaluation may take.
+func (a *analysis) budget() eval.Budget { return a.opt.Budget }
+
 // readUnit reads a unit phrase once for the note.
 func (a *analysis) readUnit(text string) unitReading {
 	r, ok := a.units[text]
@@ -151,7 +160,7 @@ func (a *analysis) readUnit(text string) unitReading {
 func (a *analysis) freeze() *Note {
 	n := &Note{Path: a.opt.Path, Script: a.script}
 	st := &state{cells: a.cells, all: a.all, byStmt: make(map[*Stmt][]*cell, len(a.script.Stmts)),
-		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, imports: a.imported}
+		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, spreads: a.spreads, foreignIn: a.foreignIn, imports: a.imported}
 	n.state = st
 	for _, c := range a.all {
 		st.byStmt[c.stmt] = append(st.byStmt[c.stmt], c)

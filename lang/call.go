@@ -19,6 +19,9 @@ func (e *elab) call(c *Call) typed {
 		return e.propertyCall(c)
 	}
 	key := CanonicalName(c.Fn.Text)
+	if o := e.c.owner; o != nil && o.role == RoleMedium && len(e.a.propertyCells(o.key, key)) > 0 {
+		return e.mediumCall(c, o)
+	}
 	if f := e.a.cells[key]; f != nil && f.role == RoleFunction {
 		e.use(f.key, c.Fn.Span)
 		return e.applied(c, f)
@@ -330,7 +333,9 @@ func (e *elab) propertyCall(c *Call) typed {
 
 // mediumCall calls a property of a medium that is a function.
 func (e *elab) mediumCall(c *Call, medium *cell) typed {
-	e.use(medium.key, c.Of.Place())
+	if c.Of != nil {
+		e.use(medium.key, c.Of.Place())
+	}
 	field := CanonicalName(c.Fn.Text)
 	if f := e.a.cells[medium.key+"."+field]; f != nil {
 		return e.applyProperty(c, medium, f)

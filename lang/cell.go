@@ -1,6 +1,7 @@
 package lang
 
 import (
+	"inkjoule/lang/eval"
 	"inkjoule/lang/kind"
 )
 
@@ -27,13 +28,14 @@ type cell struct {
 	uses   []usage   // statement-relative
 	sym    Symbol    // what the cell defines; Stmt and Span are set by the note
 	judged *Judgement
-	cyclic bool      // part of a cycle: unknown
-	made   *cell     // the cell whose work this is: itself, or the one it was taken over from
-	slot   int       // of its value in the frame
-	plain  bool      // a pure number
-	pi     int       // power of π in a plain number's value, for 2π·Hz
-	grad   []float64 // of the value with respect to the note's inputs
-	from   []kind.ID // kinds that went in, where the cell has none of its own
+	cyclic bool          // part of a cycle: unknown
+	made   *cell         // the cell whose work this is: itself, or the one it was taken over from
+	slot   int           // of its value in the frame
+	plain  bool          // a pure number
+	pi     int           // power of π in a plain number's value, for 2π·Hz
+	grad   eval.Gradient // of the value with respect to the note's uncertain inputs
+	inputs []input       // uncertain literals of the cell
+	from   []kind.ID     // kinds that went in, where the cell has none of its own
 }
 
 // usage is a use of a name inside a cell.

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 
+	"inkjoule/lang/eval"
 	"inkjoule/lang/unit"
 )
 
@@ -23,6 +24,8 @@ type analysis struct {
 	previous   *state
 	machine    *machine
 	inputs     int // uncertain inputs numbered so far
+	spreads    map[int]eval.Spread
+	foreignIn  map[foreignInput]int // inputs of referred notes, numbered here
 	pending    []pendingNames
 	imported   map[string]*Note
 	views      []*analysis

@@ -239,9 +239,13 @@ func isJ(x Expr) bool {
 }
 
 // validity elaborates the bounds of a validity range, which orders nothing and
-// is checked where the value is used.
+// is checked where the value is used: against the note's quantity of that
+// name, which it thereby uses.
 func (e *elab) validity(d *Definition) {
 	for _, r := range d.For {
 		e.bounds(r)
+		if n, ok := r.Var.(*Name); ok && e.a.cells[CanonicalName(n.Text)] != nil {
+			e.use(CanonicalName(n.Text), n.Span)
+		}
 	}
 }

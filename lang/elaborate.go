@@ -33,14 +33,16 @@ func number() Facts { return Facts{Known: true} }
 
 // elab is the elaboration of one cell.
 type elab struct {
-	a      *analysis
-	c      *cell
-	scope  *scope
-	quiet  int     // > 0 inside a called function's body: nothing is recorded
-	want   kind.ID // declared kind of the definition, for level units
-	depth  int
-	work   int // nodes visited, to bound the inlining of functions
-	solves []*Call
+	a       *analysis
+	c       *cell
+	scope   *scope
+	quiet   int     // > 0 inside a called function's body: nothing is recorded
+	want    kind.ID // declared kind of the definition, for level units
+	depth   int
+	work    int // nodes visited, to bound the inlining of functions
+	solves  []*Call
+	along   *along
+	stating bool // inside a further member: a spread there is a claim, no input
 }
 
 // scope is a chain of local names.

@@ -271,7 +271,7 @@ func (e *elab) paren(p *Paren) typed {
 		t = e.withUnit(p, t, p.Unit)
 	}
 	if p.Spread != nil && t.Known {
-		return e.spreadOver(p, t, p.Spread)
+		return e.spreadOver(p, t)
 	}
 	return t
 }

@@ -14,10 +14,10 @@ import (
 // literal infers a number with its unit and spread.
 func (e *elab) literal(l *Literal) typed {
 	t := typed{Facts: number(), plain: l.Unit == nil, lit: l}
-	x := l.Num.Value
+	x, u := l.Num.Value, unit.Unit{}
 	if l.Unit != nil {
-		u, ok := e.unit(l.Unit)
-		if !ok {
+		var ok bool
+		if u, ok = e.unit(l.Unit); !ok {
 			return unknown()
 		}
 		t.Dim = u.Dim
@@ -30,7 +30,7 @@ func (e *elab) literal(l *Literal) typed {
 		}
 	}
 	if l.Spread != nil {
-		t.code = e.uncertain(l, x)
+		t.code = e.uncertain(l, u, x)
 	} else {
 		t.code = eval.Const(eval.Real(x))
 	}

@@ -188,7 +188,7 @@ func (e *elab) fails(r *Relation, i int, ts []typed, j *Judgement, m float64) {
 	rule, sev := failing(j.Word)
 	e.report(Fault{
 		Rule: rule, Severity: sev, Span: r.Span,
-		Message: fmt.Sprintf("%s does not hold: %s (margin %s)", j.Text, e.both(r, i, ts), percent(m)),
+		Message: fmt.Sprintf("%s does not hold: %s (margin %s)", j.Text, e.both(r, i, ts), e.marginText(ts[i], ts[i+1], m)),
 		Detail:  "change the design or its inputs; the relation itself is what was agreed",
 		Related: e.relateTerms(r),
 	})
@@ -205,6 +205,18 @@ func (e *elab) doubtful(r *Relation, i int, j *Judgement, m, w float64) {
 		Detail:  "narrow the tolerances, or enlarge the margin",
 		Related: e.relateTerms(r),
 	})
+}
+
+// marginText writes a margin as a ratio; between absolute temperatures, whose
+// ratio says little, as a difference.
+func (e *elab) marginText(x, y typed, m float64) string {
+	if x.Absolute || y.Absolute {
+		a, b := e.a.run(e.c, 0, x.code), e.a.run(e.c, 0, y.code)
+		if a.fault == nil && b.fault == nil {
+			return "-" + number4(math.Abs(a.value.Re()-b.value.Re())) + " K"
+		}
+	}
+	return percent(m)
 }
 
 // percent writes a margin.

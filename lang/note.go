@@ -123,8 +123,9 @@ type Files interface {
 // Options of an analysis.
 type Options struct {
 	Path     string
-	Files    Files // nil: references to other notes are unknown
-	Previous *Note // an earlier analysis of the same path, for reuse; may be nil
+	Files    Files       // nil: references to other notes are unknown
+	Previous *Note       // an earlier analysis of the same path, for reuse; may be nil
+	Budget   eval.Budget // of one evaluation; zero takes the defaults
 
 	within []string // the notes that led here, to find circles
 }

@@ -199,8 +199,8 @@ func (k *collector) through(m *Member) {
 func (k *collector) call(c *Call) {
 	if n, ok := c.Of.(*Name); ok {
 		k.member(&Member{Node: c.Node, X: n, Field: Ident(c.Fn)})
-	} else if name := CanonicalName(c.Fn.Text); k.a.cells[name] != nil {
-		k.add(name, c.Fn.Span)
+	} else {
+		k.function(CanonicalName(c.Fn.Text), c.Fn.Span)
 	}
 	k.unit(c.Unit)
 	k.bound(c.For, func() {
@@ -210,6 +210,14 @@ func (k *collector) call(c *Call) {
 		k.expr(c.Equal)
 		k.hide(coords, -1)
 	})
+}
+
+// function adds the function of the note or of the same medium that is called.
+func (k *collector) function(name string, at Span) {
+	sibling := k.owner != "" && len(k.a.propertyCells(k.owner, name)) > 0
+	if sibling || k.a.cells[name] != nil {
+		k.add(name, at)
+	}
 }
 
 // bound collects the limits of the ranges, then runs body with their

@@ -10,16 +10,15 @@ import (
 
 // machine is the frame that a note's cells run on.
 type machine struct {
-	frame  *eval.Frame
-	slots  int
-	inputs int // number of uncertain inputs met so far, over all analyses of the note
+	frame *eval.Frame
+	slots int
 }
 
 func newMachine(ctx context.Context, slots int) *machine {
 	return &machine{frame: eval.NewFrame(ctx, slots, eval.Budget{}), slots: slots}
 }
 
-// newSlot takes a slot for a local variable.
+// newSlot takes a slot for a local variable or an input.
 func (a *analysis) newSlot() int {
 	a.machine.slots++
 	return a.machine.slots - 1
@@ -28,19 +27,32 @@ func (a *analysis) newSlot() int {
 // outcome is what a run gave.
 type outcome struct {
 	value               eval.Value
-	grad                []float64
+	grad                eval.Gradient
 	standard, low, high float64
 	fault               *eval.Fault
 }
 
-// run evaluates code with its uncertainty.
+// run evaluates code with its uncertainty: first order, with the correlation
+// that comes from shared inputs (JCGM 100:2008, 5.2), and the worst case with
+// every input at the limit that does most harm.
 func (a *analysis) run(c *cell, node int, code eval.Code) outcome {
-	m := a.machine
-	v, fault := m.frame.Run(node, code)
+	f := a.machine.frame
+	f.Restart(a.budget())
+	v, g, fault := eval.Propagate(f, node, code, a.sources(c))
 	if fault != nil {
 		return outcome{fault: fault}
 	}
-	return outcome{value: v}
+	o := outcome{value: v}
+	if len(g) == 0 || !g.Finite() {
+		return o
+	}
+	o.grad = g
+	if v.Shape() == eval.Scalar && v.IsReal() {
+		s := a.spreadsOf()
+		o.standard = g.Standard(s)
+		o.low, o.high = g.WorstCase(v.Re(), s)
+	}
+	return o
 }
 
 // value runs an expression at once where it reads nothing that varies.
@@ -55,4 +67,39 @@ func (e *elab) value(t typed) (eval.Value, bool) {
 	}
 	v, fault := e.a.machine.frame.Run(0, t.code)
 	return v, fault == nil
+}
+
+// worstCase infers lower(x) and upper(x): the worst-case bounds, as numbers.
+func (e *elab) worstCase(c *Call, name string) typed {
+	if len(c.Args) != 1 {
+		return e.form(c, name+"(x)")
+	}
+	t := e.expr(c.Args[0])
+	if !t.Known || t.blind {
+		return t
+	}
+	if t.Shape != eval.Scalar || t.Complex {
+		e.fault("shape-mix", c, name+" takes a real number", "write the magnitude or a component")
+		return unknown()
+	}
+	if _, fixed := e.value(t); !fixed && e.scope != nil {
+		e.fault("shape-mix", c, name+" takes an expression without a bound variable", "give it a name of its own first")
+		return unknown()
+	}
+	o := e.a.run(e.c, c.ID, t.code)
+	switch {
+	case o.fault != nil:
+		e.evalFault(o.fault, c)
+		t.blind = true
+		return t
+	case len(o.grad) == 0:
+		o.low, o.high = o.value.Re(), o.value.Re()
+	}
+	t.lit, t.plain = nil, false
+	if name == "lower" {
+		t.code = eval.Num(o.low)
+	} else {
+		t.code = eval.Num(o.high)
+	}
+	return t
 }

@@ -183,9 +183,14 @@ func (f formatter) withUncertainty(x, u float64) string {
 	if math.Abs(v) < us || math.Floor(math.Log10(math.Abs(v)))-float64(last) > 12 {
 		return f.value(eval.Real(x))
 	}
-	digits := strconv.FormatFloat(math.Round(us/math.Pow(10, float64(last))), 'f', 0, 64)
 	s := decimal(v, last)
 	mant, exp, has := strings.Cut(s, "e")
+	step := math.Pow(10, float64(last))
+	count := math.Round(us / step)
+	if !has && last > 0 { // written out to the unit: so are the digits of u
+		count *= step
+	}
+	digits := strconv.FormatFloat(count, 'f', 0, 64)
 	out := mant + "(" + digits + ")"
 	if has {
 		out += "e" + exp

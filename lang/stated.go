@@ -53,7 +53,9 @@ func (e *elab) unitMisfit(at Tree, p *UnitPhrase, u unit.Unit) {
 
 // member2 verifies one further member against the computed value.
 func (e *elab) member2(d *Definition, m Expr) {
+	e.stating = true
 	t := e.expr(m)
+	e.stating = false
 	f := e.c.sym.Facts
 	if !t.Known || !f.Known {
 		return

@@ -136,7 +136,7 @@ func (a *analysis) plot(c *cell, p *Plot) {
 		return
 	}
 	if v, ok := p.For.Var.(*Name); ok {
-		e.bindSlot(CanonicalName(v.Text), e.bounds(p.For))
+		e.bind(CanonicalName(v.Text), e.bounds(p.For))
 	}
 	for _, x := range p.X {
 		e.expr(x)
@@ -184,7 +184,7 @@ func (c *cell) neglected() (Fault, bool) {
 		f.Rule = "unasked-result"
 		f.Message = fmt.Sprintf("nobody states or uses %s (%s)", c.title(), c.sym.Shown)
 		f.Detail = "end it with `= __` to show the result, or remove it"
-	case c.role == RoleQuantity && c.sym.Input && c.sym.Facts.Known, c.role != RoleQuantity:
+	case c.role == RoleQuantity && c.sym.Input && c.sym.Facts.Known && c.sym.Asked == nil, c.role != RoleQuantity && c.role != RoleColumn:
 		f.Rule = "unused-definition"
 		f.Message = fmt.Sprintf("nothing uses %s", c.title())
 		f.Detail = "remove it if it is left over"

@@ -135,6 +135,9 @@ func (e *elab) computed(col *Column, u unit.Unit) {
 
 // ownColumn infers the use of a column, `bh.H`.
 func (e *elab) ownColumn(m *Member, table *cell, field string) typed {
+	if t, ok := e.interpolant(m, table, field); ok {
+		return t
+	}
 	c := e.a.cells[table.key+"."+field]
 	if c == nil {
 		e.report(Fault{

@@ -6,6 +6,7 @@ import (
 	"slices"
 	"strings"
 
+	"inkjoule/lang/eval"
 	"inkjoule/lang/media"
 )
 
@@ -105,7 +106,9 @@ func (a *analysis) enterNote(p pendingNames) {
 	}
 	view := &analysis{opt: a.opt, ctx: a.ctx, cells: map[string]*cell{}, units: a.units}
 	for key, old := range p.note.state.cells {
-		view.cells[key] = foreign(old, key, "", view, p.note.Path)
+		c := foreign(old, key, "", view, p.note.Path)
+		a.renumber(c, p.note)
+		view.cells[key] = c
 	}
 	for key, old := range p.note.state.cells {
 		if old.role == RoleConstant || old.path != "" {
@@ -113,7 +116,8 @@ func (a *analysis) enterNote(p pendingNames) {
 		}
 		own := a.cells[prefix+key]
 		if own == nil {
-			a.cells[prefix+key] = foreign(old, prefix+key, prefix, view, p.note.Path)
+			c := foreign(view.cells[key], prefix+key, prefix, view, p.note.Path)
+			a.cells[prefix+key] = c
 		} else if prefix == "" && own.stmt != nil && own.path == "" && own.owner == nil {
 			a.faults = append(a.faults, Fault{
 				Rule: "name-defined-twice", Severity: Advice, Span: own.place().Shift(own.stmt.At),
@@ -136,6 +140,42 @@ func foreign(old *cell, key, prefix string, view *analysis, path string) *cell {
 		}
 	}
 	return &c
+}
+
+// foreignInput names an uncertain input of a referred note.
+type foreignInput struct {
+	path string
+	id   int
+}
+
+// renumber gives the inputs of a referred note numbers of this one, the same
+// ones in every analysis.
+func (a *analysis) renumber(c *cell, n *Note) {
+	number := func(id int) int {
+		key := foreignInput{n.Path, id}
+		own, ok := a.foreignIn[key]
+		if !ok {
+			if a.foreignIn == nil {
+				a.foreignIn = map[foreignInput]int{}
+			}
+			own = a.inputs
+			a.inputs++
+			a.foreignIn[key] = own
+		}
+		a.spreads[own] = n.state.spreads[id]
+		return own
+	}
+	if len(c.grad) > 0 {
+		c.grad = slices.Clone(c.grad)
+		for i := range c.grad {
+			c.grad[i].Input = number(c.grad[i].Input)
+		}
+		slices.SortFunc(c.grad, func(x, y eval.Partial) int { return x.Input - y.Input })
+	}
+	c.inputs = slices.Clone(c.inputs)
+	for i := range c.inputs {
+		c.inputs[i].id = number(c.inputs[i].id)
+	}
 }
 
 // home is the note in which the cell's own names are looked up.
@@ -163,6 +203,7 @@ func (a *analysis) placeForeign() {
 
 func (a *analysis) slotFor(c *cell) {
 	c.slot = a.newSlot()
+	a.replaceInputs(c)
 	if c.sym.Result.Known {
 		a.machine.frame.Set(c.slot, c.sym.Value)
 	}
