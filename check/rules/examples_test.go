@@ -45,7 +45,6 @@ var pending = map[string]string{
 	"input-without-source":    "the finding",
 	"integral-not-converged":  "integrals",
 	"unit-hides-name":         "the finding",
-	"unread-calculation":      "the finding",
 	"unused-waiver":           "the rule that its example names",
 }
 
