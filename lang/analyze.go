@@ -3,6 +3,7 @@ package lang
 import (
 	"context"
 	"maps"
+	"slices"
 	"sort"
 
 	"inkjoule/lang/eval"
@@ -32,7 +33,7 @@ func (s *state) cellOf(sym *Symbol) *cell {
 }
 
 func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
-	a := &analysis{opt: opt, ctx: ctx, cells: map[string]*cell{}, units: map[string]unitReading{}, firstSoft: map[string]*cell{}, spreads: map[int]eval.Spread{}}
+	a := &analysis{opt: opt, ctx: ctx, cells: map[string]*cell{}, units: map[string]unitReading{}, spreads: map[int]eval.Spread{}}
 	var previous *Script
 	if p := opt.Previous; p != nil && p.state != nil {
 		previous = p.Script
@@ -230,12 +231,24 @@ func (a *analysis) freezeFaults(n *Note) {
 		}
 	}
 	a.unused(n)
+	n.Faults = onceAName(n.Faults)
 	sort.SliceStable(n.Faults, func(i, j int) bool {
 		x, y := n.Faults[i], n.Faults[j]
 		if x.Span != y.Span {
 			return x.Span.Start < y.Span.Start || x.Span.Start == y.Span.Start && x.Span.End < y.Span.End
 		}
 		return x.Rule < y.Rule
+	})
+}
+
+// onceAName keeps the first unit-hides-name caution for each name: the detail
+// names it.
+func onceAName(fs []Fault) []Fault {
+	seen := map[string]bool{}
+	return slices.DeleteFunc(fs, func(f Fault) bool {
+		again := f.Rule == "unit-hides-name" && seen[f.Detail]
+		seen[f.Detail] = seen[f.Detail] || f.Rule == "unit-hides-name"
+		return again
 	})
 }
 

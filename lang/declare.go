@@ -29,8 +29,7 @@ type analysis struct {
 	pending    []pendingNames
 	imported   map[string]*Note
 	views      []*analysis
-	incomplete bool             // a referred note could not be read: names may come from it
-	firstSoft  map[string]*cell // the first cell whose unit phrase hides a name
+	incomplete bool // a referred note could not be read: names may come from it
 }
 
 // unitReading is a unit phrase read once for the whole note.

@@ -15,6 +15,12 @@ import (
 func (a *analysis) define(c *cell, d *Definition) {
 	e := &elab{a: a, c: c}
 	c.sym.Input = len(d.Members) > 0 && isLiteral(d.Members[0])
+	if c.sym.Input && c.role == RoleQuantity && d.Per == nil {
+		e.report(Fault{
+			Rule: "input-without-source", Severity: Advice, Span: d.Name.Span,
+			Message: fmt.Sprintf("the input %s does not say where it comes from", d.Name.Text), Detail: "add its source: per \"drawing, sheet, nameplate …\"",
+		})
+	}
 	e.declared(d)
 	if d.In != nil {
 		e.medium(d.In)

@@ -77,7 +77,7 @@ func (e *elab) hidesName(p *UnitPhrase, u unit.Unit) {
 	}
 	for _, s := range phraseSymbols(p.Text)[1:] {
 		c := e.a.cells[CanonicalName(s)]
-		if c == nil || c.stmt == nil || c == e.c || e.a.hidden(e.c, s) {
+		if c == nil || c.stmt == nil || c == e.c {
 			continue
 		}
 		sym := e.a.readUnit(s)
@@ -91,16 +91,6 @@ func (e *elab) hidesName(p *UnitPhrase, u unit.Unit) {
 		})
 		return
 	}
-}
-
-// hidden reports whether an earlier cell has been cautioned about the name.
-func (a *analysis) hidden(c *cell, symbol string) bool {
-	for _, n := range c.needs {
-		if n.soft && n.key == CanonicalName(symbol) {
-			return a.firstSoft[n.key] != c
-		}
-	}
-	return false
 }
 
 // name infers the use of a name.
