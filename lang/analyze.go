@@ -23,6 +23,7 @@ type state struct {
 	spreads map[int]eval.Spread
 
 	foreignIn map[foreignInput]int
+	csv       map[*Table]*csvTable
 }
 
 func (s *state) cellOf(sym *Symbol) *cell {
@@ -161,7 +162,7 @@ func (a *analysis) readUnit(text string) unitReading {
 func (a *analysis) freeze() *Note {
 	n := &Note{Path: a.opt.Path, Script: a.script}
 	st := &state{cells: a.cells, all: a.all, byStmt: make(map[*Stmt][]*cell, len(a.script.Stmts)),
-		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, spreads: a.spreads, foreignIn: a.foreignIn, imports: a.imported}
+		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, spreads: a.spreads, foreignIn: a.foreignIn, csv: a.csvRead, imports: a.imported}
 	n.state = st
 	for _, c := range a.all {
 		st.byStmt[c.stmt] = append(st.byStmt[c.stmt], c)

@@ -26,6 +26,7 @@ type analysis struct {
 	inputs     int // uncertain inputs numbered so far
 	spreads    map[int]eval.Spread
 	foreignIn  map[foreignInput]int // inputs of referred notes, numbered here
+	csvRead    map[*Table]*csvTable
 	pending    []pendingNames
 	imported   map[string]*Note
 	views      []*analysis

@@ -93,9 +93,13 @@ func (w *walk) cycle(c *cell) {
 	}
 	m := members[first]
 	names = append(names, m.title())
+	message := "these definitions need each other: " + strings.Join(names, " → ")
+	if len(members) == 1 {
+		message = m.title() + " needs itself"
+	}
 	w.a.faults = append(w.a.faults, Fault{
 		Rule: "cyclic-definition", Severity: Error, Span: m.place().Shift(m.stmt.At),
-		Message: "these definitions need each other: " + strings.Join(names, " → "),
+		Message: message,
 		Detail:  fmt.Sprintf("give one of them as a number, or use solve(… for %s from … to …)", m.title()),
 		Related: rel,
 	})

@@ -13,6 +13,7 @@ import (
 
 // tableCells makes the cells of a table and its columns.
 func (a *analysis) tableCells(s *Stmt, t *Table) []*cell {
+	t = a.filled(s, t)
 	head := newCell(s, RoleTable, t, &t.Name)
 	out := []*cell{head}
 	for _, col := range t.Columns {
@@ -34,7 +35,7 @@ func (a *analysis) table(c *cell, t *Table) {
 				"cells stand apart by blanks; was a decimal comma written?")
 		}
 	}
-	if len(t.Rows) == 0 && want > 0 && t.File == nil {
+	if len(t.Rows) == 0 && (want > 0 || len(t.Columns) == 0) && t.File == nil {
 		e.fault("syntax", &t.Name, fmt.Sprintf("table %s has no rows", t.Name.Text), "write the rows below it, indented deeper")
 	}
 }
