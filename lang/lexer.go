@@ -175,6 +175,8 @@ func (s *scanner) token() {
 		s.add(tokPower, s.at+superscripts(s.text[s.at:]))
 	case unicode.IsLetter(r):
 		s.add(tokWord, wordEnd(s.text, s.at))
+	case s.layout == rows && s.base < 0 && s.symbolEnd(s.at, false) > s.at: // [°C], x/%
+		s.add(tokUnit, s.symbolEnd(s.at, false))
 	default:
 		s.operator(r, size)
 	}
