@@ -11,6 +11,9 @@ type problem struct {
 	cost   int64
 	rel    [2]float64 // relative accuracy of the value and of the tangent
 	onAbs  bool       // relative to ∫|f|: for the inner of nested integrals
+	// stretch is the rate at which the range grows along the tangents: times
+	// the integral it is the size that the tangent cancels from.
+	stretch float64
 }
 
 // group is 0 for a component of the value, 1 for one of the tangent. Each group
@@ -277,20 +280,27 @@ func (w *workspace) settled(p *problem, want [2]float64) bool {
 // demand is the accuracy demanded of a group: relative to its integral (or to
 // the integral of the magnitude), but not beyond what rounding leaves of that.
 func (w *workspace) demand(p *problem, g int) float64 {
-	size := 0.0
-	if p.onAbs {
-		size = w.abs[g]
-	} else {
-		for k, s := range w.total[:p.m] {
-			if p.group(k) == g {
-				size = max(size, math.Abs(s))
-			}
-		}
+	size := w.size(p, g)
+	if g == 1 && p.stretch != 0 {
+		size = max(size, p.stretch*w.size(p, 0))
 	}
 	if w.share != 0 {
 		size *= w.share
 	}
 	return max(p.rel[g]*size, roundoff*w.abs[g])
+}
+
+// size is what the accuracy of a group is relative to.
+func (w *workspace) size(p *problem, g int) (size float64) {
+	if p.onAbs {
+		return w.abs[g]
+	}
+	for k, s := range w.total[:p.m] {
+		if p.group(k) == g {
+			size = max(size, math.Abs(s))
+		}
+	}
+	return size
 }
 
 // giveUp tells how an integral failed: by a piece that cannot be halved any

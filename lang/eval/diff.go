@@ -1,5 +1,7 @@
 package eval
 
+import "slices"
+
 // This file differentiates code into code. Every combinator leaves a closure
 // (info.diff) that builds its derivative from the same combinators, so that
 // derivatives nest, have a fast path and carry tangents like any other code.
@@ -42,6 +44,14 @@ func (d *differ) of(c Code) (Code, error) {
 }
 
 const maxCost = 1 << 20
+
+// inside is of for a body under a binding, which hides the slots it binds.
+func (d *differ) inside(body Code, bound ...int) (Code, error) {
+	if slices.Contains(bound, d.slot) {
+		return nullOf(body.Type), nil
+	}
+	return d.of(body)
+}
 
 // nullOf is a code that is known to be zero, dropped from sums and products.
 func nullOf(t Type) Code {
@@ -138,7 +148,7 @@ func (d *differ) quotient(node int, a, b Code) (Code, error) {
 // the parameters for itself: an argument may call the same function, and must
 // not run while the parameters hold the outer call's values.
 func (d *differ) let(node int, slots []int, args []Code, body Code) (Code, error) {
-	sum, err := d.of(body)
+	sum, err := d.inside(body, slots...)
 	if err != nil {
 		return Code{}, err
 	}

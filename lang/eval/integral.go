@@ -127,6 +127,7 @@ func (g *integral) any(f *Frame) Value {
 	f.depth++
 	for i := base; i+1 < len(f.marks) && f.ok; i++ {
 		s.move(f.marks[i], f.marks[i+1])
+		p.stretch = math.Abs(s.rate)
 		f.quadrature(&p, between(f.marks, base, i), sum)
 	}
 	if lo.x == hi.x && f.ok {
@@ -242,7 +243,7 @@ func between(marks []mark, base, i int) segment {
 // derive is Leibniz's rule. (Uncertain bounds do not come this way: they move
 // the nodes, see anySampler.)
 func (g *integral) derive(d *differ) (Code, error) {
-	in, err := d.of(g.body)
+	in, err := d.inside(g.body, g.slot)
 	if err != nil {
 		return Code{}, err
 	}

@@ -56,7 +56,7 @@ func (f *Frame) quadrature(p *problem, seg segment, out []float64) bool {
 		}
 	}
 	for k := range p.m {
-		if math.Abs(w.acc[k]) > roundoff*abs[p.group(k)] {
+		if g := p.group(k); math.Abs(w.acc[k]) > roundoff*abs[g] {
 			out[k] += w.acc[k]
 		}
 	}
@@ -95,7 +95,7 @@ func (f *Frame) segment(w *workspace, p *problem, s segment, scale [2]float64) (
 // share is the absolute error that does not matter beside an integral of the
 // given size.
 func (p *problem) share(scale [2]float64) [2]float64 {
-	return [2]float64{0.1 * p.rel[0] * scale[0], 0.1 * p.rel[1] * scale[1]}
+	return [2]float64{0.1 * p.rel[0] * scale[0], 0.1 * p.rel[1] * max(scale[1], p.stretch*scale[0])}
 }
 
 // wholeTail integrates a segment that is a tail as a whole.
@@ -194,8 +194,15 @@ func (f *Frame) reach(p *problem, from, dir float64, row []float64) (float64, bo
 	best, at := 0.0, max(1, math.Abs(from))
 	for k := lo; k <= 100; k += 2 {
 		d := math.Ldexp(1, k)
-		if !p.body.point(f, from+dir*d, row) || !f.spend(p.node, p.cost) {
+		if !f.spend(p.node, p.cost) {
 			return 0, false
+		}
+		if !p.body.point(f, from+dir*d, row) {
+			if f.fault.Rule == RuleBudget {
+				return 0, false
+			}
+			f.ok = true // no value so far out: the tail will tell whether it matters
+			continue
 		}
 		size := 0.0
 		for _, y := range row[:p.primal] {

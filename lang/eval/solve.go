@@ -69,7 +69,7 @@ func (s *solver) any(f *Frame) Value {
 }
 
 func (s *solver) derive(d *differ, root Code) (Code, error) {
-	gp, err := d.of(s.g)
+	gp, err := d.inside(s.g, s.slot)
 	if err != nil || gp.null {
 		return gp, err
 	}

@@ -91,7 +91,7 @@ func (s *summation) derive(d *differ) (Code, error) {
 	if s.from.Reads(d.slot) || s.to.Reads(d.slot) {
 		return Code{}, refuse("", "a sum has no derivative by its number of terms")
 	}
-	db, err := d.of(s.body)
+	db, err := d.inside(s.body, s.slot)
 	if err != nil || db.null {
 		return db, err
 	}

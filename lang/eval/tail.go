@@ -135,10 +135,11 @@ func (s *tailState) goal(p *problem, scale [2]float64, share float64) (want [2]f
 		g := p.group(k)
 		scale[g] = max(scale[g], math.Abs(x))
 	}
+	if p.onAbs {
+		scale = [2]float64{max(scale[0], s.abs[0]), max(scale[1], s.abs[1])}
+	}
+	scale[1] = max(scale[1], p.stretch*scale[0])
 	for g := range 2 {
-		if p.onAbs {
-			scale[g] = max(scale[g], s.abs[g])
-		}
 		want[g] = share * p.rel[g] * scale[g]
 	}
 	return want
@@ -200,7 +201,7 @@ func (s *tailState) extrapolated(p *problem, k int, scale [2]float64, known bool
 	for g := range p.groups() {
 		l := &s.last[g]
 		l[0], l[1], l[2] = l[1], l[2], change[g]
-		good = good && s.shrinking(g, k) && max(l[0], l[1], l[2]) <= want[g] &&
+		good = good && s.shrinking(g, k, want[g]) && max(l[0], l[1], l[2]) <= want[g] &&
 			(!known || s.end[g]*d <= 4*rest[g]+want[g])
 	}
 	if !good {
@@ -216,11 +217,11 @@ func (s *tailState) extrapolated(p *problem, k int, scale [2]float64, known bool
 }
 
 // shrinking reports whether the last pieces form a series that converges
-// geometrically.
-func (s *tailState) shrinking(g, k int) bool {
+// geometrically, or do not matter.
+func (s *tailState) shrinking(g, k int, small float64) bool {
 	z := s.size[g]
 	for i := k - 3; i <= k; i++ {
-		if z[i] != 0 && z[i] >= (1-1e-4)*z[i-1] {
+		if z[i] > 0.1*small && z[i] >= (1-1e-4)*z[i-1] {
 			return false
 		}
 	}

@@ -42,7 +42,7 @@ func Propagate(f *Frame, node int, c Code, slots []Uncertain) (Value, Gradient, 
 	if len(used) == 0 {
 		return v, nil, nil
 	}
-	p := &propagation{f: f, node: node, code: c, used: used, inputs: inputsOf(used)}
+	p := &propagation{f: f, node: node, code: c, used: used, inputs: inputsOf(used), value: v}
 	defer p.restore()
 	g, fault := p.gradient()
 	return v, g, fault
@@ -55,6 +55,7 @@ type propagation struct {
 	code   Code
 	used   []Uncertain
 	inputs []int
+	value  Value
 	was    []Value
 }
 
@@ -168,13 +169,18 @@ func (p *propagation) spread(sums map[int]Value, g Gradient, d Value, k int, e c
 	}
 }
 
-// run gives the tangent of a dual run.
+// run gives the tangent of a dual run. The value itself is known to have none of
+// its faults, so one that comes up now is the tangent's: it has no value.
 func (p *propagation) run() (Value, *Fault) {
 	v, fault := p.f.RunDual(p.node, p.code)
-	if fault != nil {
+	switch {
+	case fault == nil:
+		return v.Tangent(), nil
+	case fault.Rule == RuleBudget:
 		return Value{}, fault
 	}
-	return v.Tangent(), nil
+	p.f.fault, p.f.ok = Fault{}, true
+	return mulKernel.each(p.f, p.node, Real(math.NaN()), p.value.Primal()), nil
 }
 
 // oneHot is the tangent e in component k of a value like v.
