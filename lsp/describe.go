@@ -149,7 +149,11 @@ func describeMembers(c *card, note *lang.Note, owner *lang.Symbol) {
 		}
 		c.line("stated", strings.Join(words, ", "))
 	}
-	for _, m := range members(note, owner) {
+	all := members(note, owner)
+	if owner.Path != "" {
+		all = foreignMembers(note, owner)
+	}
+	for _, m := range all {
 		text := m.Shown
 		if !m.Known {
 			text = orElse(m.Why, "not known")
@@ -159,6 +163,17 @@ func describeMembers(c *card, note *lang.Note, owner *lang.Symbol) {
 		}
 		c.line(m.Name, orElse(text, roleWord(m.Role)))
 	}
+}
+
+// foreignMembers are the well-known properties of a medium of another note.
+func foreignMembers(note *lang.Note, owner *lang.Symbol) []*lang.Symbol {
+	var out []*lang.Symbol
+	for _, p := range propertyNames() {
+		if m := note.Lookup(owner.Key + "." + p); m != nil && m.Name == p {
+			out = append(out, m)
+		}
+	}
+	return out
 }
 
 func mediumOf(sym *lang.Symbol) *lang.Medium {

@@ -25,6 +25,8 @@ func features() []feature {
 		hovers(),
 		documentSymbols(),
 		codeActions(),
+		navigation(),
+		renaming(),
 	}
 }
 

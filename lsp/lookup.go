@@ -2,7 +2,7 @@ package lsp
 
 import (
 	"context"
-	"slices"
+	"sort"
 
 	"go.lsp.dev/protocol"
 	"go.lsp.dev/uri"
@@ -70,25 +70,22 @@ func pathTo(top lang.Tree, at int) []lang.Tree {
 	}
 }
 
-// use is the use or definition of a name at the spot, or nil.
+// use is the use or definition of a name at the spot, or nil: the shortest that
+// stands there.
 func (s *spot) use() *lang.Use {
-	u, ok := s.note.UseAt(s.at)
-	if !ok {
-		return nil
-	}
-	return &u
-}
-
-// usesOf lists all places of a name, each once, in text order.
-func usesOf(note *lang.Note, sym *lang.Symbol) []lang.Use {
-	var out []lang.Use
-	for _, u := range note.Uses {
-		if sameSymbol(u.Symbol, sym) {
-			out = append(out, u)
+	all := s.all.uses()
+	end := sort.Search(len(all), func(i int) bool { return all[i].Span.Start > s.at })
+	var best *lang.Use
+	for i := end - 1; i >= 0 && s.at-all[i].Span.Start <= longestName; i-- {
+		if u := &all[i]; u.Span.Contains(s.at) && (best == nil || u.Span.Len() < best.Span.Len()) {
+			best = u
 		}
 	}
-	return slices.CompactFunc(out, func(a, b lang.Use) bool { return a.Span == b.Span })
+	return best
 }
+
+// longestName bounds how far the beginning of a use is looked for, in bytes.
+const longestName = 1000
 
 // sameSymbol reports whether two symbols, perhaps of two analyses, are one.
 func sameSymbol(a, b *lang.Symbol) bool {

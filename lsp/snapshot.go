@@ -43,7 +43,10 @@ type analysis struct {
 	note     *lang.Note
 	findings []check.Finding
 	cost     time.Duration
+	whole    func() []lang.Use // all uses, found when first asked for
 }
+
+func (a *analysis) uses() []lang.Use { return a.whole() }
 
 // snap makes a snapshot of a text in a view. It lasts as long as somebody holds
 // it.
@@ -146,6 +149,7 @@ func (s *snapshot) analyse() (a analysis, err error) {
 	in := Input{Root: s.home.root, Path: s.home.path, Text: s.src.Text, Files: s.files, Previous: s.previous.Load()}
 	a.note, a.findings, err = s.session.analyse(s.ctx, in)
 	a.cost = time.Since(begun)
+	a.whole = sync.OnceValue(func() []lang.Use { return usesOf(a.note) })
 	return a, err
 }
 
