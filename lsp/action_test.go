@@ -57,14 +57,14 @@ func (d *desk) actions(mark string, only ...string) []acted {
 func TestWriteAskedValue(t *testing.T) {
 	d := sit(t, able, capacitor)
 	got := d.actions("__| %")
-	if len(got) != 1 || got[0].Kind != "quickfix" || got[0].Title != "Write the result 3.390 %" {
+	if len(got) != 1 || got[0].Kind != "quickfix" || got[0].Title != "Write the result 3.390(43) %" {
 		t.Fatalf("got %s", show(got))
 	}
 	doc := got[0].Edit.DocumentChanges[0]
 	if doc.TextDocument.Version == nil || *doc.TextDocument.Version != 1 {
 		t.Errorf("version %v, want 1", doc.TextDocument.Version)
 	}
-	if text := d.applied(doc.Edits); text != strings.Replace(capacitor, "__ %", "3.390 %", 1) {
+	if text := d.applied(doc.Edits); text != strings.Replace(capacitor, "__ %", "3.390(43) %", 1) {
 		t.Errorf("the note becomes:\n%s", text)
 	}
 	d.quit()

@@ -88,20 +88,20 @@ func describeValue(c *card, sym *lang.Symbol) {
 		return
 	}
 	if sym.Standard > 0 {
-		c.line("standard uncertainty", inUnit(sym.Standard, sym.Unit.Difference()))
+		c.line("standard uncertainty", inUnit(sym.Standard, sym.Unit.Difference(), 2))
 	}
 	if sym.Low != sym.High {
-		c.line("worst case", fmt.Sprintf("%s to %s", inUnit(sym.Low, sym.Unit), inUnit(sym.High, sym.Unit)))
+		c.line("worst case", fmt.Sprintf("%s to %s", inUnit(sym.Low, sym.Unit, 4), inUnit(sym.High, sym.Unit, 4)))
 	}
 }
 
-// inUnit shows a number of coherent SI units in a unit.
-func inUnit(si float64, u unit.Unit) string {
+// inUnit shows a number of coherent SI units in a unit, with so many digits.
+func inUnit(si float64, u unit.Unit, digits int) string {
 	x := u.FromSI(si)
 	if math.IsNaN(x) {
-		return fmt.Sprintf("%.4g (coherent SI)", si)
+		return fmt.Sprintf("%.*g (coherent SI)", digits, si)
 	}
-	return strings.TrimSpace(fmt.Sprintf("%.4g %s", x, u))
+	return strings.TrimSpace(fmt.Sprintf("%.*g %s", digits, x, u))
 }
 
 // describeFacts tells what the name carries besides its value.

@@ -20,9 +20,9 @@ func TestHover(t *testing.T) {
 		range_ string   // the text that is described
 		says   []string // parts of the description
 	}{
-		{"w, peak", "w", []string{"w = 616.3 J/m^3", "*kind*: energy density", "*qualifier*: peak", "*media*: mica"}},
+		{"w, peak", "w", []string{"w = 616(16) J/m^3", "*standard uncertainty*: 16 J/m^3", "*worst case*", "*kind*: energy density", "*qualifier*: peak", "*media*: mica"}},
 		{"1/2 * |D·E", "D", []string{"D = ", "electric flux density"}},
-		{"U, peak", "U", []string{"12.00 kV", "*source*: nameplate", "voltage"}},
+		{"U, peak", "U", []string{"12.00(10) kV", "*source*: nameplate", "voltage"}},
 		{"mica.|eps*E", "mica.eps", []string{"mica.eps_r", "supplier sheet"}},
 		{"D in |mica", "mica", []string{"medium mica", "*stated*: linear, uniaxial, homogeneous, lossy", "eps\\_r", "E\\_bd"}},
 		{"2*p|i", "pi", []string{"constant"}},
@@ -66,7 +66,7 @@ func TestHoverPlain(t *testing.T) {
 		d := sit(t, caps, capacitor)
 		var h *hovered
 		d.must("textDocument/hover", d.on("U, peak"), &h)
-		if h == nil || h.Contents.Kind != "plaintext" || !strings.Contains(h.Contents.Value, "U = 12.00 kV\n") || strings.ContainsAny(h.Contents.Value, "*`\\") {
+		if h == nil || h.Contents.Kind != "plaintext" || !strings.Contains(h.Contents.Value, "U = 12.00(10) kV\n") || strings.ContainsAny(h.Contents.Value, "*`\\") {
 			t.Errorf("got %s", show(h))
 		}
 		d.quit()

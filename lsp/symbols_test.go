@@ -33,8 +33,8 @@ func TestDocumentSymbols(t *testing.T) {
 	}
 	visit(all, "")
 	want := []string{
-		"mica 5", "- eps_r 7 diag(6.900, 6.900, 8.700)", "- E_bd 7 118.0 kV/mm", "U 14 12.00 kV", "d 14 3.000 mm",
-		"E 13 (0, 0, 4.000) kV/mm", "D 13 (0, 0, 308.1) µC/m^2", "w 13 616.3 J/m^3", "Ü_max 13 3.390 %", "ω 13 314.2 rad/s", "N 13 628.3 rad",
+		"mica 5", "- eps_r 7 diag(6.900, 6.900, 8.700)", "- E_bd 7 118.0 kV/mm", "U 14 12.00(10) kV", "d 14 3.000(29) mm",
+		"E 13 (0, 0, 4.000) kV/mm", "D 13 (0, 0, 308.1) µC/m^2", "w 13 616(16) J/m^3", "Ü_max 13 3.390(43) %", "ω 13 314.2 rad/s", "N 13 628.3 rad",
 	}
 	if fmt.Sprint(got) != fmt.Sprint(want) {
 		t.Errorf("got %s\nwant %s", show(got), show(want))
