@@ -42,10 +42,10 @@ func TestInlayHints(t *testing.T) {
 		got[strings.TrimSpace(line[:from])+e.NewText] = h.Label
 	}
 	want := map[string]string{
-		"D in mica = mica.eps*E = (0, 0, 308.1) µC/m^2": "= (0, 0, 308.1) µC/m^2",
-		"Ü_max, utilisation = |E|/mica.E_bd =3.390(43) %":   "3.390(43) %",
-		"ω = 2*pi*50 Hz = 314.2 rad/s":                  "= 314.2 rad/s",
-		"N = omega*2 s = 628.3 rad":                     "= 628.3 rad",
+		"D in mica = mica.eps*E = (0, 0, 308.1) µC/m^2":   "= (0, 0, 308.1) µC/m^2",
+		"Ü_max, utilisation = |E|/mica.E_bd =3.390(43) %": "3.390(43) %",
+		"ω = 2*pi*50 Hz = 314.2 rad/s":                    "= 314.2 rad/s",
+		"N = omega*2 s = 628.3 rad":                       "= 628.3 rad",
 	}
 	if fmt.Sprint(got) != fmt.Sprint(want) {
 		t.Errorf("got %s\nwant %s", show(got), show(want))
