@@ -157,6 +157,9 @@ func constantKind(name string) (kind.ID, Standing) {
 // unused adds the advice about definitions that nothing uses: neither another
 // statement nor the reader, who would read a stated or asked result.
 func (a *analysis) unused(n *Note) {
+	if a.isLibrary() {
+		return
+	}
 	used := map[string]bool{}
 	for _, c := range a.all {
 		for _, u := range c.uses {
@@ -174,6 +177,17 @@ func (a *analysis) unused(n *Note) {
 			n.Faults = append(n.Faults, f)
 		}
 	}
+}
+
+// isLibrary reports a note that computes nothing itself: it is there for other
+// notes to use.
+func (a *analysis) isLibrary() bool {
+	for _, c := range a.all {
+		if c.judged != nil || c.role == RoleQuantity && !c.sym.Input || c.role == 0 {
+			return false
+		}
+	}
+	return true
 }
 
 // neglected is the advice about a name that nothing uses.
