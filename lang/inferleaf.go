@@ -72,8 +72,8 @@ func (e *elab) unit(p *UnitPhrase) (unit.Unit, bool) {
 // hidesName cautions where a symbol inside a unit phrase is also a name of the
 // note and the unit reading is not the likely one.
 func (e *elab) hidesName(p *UnitPhrase, u unit.Unit) {
-	if !strings.ContainsAny(p.Text, "/·.") {
-		return
+	if !strings.ContainsAny(p.Text, "/·.") || strings.ContainsRune(p.Text, '(') {
+		return // a product of names in parentheses would be written with *
 	}
 	for _, s := range phraseSymbols(p.Text)[1:] {
 		c := e.a.cells[CanonicalName(s)]

@@ -135,24 +135,34 @@ func (e *elab) margin(r *Relation, x, y typed, a, b outcome, ten float64) (m, wo
 	if len(a.grad) == 0 && len(b.grad) == 0 || a.value.Shape() != eval.Scalar || b.value.Shape() != eval.Scalar {
 		return m, m
 	}
-	var code eval.Code
-	var err error
-	if av > 0 && bv > 0 {
-		code, err = eval.Div(r.ID, y.code, x.code)
-	} else {
-		code, err = eval.Sub(r.ID, y.code, x.code)
-	}
+	return m, e.worst(r, x, y, a, b, ten)
+}
+
+// worst is the margin at the worst-case bounds: that of the difference, which
+// knows what the two sides have in common, over the greatest value of x.
+func (e *elab) worst(r *Relation, x, y typed, a, b outcome, ten float64) float64 {
+	av, bv := a.value.Re()*ten, b.value.Re()
+	times, err := eval.Mul(r.ID, x.code, eval.Num(ten))
 	if err != nil {
-		return m, m
+		return math.Inf(1)
+	}
+	code, err := eval.Sub(r.ID, y.code, times)
+	if err != nil {
+		return math.Inf(1)
 	}
 	o := e.a.run(e.c, r.ID, code)
-	if o.fault != nil {
-		return m, m
+	low := o.value.Re()
+	if len(o.grad) > 0 {
+		low = o.low
 	}
 	if av > 0 && bv > 0 {
-		return m, o.low/ten - 1
+		high := av
+		if len(a.grad) > 0 {
+			high = a.high * ten
+		}
+		return low / high
 	}
-	return m, o.low / math.Max(math.Abs(av), math.Abs(bv))
+	return low / math.Max(math.Max(math.Abs(av), math.Abs(bv)), math.SmallestNonzeroFloat64)
 }
 
 // largest and smallest are the extremes of a list, the value of a scalar.
@@ -297,7 +307,7 @@ func (e *elab) equal(r *Relation, i int, a, b outcome, j *Judgement) bool {
 	msg := fmt.Sprintf("%s does not hold: %s", j.Text, e.sides(x, y, a, b))
 	detail := "correct the stated value, or the formula"
 	if has {
-		msg += fmt.Sprintf(" (ratio %s)", number4(q))
+		msg += fmt.Sprintf(" (%s)", factorText("ratio", q))
 		if h := ratioHint(q); h != "" {
 			detail += "; " + h
 		}
@@ -325,6 +335,9 @@ func (e *elab) sides(x, y Expr, a, b outcome) string {
 		if isLiteral(z) {
 			digits = max(digits, significantDigits(z)+1)
 		}
+	}
+	if f, ok := e.c.factsOf(x); ok && u.IsZero() {
+		u = chosenUnit(f, a.value)
 	}
 	s := formatter{unit: u, digits: digits}
 	return fmt.Sprintf("%s is %s, and %s is %s", sketch(x), s.value(a.value), sketch(y), s.value(b.value))

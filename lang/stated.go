@@ -143,7 +143,7 @@ func (e *elab) differs(d *Definition, m Expr, stated eval.Value, u unit.Unit) Fa
 		Fix:     e.writeResult(m, u),
 	}
 	if r, ok := ratio(stated, e.c.sym.Value); ok {
-		f.Message += fmt.Sprintf(" (stated / computed = %s)", number4(r))
+		f.Message += fmt.Sprintf(" (%s)", factorText("stated / computed", r))
 		if h := ratioHint(r); h != "" {
 			f.Detail += "; " + h
 		}
@@ -181,6 +181,14 @@ func ratio(v, w eval.Value) (float64, bool) {
 		}
 	}
 	return r, true
+}
+
+// factorText writes a factor; one that is 1 but for a trifle as a difference.
+func factorText(what string, r float64) string {
+	if d := r - 1; d != 0 && math.Abs(d) < 1e-3 {
+		return fmt.Sprintf("%s − 1 = %s", what, decimal(d, formatter{digits: 2}.scale(math.Abs(d))))
+	}
+	return fmt.Sprintf("%s = %s", what, number4(r))
 }
 
 // agrees compares computed and stated values, half a last digit in the unit.

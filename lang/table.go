@@ -122,6 +122,11 @@ func (e *elab) computed(col *Column, u unit.Unit) {
 		e.fault("dimension-mismatch", col.Formula, fmt.Sprintf("column %s is given in %s, and this is %s", col.Name.Text, col.Unit.Text, describe(t.Facts)), "")
 		return
 	}
+	if t.Shape == eval.Scalar {
+		if t = e.everyRow(col, t); !t.Known {
+			return
+		}
+	}
 	e.c.sym.Facts = t.Facts
 	if t.blind {
 		return
@@ -132,6 +137,20 @@ func (e *elab) computed(col *Column, u unit.Unit) {
 		return
 	}
 	e.show(o.value, u)
+}
+
+// everyRow repeats a value that is the same in each row.
+func (e *elab) everyRow(col *Column, t typed) typed {
+	table, ok := e.c.owner.tree.(*Table)
+	if !ok {
+		return unknown()
+	}
+	ones := make([]float64, len(table.Rows))
+	for i := range ones {
+		ones[i] = 1
+	}
+	t.Shape = eval.List
+	return e.built(t, col)(eval.Mul(col.ID, t.code, eval.Const(eval.ListOf(ones...))))
 }
 
 // ownColumn infers the use of a column, `bh.H`.
