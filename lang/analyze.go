@@ -1,10 +1,11 @@
 package lang
 
 import (
+	"cmp"
 	"context"
 	"maps"
 	"slices"
-	"sort"
+	"strings"
 
 	"inkjoule/lang/eval"
 	"inkjoule/lang/unit"
@@ -34,7 +35,7 @@ func (s *state) cellOf(sym *Symbol) *cell {
 }
 
 func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
-	a := &analysis{opt: opt, ctx: ctx, cells: map[string]*cell{}, units: map[string]unitReading{}, spreads: map[int]eval.Spread{}}
+	a := &analysis{opt: opt, ctx: ctx, cells: make(map[string]*cell, 64), units: map[string]unitReading{}, spreads: map[int]eval.Spread{}}
 	var previous *Script
 	if p := opt.Previous; p != nil && p.state != nil {
 		previous = p.Script
@@ -76,8 +77,8 @@ func (a *analysis) finish(c *cell) {
 		c.adopt(old)
 		a.replaceInputs(c)
 	} else {
-		a.work(c)
-		c.made = c
+		a.analyse(c)
+		slices.SortStableFunc(c.uses, func(x, y usage) int { return x.span.Start - y.span.Start })
 	}
 	if c.role != 0 && c.sym.Result.Known {
 		a.machine.frame.Set(c.slot, c.sym.Value)
@@ -103,23 +104,15 @@ func sameCell(a, b *cell) bool {
 	if a == nil || b == nil {
 		return a == b
 	}
-	return a.made == b.made
+	return a.made == b.made && a.made != nil
 }
 
 // adopt takes over what an earlier cell found.
-func (c *cell) adopt(old *cell) {
-	stmt, slot, deps, regime, owner := c.stmt, c.slot, c.deps, c.regime, c.owner
-	*c = *old
-	c.stmt, c.slot, c.deps, c.regime, c.owner = stmt, slot, deps, regime, owner
-	if c.judged != nil {
-		j := *c.judged
-		j.Stmt = stmt
-		c.judged = &j
-	}
-}
+func (c *cell) adopt(old *cell) { c.work, c.made, c.inputs = old.work, old.made, old.inputs }
 
-// work analyses a cell from scratch.
-func (a *analysis) work(c *cell) {
+// analyse works on a cell from scratch.
+func (a *analysis) analyse(c *cell) {
+	c.begin()
 	if c.cyclic {
 		return
 	}
@@ -167,7 +160,9 @@ func (a *analysis) freeze() *Note {
 	for _, c := range a.all {
 		st.byStmt[c.stmt] = append(st.byStmt[c.stmt], c)
 		if c.judged != nil {
-			n.Judged = append(n.Judged, *c.judged)
+			j := *c.judged
+			j.Stmt = c.stmt
+			n.Judged = append(n.Judged, j)
 		}
 	}
 	a.freezeSymbols(n)
@@ -183,16 +178,14 @@ func (a *analysis) freezeSymbols(n *Note) {
 		if c.name == nil || a.cells[c.key] != c {
 			continue
 		}
-		s := c.symbol(st)
+		s := a.symbol(c, st)
 		n.Symbols = append(n.Symbols, s)
 		st.symbols[c.key] = s
 	}
 	for key, c := range a.cells {
 		switch {
 		case c.path != "":
-			s := c.symbol(st)
-			s.Path = c.path
-			st.symbols[key] = s
+			st.symbols[key] = a.symbol(c, st)
 		case c.stmt == nil:
 			s := c.sym
 			s.Key, s.Role = key, c.role
@@ -201,17 +194,25 @@ func (a *analysis) freezeSymbols(n *Note) {
 	}
 }
 
-// symbol is the cell's symbol in the note that is being frozen.
-func (c *cell) symbol(st *state) *Symbol {
+// symbol is the cell's symbol in the note that is being frozen: that of the
+// previous analysis where nothing about it has changed, not even its place.
+func (a *analysis) symbol(c *cell, st *state) *Symbol {
+	var owner *Symbol
+	if c.owner != nil {
+		owner = st.symbols[c.owner.key]
+	}
+	if p := a.previous; p != nil {
+		old := p.symbols[c.key]
+		if was := p.cells[c.key]; old != nil && was != nil && was.work == c.work && old.Stmt == c.stmt && old.Owner == owner && old.Path == c.path {
+			return old
+		}
+	}
 	s := c.sym
-	s.Name, s.Key, s.Role, s.Stmt = c.name.Text, c.key, c.role, c.stmt
+	s.Name, s.Key, s.Role, s.Stmt, s.Path, s.Owner = c.name.Text, c.key, c.role, c.stmt, c.path, owner
 	s.Span = c.name.Span.Shift(c.stmt.At)
 	if d, ok := c.tree.(*Definition); ok {
 		s.Def = d
 		s.Per = d.Per.text()
-	}
-	if c.owner != nil {
-		s.Owner = st.symbols[c.owner.key]
 	}
 	return &s
 }
@@ -233,12 +234,8 @@ func (a *analysis) freezeFaults(n *Note) {
 	}
 	a.unused(n)
 	n.Faults = onceAName(n.Faults)
-	sort.SliceStable(n.Faults, func(i, j int) bool {
-		x, y := n.Faults[i], n.Faults[j]
-		if x.Span != y.Span {
-			return x.Span.Start < y.Span.Start || x.Span.Start == y.Span.Start && x.Span.End < y.Span.End
-		}
-		return x.Rule < y.Rule
+	slices.SortStableFunc(n.Faults, func(x, y Fault) int {
+		return cmp.Or(x.Span.Start-y.Span.Start, x.Span.End-y.Span.End, strings.Compare(x.Rule, y.Rule))
 	})
 }
 
@@ -288,6 +285,11 @@ func (a *analysis) placed(f Fault) Fault {
 
 // freezeUses lists the uses of names by place.
 func (a *analysis) freezeUses(n *Note) {
+	count := 0
+	for _, c := range a.all {
+		count += len(c.uses) + 1
+	}
+	n.Uses = make([]Use, 0, count)
 	for _, c := range a.all {
 		if c.name != nil {
 			if s := n.state.symbols[c.key]; s != nil && s.Stmt == c.stmt {
@@ -300,5 +302,8 @@ func (a *analysis) freezeUses(n *Note) {
 			}
 		}
 	}
-	sort.SliceStable(n.Uses, func(i, j int) bool { return n.Uses[i].Span.Start < n.Uses[j].Span.Start })
+	byPlace := func(x, y Use) int { return x.Span.Start - y.Span.Start }
+	if !slices.IsSortedFunc(n.Uses, byPlace) {
+		slices.SortStableFunc(n.Uses, byPlace)
+	}
 }

@@ -96,7 +96,7 @@ func definitionRole(d *Definition) Role {
 }
 
 func newCell(s *Stmt, role Role, t Tree, name *Ident) *cell {
-	c := &cell{role: role, stmt: s, tree: t, name: name, base: t.Index()}
+	c := &cell{role: role, stmt: s, tree: t, name: name, base: t.Index(), work: noWork}
 	if name != nil {
 		c.key = CanonicalName(name.Text)
 	}

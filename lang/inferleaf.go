@@ -138,7 +138,7 @@ func (e *elab) sibling(key string, n *Name) (typed, bool) {
 // use records where a name is used.
 func (e *elab) use(key string, at Span) {
 	if e.quiet == 0 {
-		e.c.uses = append(e.c.uses, usage{key, at, false})
+		e.c.uses = append(e.c.uses, usage{key, at})
 	}
 }
 

@@ -22,7 +22,7 @@ func (a *analysis) link() {
 
 // Colours of the depth-first walk.
 const (
-	white = iota
+	white = uint8(iota)
 	grey
 	black
 )
@@ -30,7 +30,7 @@ const (
 // order returns the cells so that each follows what it needs; the members of a
 // cycle are reported once and left unknown.
 func (a *analysis) order() []*cell {
-	w := &walk{a: a, colour: make(map[*cell]int, len(a.all))}
+	w := &walk{a: a, out: make([]*cell, 0, len(a.all))}
 	for _, c := range a.all {
 		w.visit(c)
 	}
@@ -39,21 +39,20 @@ func (a *analysis) order() []*cell {
 
 // walk is a depth-first walk over needs.
 type walk struct {
-	a      *analysis
-	colour map[*cell]int
-	path   []*cell
-	out    []*cell
+	a    *analysis
+	path []*cell
+	out  []*cell
 }
 
 func (w *walk) visit(c *cell) {
-	switch w.colour[c] {
+	switch c.colour {
 	case black:
 		return
 	case grey:
 		w.cycle(c)
 		return
 	}
-	w.colour[c] = grey
+	c.colour = grey
 	w.path = append(w.path, c)
 	for i, d := range c.deps {
 		if d != nil && !c.needs[i].soft && d.stmt != nil && d.path == "" {
@@ -61,7 +60,7 @@ func (w *walk) visit(c *cell) {
 		}
 	}
 	w.path = w.path[:len(w.path)-1]
-	w.colour[c] = black
+	c.colour = black
 	w.out = append(w.out, c)
 }
 

@@ -135,7 +135,7 @@ func (a *analysis) constants() {
 	}
 	for _, k := range eval.Constants() {
 		c := &cell{key: CanonicalName(k.Name), role: RoleConstant}
-		c.made = c
+		c.begin()
 		u, err := unit.Parse(k.UnitPhrase)
 		if err != nil {
 			continue

@@ -2,7 +2,6 @@ package lang
 
 import (
 	"fmt"
-	"strings"
 
 	"inkjoule/lang/kind"
 )
@@ -160,17 +159,18 @@ func (a *analysis) unused(n *Note) {
 	if a.isLibrary() {
 		return
 	}
-	used := map[string]bool{}
 	for _, c := range a.all {
 		for _, u := range c.uses {
-			used[u.key] = true
-			if i := strings.IndexByte(u.key, '.'); i > 0 {
-				used[u.key[:i]] = true
+			if d := a.cells[u.key]; d != nil && d.role != RoleConstant {
+				d.used = true
+				if d.owner != nil {
+					d.owner.used = true
+				}
 			}
 		}
 	}
 	for _, c := range a.all {
-		if c.name == nil || a.cells[c.key] != c || used[c.key] || c.role == RoleProperty || c.role == RoleCondition {
+		if c.name == nil || a.cells[c.key] != c || c.used || c.role == RoleProperty || c.role == RoleCondition {
 			continue
 		}
 		if f, ok := c.neglected(); ok {

@@ -134,6 +134,8 @@ func foreign(old *cell, key, prefix string, view *analysis, path string) *cell {
 	c := *old
 	c.key, c.path, c.view = key, path, view
 	if prefix != "" && len(c.sym.Facts.Media) > 0 {
+		w := *c.work
+		c.work = &w
 		c.sym.Facts.Media = slices.Clone(c.sym.Facts.Media)
 		for i, m := range c.sym.Facts.Media {
 			c.sym.Facts.Media[i] = prefix + m
@@ -166,6 +168,8 @@ func (a *analysis) renumber(c *cell, n *Note) {
 		return own
 	}
 	if len(c.grad) > 0 {
+		w := *c.work
+		c.work = &w
 		c.grad = slices.Clone(c.grad)
 		for i := range c.grad {
 			c.grad[i].Input = number(c.grad[i].Input)
