@@ -2,106 +2,12 @@ package eval
 
 import "math"
 
-// problem is an integrand with what is demanded of its integral.
-type problem struct {
-	node   int
-	m      int // components
-	primal int // of which belong to the value; the rest are tangents
-	body   sampler
-	cost   int64
-	rel    [2]float64 // relative accuracy of the value and of the tangent
-	onAbs  bool       // relative to ∫|f|: for the inner of nested integrals
-	// stretch is the rate at which the range grows along the tangents: times
-	// the integral it is the size that the tangent cancels from.
-	stretch float64
-}
-
-// group is 0 for a component of the value, 1 for one of the tangent. Each group
-// is judged by its largest component.
-func (p *problem) group(c int) int {
-	if c < p.primal {
-		return 0
-	}
-	return 1
-}
-
-// groups is 2 where there are tangents, else 1.
-func (p *problem) groups() int {
-	if p.primal < p.m {
-		return 2
-	}
-	return 1
-}
-
-// interval is a piece of the range with its estimates.
-type interval struct {
-	a, b     float64
-	err, abs [2]float64
-	key      float64 // place in the heap: error over demanded accuracy
-	at       int     // first of its m integrals in workspace.sums
-	depth    int
-	left     bool // a is the left end of the segment
-	right    bool
-}
-
-// workspace is the storage of one level of nesting, kept by the frame.
-type workspace struct {
-	iv    []interval
-	heap  []int
-	sums  []float64
-	fx    []float64
-	total []float64
-	row   []float64
-	marks []mark
-	err   [2]float64
-	abs   [2]float64
-	share float64
-	segs  []segment
-	acc   []float64
-	tail  tailState
-}
-
-// state is how a piece of work ended.
-type state uint8
-
-const (
-	converged state = iota
-	unsettled       // not accurate enough, nothing left to split
-	diverging
-	singular  // at a point inside: split there
-	undefined // without a finite value at several points
-	stopped   // a fault stands
-)
-
 // maxIntervals bounds the pieces of one adaptive run: 90,000 evaluations.
 const maxIntervals = 6000
 
 // tailDepth is the number of halvings at an end of the range after which that
 // end is taken for singular and extrapolated.
 const tailDepth = 10
-
-// enter gives the workspace of the next level of nesting.
-func (f *Frame) enter(m int) *workspace {
-	if f.level == len(f.work) {
-		f.work = append(f.work, &workspace{})
-	}
-	w := f.work[f.level]
-	f.level++
-	w.row = grow(w.row, m)
-	w.fx = grow(w.fx, m*panelSize)
-	w.total = grow(w.total, m)
-	w.acc = grow(w.acc, m)
-	return w
-}
-
-func (f *Frame) leave() { f.level-- }
-
-func grow(s []float64, n int) []float64 {
-	if cap(s) < n {
-		return make([]float64, n)
-	}
-	return s[:n]
-}
 
 // ends tells how the ends of a segment are to be treated.
 type ends struct {
@@ -114,11 +20,11 @@ type ends struct {
 // is the absolute error that is good enough besides p.rel, for each group. The
 // point is where the integrand is singular, if that is the outcome.
 func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2]float64) (st state, point float64) {
-	w.iv, w.heap, w.sums = w.iv[:0], w.heap[:0], w.sums[:0]
+	w.iv, w.heap, w.sums, w.left, w.right = w.iv[:0], w.heap[:0], w.sums[:0], w.left[:0], w.right[:0]
 	w.err, w.abs = [2]float64{}, [2]float64{}
 	clear(w.total)
 	w.share = e.share
-	if st, point = f.examine(w, p, interval{a: a, b: b, left: true, right: true}, e); st != converged {
+	if st, point = f.first(w, p, a, b, e); st != converged {
 		return st, point
 	}
 	stuck := 0
@@ -127,8 +33,7 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 			return w.giveUp(p)
 		}
 		i := w.pop()
-		v := w.iv[i]
-		if e.tails && v.depth >= tailDepth && (v.left || v.right) && !(v.left && v.right) {
+		if e.tails && w.atEnd(i) {
 			if st, point = f.replaceByTail(w, p, i); st == stopped || st == diverging {
 				return st, point
 			}
@@ -137,15 +42,11 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 			}
 			e.tails = false // no tail after all: halve on
 		}
-		mid := v.a + (v.b-v.a)/2
-		if v.b-v.a < 64*epsilon*max(math.Abs(v.a), math.Abs(v.b)) || !(v.a < mid && mid < v.b) {
-			continue // frozen: its error stays in the sum
+		if w.iv[i].narrow() {
+			continue // its error stays in the sum
 		}
-		before := v.err[0]
-		w.remove(p, i)
-		l := interval{a: v.a, b: mid, depth: v.depth + 1, left: v.left, at: v.at}
-		r := interval{a: mid, b: v.b, depth: v.depth + 1, right: v.right, at: -1}
-		if st, point = f.halves(w, p, i, l, r, e); st != converged {
+		before := w.iv[i].err[0]
+		if st, point = f.halve(w, p, i); st != converged {
 			return st, point
 		}
 		if stuck = w.stuck(i, stuck, before); stuck > maxStuck && p.onAbs {
@@ -154,6 +55,19 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 	}
 	w.resum(p)
 	return converged, 0
+}
+
+// atEnd reports whether a piece lies at one end of the range and has been
+// halved often enough for that end to be taken for singular.
+func (w *workspace) atEnd(i int) bool {
+	v := &w.iv[i]
+	return v.depth >= tailDepth && (v.prev < 0) != (v.next < 0)
+}
+
+// narrow reports whether halving would not separate the nodes.
+func (v *interval) narrow() bool {
+	mid := v.a + (v.b-v.a)/2
+	return v.b-v.a < 64*epsilon*max(math.Abs(v.a), math.Abs(v.b)) || !(v.a < mid && mid < v.b)
 }
 
 // maxStuck is how many more halvings may fail than help in an inner integral:
@@ -168,59 +82,92 @@ func (w *workspace) stuck(left, count int, before float64) int {
 	return max(0, count-1)
 }
 
-// halves evaluates both halves of interval i, the left one in its place.
-func (f *Frame) halves(w *workspace, p *problem, i int, l, r interval, e ends) (state, float64) {
-	if st, x := f.measure(w, p, &l, e); st != converged {
+// first evaluates the whole range as the first interval.
+func (f *Frame) first(w *workspace, p *problem, a, b float64, e ends) (state, float64) {
+	w.add(p, interval{a: a, b: b, prev: -1, next: -1, heapAt: -1})
+	if st, x := f.measure(w, p, 0); st != converged {
 		return st, x
 	}
-	w.iv[i] = l
-	w.insert(p, i)
-	return f.examine(w, p, r, e)
-}
-
-// examine evaluates a new interval and adds it.
-func (f *Frame) examine(w *workspace, p *problem, v interval, e ends) (state, float64) {
-	v.at = len(w.sums)
-	for range p.m {
-		w.sums = append(w.sums, 0)
+	f.valueAt(w, p, a, e.checkLeft, w.ends[:p.m])
+	f.valueAt(w, p, b, e.checkRight, w.ends[p.m:2*p.m])
+	if !f.ok {
+		return stopped, 0
 	}
-	if st, x := f.measure(w, p, &v, e); st != converged {
-		return st, x
-	}
-	w.iv = append(w.iv, v)
-	w.insert(p, len(w.iv)-1)
+	w.judge(p, 0, 0)
+	w.judge(p, 0, 1)
+	w.insert(p, 0)
 	return converged, 0
 }
 
-// measure applies the rule to an interval.
-func (f *Frame) measure(w *workspace, p *problem, v *interval, e ends) (state, float64) {
+// add makes room for an interval.
+func (w *workspace) add(p *problem, v interval) {
+	w.iv = append(w.iv, v)
+	for range p.m {
+		w.sums = append(w.sums, 0)
+		w.left = append(w.left, 0)
+		w.right = append(w.right, 0)
+	}
+}
+
+// halve replaces interval i, which is off the heap, by its halves: the left one
+// in its place, the right one last.
+func (f *Frame) halve(w *workspace, p *problem, i int) (state, float64) {
+	w.account(p, i, -1)
+	v := w.iv[i]
+	mid, n := v.a+(v.b-v.a)/2, len(w.iv)
+	w.add(p, interval{a: mid, b: v.b, depth: v.depth + 1, prev: i, next: v.next, heapAt: -1})
+	w.iv[i] = interval{a: v.a, b: mid, depth: v.depth + 1, prev: v.prev, next: n, heapAt: -1}
+	if v.next >= 0 {
+		w.iv[v.next].prev = n
+	}
+	if st, x := f.measure(w, p, i); st != converged {
+		return st, x
+	}
+	if st, x := f.measure(w, p, n); st != converged {
+		return st, x
+	}
+	w.meet(p, v.prev, i)
+	w.meet(p, i, n)
+	w.meet(p, n, v.next)
+	w.insert(p, i)
+	w.insert(p, n)
+	return converged, 0
+}
+
+// valueAt is the integrand at an end of the range, NaN where it has no finite
+// value or is not asked for.
+func (f *Frame) valueAt(w *workspace, p *problem, x float64, ask bool, out []float64) {
+	good := ask && p.body.point(f, x, w.row)
+	for k := range out {
+		out[k] = math.NaN()
+		if good && isFinite(w.row[k]) {
+			out[k] = w.row[k]
+		}
+	}
+}
+
+// measure applies the rule to interval i.
+func (f *Frame) measure(w *workspace, p *problem, i int) (state, float64) {
 	if !f.spend(p.node, panelSize*p.cost) {
 		return stopped, 0
 	}
+	v := &w.iv[i]
 	c, h := v.a+(v.b-v.a)/2, (v.b-v.a)/2
 	if !p.body.panel(f, c, h, w.fx[:p.m*panelSize]) {
 		return stopped, 0
 	}
-	v.err, v.abs = [2]float64{}, [2]float64{}
 	bad := false
 	for k := range p.m {
-		s, err, abs := panelSum(h, w.fx[k*panelSize:(k+1)*panelSize])
+		fx := w.fx[k*panelSize : (k+1)*panelSize]
+		s, err, abs := panelSum(h, fx)
 		bad = bad || !isFinite(s)
-		g := p.group(k)
-		w.sums[v.at+k] = s
+		g, at := p.group(k), i*p.m+k
+		w.sums[at] = s
 		v.err[g], v.abs[g] = max(v.err[g], err), max(v.abs[g], abs)
+		w.left[at], w.right[at] = edgeValues(fx)
 	}
 	if bad {
 		return w.bad(p, c, h)
-	}
-	if v.left && e.checkLeft {
-		f.checkEdge(w, p, v, false)
-	}
-	if v.right && e.checkRight {
-		f.checkEdge(w, p, v, true)
-	}
-	if !f.ok {
-		return stopped, 0
 	}
 	return converged, 0
 }
@@ -242,29 +189,6 @@ func (w *workspace) bad(p *problem, c, h float64) (state, float64) {
 		return singular, c + h*kronrodNodes[at]
 	}
 	return undefined, c + h*kronrodNodes[at]
-}
-
-// checkEdge adds to the error what hides at the end of the range: the
-// difference between the value there and the panel's prediction, times the
-// distance to the first node. An end without a finite value tells nothing.
-func (f *Frame) checkEdge(w *workspace, p *problem, v *interval, right bool) {
-	x, d := v.a, (1-kronrodNodes[panelSize-1])*(v.b-v.a)/2
-	if right {
-		x = v.b
-	}
-	if !p.body.point(f, x, w.row) {
-		return
-	}
-	for k := range p.m {
-		y := w.row[k]
-		if !isFinite(y) {
-			return
-		}
-		off := d * math.Abs(y-edgeValue(w.fx[k*panelSize:(k+1)*panelSize], right))
-		if off > 1e-10*v.abs[p.group(k)] {
-			v.err[p.group(k)] += off
-		}
-	}
 }
 
 // settled reports whether the sum of the errors is within the demand.
@@ -307,8 +231,8 @@ func (w *workspace) size(p *problem, g int) (size float64) {
 // more, which is where the integrand is singular, or by sheer number.
 func (w *workspace) giveUp(p *problem) (state, float64) {
 	worst, at := 0.0, -1
-	for i, v := range w.iv {
-		if k := w.urgency(p, v); v.depth >= 40 && k > worst {
+	for i := range w.iv {
+		if k := w.urgency(p, i); w.iv[i].depth >= 40 && k > worst {
 			worst, at = k, i
 		}
 	}
@@ -325,18 +249,17 @@ func (w *workspace) resum(p *problem) {
 	if len(w.iv) == 1 {
 		return
 	}
-	clear(w.total)
 	w.err, w.abs = [2]float64{}, [2]float64{}
 	for k := range p.m {
 		var sum, lost float64
 		for i := range w.iv {
-			sum, lost = compensated(sum, lost, w.sums[w.iv[i].at+k])
+			sum, lost = compensated(sum, lost, w.sums[i*p.m+k])
 		}
 		w.total[k] = sum + lost
 	}
 	for i := range w.iv {
 		for g := range 2 {
-			w.err[g] += w.iv[i].err[g]
+			w.err[g] += w.iv[i].total(g)
 			w.abs[g] += w.iv[i].abs[g]
 		}
 	}

@@ -25,8 +25,10 @@ func (a jet) over(b jet) jet {
 // (1984) 300, with the one-sided three-point slopes of SLATEC's PCHIC at the
 // ends. Points carry tangents, so a curve moves with its cells.
 type curve struct {
-	x, y, slope []jet // slope is nil for a straight curve
-	monotone    bool  // y rises or falls strictly
+	x, y, slope []jet        // slope is nil for a straight curve
+	poly        [][4]float64 // of each interval, in x - x_i
+	monotone    bool         // y rises or falls strictly
+	moves       bool         // a cell has a tangent
 }
 
 // newCurve sorts the points; nil and a reason where x repeats.
@@ -52,6 +54,13 @@ func newCurve(xs, ys Value, linear bool) (*curve, string) {
 		c.slope = slopes(c.x, c.y)
 	}
 	c.monotone = monotone(c.y)
+	for i := range n {
+		c.moves = c.moves || c.x[i].d != 0 || c.y[i].d != 0
+	}
+	for i := range n - 1 {
+		m0, c2, c3 := c.coefficients(i)
+		c.poly = append(c.poly, [4]float64{c.y[i].v, m0.v, c2.v, c3.v})
+	}
 	return c, ""
 }
 
@@ -126,18 +135,17 @@ func (c *curve) at(x jet, order int) jet {
 	return c.cubic(c.find(x.v), x, order)
 }
 
-// cubic evaluates interval i as y0 + t(m0 + t(c2 + t·c3)), t = x - x0.
+// cubic is interval i, or its derivative of the given order, at x.
 func (c *curve) cubic(i int, x jet, order int) jet {
-	t := x.minus(c.x[i])
-	h := c.x[i+1].minus(c.x[i])
-	s := c.y[i+1].minus(c.y[i]).over(h)
-	m0, c2, c3 := s, jet{}, jet{}
-	if c.slope != nil {
-		m0 = c.slope[i]
-		m1 := c.slope[i+1]
-		c2 = s.scaled(3).minus(m0.scaled(2)).minus(m1).over(h)
-		c3 = m0.plus(m1).minus(s.scaled(2)).over(h).over(h)
+	if !c.moves {
+		v := jet{v: c.plain(i, x.v, order)}
+		if x.d != 0 {
+			v.d = c.plain(i, x.v, order+1) * x.d
+		}
+		return v
 	}
+	t := x.minus(c.x[i])
+	m0, c2, c3 := c.coefficients(i)
 	switch order {
 	case 0:
 		return c.y[i].plus(t.times(m0.plus(t.times(c2.plus(t.times(c3))))))
@@ -149,6 +157,35 @@ func (c *curve) cubic(i int, x jet, order int) jet {
 		return c3.scaled(6)
 	}
 	return jet{}
+}
+
+// plain is cubic without tangents.
+func (c *curve) plain(i int, x float64, order int) float64 {
+	p, t := &c.poly[i], x-c.x[i].v
+	switch order {
+	case 0:
+		return p[0] + t*(p[1]+t*(p[2]+t*p[3]))
+	case 1:
+		return p[1] + t*(2*p[2]+3*t*p[3])
+	case 2:
+		return 2*p[2] + 6*t*p[3]
+	case 3:
+		return 6 * p[3]
+	}
+	return 0
+}
+
+// coefficients are those of y0 + t(m0 + t(c2 + t·c3)) in interval i.
+func (c *curve) coefficients(i int) (m0, c2, c3 jet) {
+	h := c.x[i+1].minus(c.x[i])
+	s := c.y[i+1].minus(c.y[i]).over(h)
+	if c.slope == nil {
+		return s, jet{}, jet{}
+	}
+	m0, m1 := c.slope[i], c.slope[i+1]
+	c2 = s.scaled(3).minus(m0.scaled(2)).minus(m1).over(h)
+	c3 = m0.plus(m1).minus(s.scaled(2)).over(h).over(h)
+	return m0, c2, c3
 }
 
 // inverse is the x at which a strictly monotone curve has the value y; false
@@ -182,13 +219,13 @@ func (c *curve) invert(i int, y float64) float64 {
 	x := a + (y-c.y[i].v)/(c.y[i+1].v-c.y[i].v)*(b-a)
 	lo, hi := a, b
 	for range 100 {
-		r := c.cubic(i, jet{v: x}, 0).v - y
+		r := c.plain(i, x, 0) - y
 		if r > 0 == rising {
 			hi = x
 		} else {
 			lo = x
 		}
-		next := x - r/c.cubic(i, jet{v: x}, 1).v
+		next := x - r/c.plain(i, x, 1)
 		if !(next > lo && next < hi) {
 			next = lo + (hi-lo)/2
 		}
@@ -206,5 +243,5 @@ func (c *curve) moved(i int, x float64, y jet) jet {
 	if y.d == fixed.d {
 		return jet{v: x}
 	}
-	return jet{x, (y.d - fixed.d) / c.cubic(i, jet{v: x}, 1).v}
+	return jet{x, (y.d - fixed.d) / c.plain(i, x, 1)}
 }

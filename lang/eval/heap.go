@@ -3,12 +3,12 @@ package eval
 // The pieces of an adaptive integral form a heap by urgency. Totals are kept
 // up to date as pieces come and go.
 
-// urgency is the error of a piece over the size of the whole, the larger of
-// value and tangent.
-func (w *workspace) urgency(p *problem, v interval) (k float64) {
+// urgency is the error of a piece over what is demanded of the whole, the larger
+// of value and tangent.
+func (w *workspace) urgency(p *problem, i int) (k float64) {
 	for g := range 2 {
-		if v.err[g] > 0 {
-			k = max(k, v.err[g]/max(w.demand(p, g), v.err[g]*1e-30))
+		if e := w.iv[i].total(g); e > 0 {
+			k = max(k, e/max(w.demand(p, g), e*1e-30))
 		}
 	}
 	return k
@@ -16,29 +16,21 @@ func (w *workspace) urgency(p *problem, v interval) (k float64) {
 
 // insert adds interval i to the totals and to the heap.
 func (w *workspace) insert(p *problem, i int) {
-	v := &w.iv[i]
-	w.account(p, v, 1)
-	v.key = w.urgency(p, *v)
+	w.account(p, i, 1)
+	w.iv[i].key, w.iv[i].heapAt = w.urgency(p, i), len(w.heap)
 	w.heap = append(w.heap, i)
-	for c := len(w.heap) - 1; c > 0; {
-		up := (c - 1) / 2
-		if w.iv[w.heap[up]].key >= w.iv[w.heap[c]].key {
-			return
-		}
-		w.heap[up], w.heap[c] = w.heap[c], w.heap[up]
-		c = up
-	}
+	w.up(len(w.heap) - 1)
 }
 
-// remove takes interval i out of the totals.
-func (w *workspace) remove(p *problem, i int) { w.account(p, &w.iv[i], -1) }
-
-func (w *workspace) account(p *problem, v *interval, sign float64) {
+// account adds interval i to the totals (sign 1) or takes it out (-1).
+func (w *workspace) account(p *problem, i int, sign float64) {
+	v := &w.iv[i]
+	v.counted = sign > 0
 	for k := range p.m {
-		w.total[k] += sign * w.sums[v.at+k]
+		w.total[k] += sign * w.sums[i*p.m+k]
 	}
 	for g := range 2 {
-		w.err[g] = max(0, w.err[g]+sign*v.err[g])
+		w.err[g] = max(0, w.err[g]+sign*v.total(g))
 		w.abs[g] = max(0, w.abs[g]+sign*v.abs[g])
 	}
 }
@@ -46,20 +38,59 @@ func (w *workspace) account(p *problem, v *interval, sign float64) {
 // pop takes the most urgent interval off the heap.
 func (w *workspace) pop() int {
 	top, last := w.heap[0], len(w.heap)-1
-	w.heap[0] = w.heap[last]
+	w.place(0, w.heap[last])
 	w.heap = w.heap[:last]
-	for c := 0; ; {
-		kid := 2*c + 1
-		if kid >= last {
-			return top
+	w.iv[top].heapAt = -1
+	if last > 0 {
+		w.down(0)
+	}
+	return top
+}
+
+// move restores the place of an interval whose error has changed.
+func (w *workspace) move(p *problem, i int) {
+	w.iv[i].key = w.urgency(p, i)
+	w.up(w.iv[i].heapAt)
+	w.down(w.iv[i].heapAt)
+}
+
+func (w *workspace) place(at, i int) {
+	w.heap[at] = i
+	w.iv[i].heapAt = at
+}
+
+func (w *workspace) swap(a, b int) {
+	i, j := w.heap[a], w.heap[b]
+	w.place(a, j)
+	w.place(b, i)
+}
+
+func (w *workspace) keyAt(at int) float64 { return w.iv[w.heap[at]].key }
+
+func (w *workspace) up(c int) {
+	for c > 0 {
+		up := (c - 1) / 2
+		if w.keyAt(up) >= w.keyAt(c) {
+			return
 		}
-		if kid+1 < last && w.iv[w.heap[kid+1]].key > w.iv[w.heap[kid]].key {
+		w.swap(up, c)
+		c = up
+	}
+}
+
+func (w *workspace) down(c int) {
+	for {
+		kid := 2*c + 1
+		if kid >= len(w.heap) {
+			return
+		}
+		if kid+1 < len(w.heap) && w.keyAt(kid+1) > w.keyAt(kid) {
 			kid++
 		}
-		if w.iv[w.heap[c]].key >= w.iv[w.heap[kid]].key {
-			return top
+		if w.keyAt(c) >= w.keyAt(kid) {
+			return
 		}
-		w.heap[c], w.heap[kid] = w.heap[kid], w.heap[c]
+		w.swap(c, kid)
 		c = kid
 	}
 }

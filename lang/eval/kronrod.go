@@ -86,14 +86,11 @@ func panelSum(h float64, fx []float64) (sum, err, abs float64) {
 // epsilon is the relative spacing of float64 at 1.
 const epsilon = 0x1p-52
 
-// edgeValue is the value at the left end that the panel predicts; with reverse,
-// at the right end.
-func edgeValue(fx []float64, reverse bool) (v float64) {
+// edgeValues are the values at the ends that the panel predicts.
+func edgeValues(fx []float64) (left, right float64) {
 	for i, w := range edgeWeights {
-		if reverse {
-			i = panelSize - 1 - i
-		}
-		v += w * fx[i]
+		left += w * fx[i]
+		right += w * fx[panelSize-1-i]
 	}
-	return v
+	return left, right
 }

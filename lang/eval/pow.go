@@ -54,7 +54,7 @@ func (f *Frame) realPower(node int, a, b float64) float64 {
 		a *= a
 		return a * a
 	case a == 0 && b < 0:
-		f.fail(node, RuleDivision, "zero is raised to the power of "+number(b), "")
+		f.fail(node, RuleDivision, "zero is raised to a negative power", "")
 		return 0
 	case a < 0 && b != math.Trunc(b) && !math.IsInf(b, 0):
 		f.complexResult(node, number(a)+"^"+number(b))

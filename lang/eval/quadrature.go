@@ -142,7 +142,7 @@ func (f *Frame) addTail(w *workspace, p *problem, t tail) (state, float64) {
 func (f *Frame) replaceByTail(w *workspace, p *problem, i int) (state, float64) {
 	v := w.iv[i]
 	t := tail{from: v.a, dir: 1, width: v.b - v.a}
-	if v.right {
+	if v.next < 0 {
 		t.from, t.dir = v.b, -1
 	}
 	var scale [2]float64
@@ -153,10 +153,18 @@ func (f *Frame) replaceByTail(w *workspace, p *problem, i int) (state, float64) 
 	if st != converged {
 		return st, t.from
 	}
-	w.remove(p, i)
-	copy(w.sums[v.at:v.at+p.m], s.sum)
-	w.iv[i].err, w.iv[i].abs = s.err, s.abs
-	w.account(p, &w.iv[i], 1) // not back on the heap: it cannot be refined
+	w.account(p, i, -1)
+	lo, hi := i*p.m, (i+1)*p.m
+	copy(w.sums[lo:hi], s.sum)
+	f.valueAt(w, p, v.a, v.prev >= 0, w.left[lo:hi])
+	f.valueAt(w, p, v.b, v.next >= 0, w.right[lo:hi])
+	w.iv[i].err, w.iv[i].abs, w.iv[i].gap, w.iv[i].closed = s.err, s.abs, [2][2]float64{}, true
+	w.account(p, i, 1) // not back on the heap: it cannot be refined
+	w.meet(p, v.prev, -1)
+	w.meet(p, -1, v.next)
+	if !f.ok {
+		return stopped, 0
+	}
 	return converged, 0
 }
 

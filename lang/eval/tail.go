@@ -58,7 +58,7 @@ type tailState struct {
 	size    [2][]float64  // magnitude of each piece, by group
 	err     [2]float64    // of the pieces
 	abs     [2]float64    // ∫|f| over the pieces
-	end     [2]float64    // magnitude of the integrand at the end itself
+	end     []float64     // the integrand at the end itself
 	last    [2][3]float64 // the last estimates' changes
 	nothing [2]bool       // every piece so far was zero
 }
@@ -95,7 +95,7 @@ func (f *Frame) tail(p *problem, t tail, scale [2]float64) (*tailState, state) {
 	for k := range n {
 		a, b := t.piece(k)
 		want := s.goal(p, scale, 0.02)
-		if st, _ := f.adaptive(w, p, a, b, ends{share: 0.01}, want); st != converged {
+		if st, _ := f.adaptive(w, p, a, b, ends{checkLeft: true, checkRight: true, share: 0.01}, want); st != converged {
 			if st == undefined && t.outward && w.overflown(p) {
 				return s, diverging
 			}
@@ -115,7 +115,7 @@ func (f *Frame) tail(p *problem, t tail, scale [2]float64) (*tailState, state) {
 
 // endValue evaluates the integrand at the end; false if it has no finite value.
 func (f *Frame) endValue(p *problem, x float64, s *tailState, row []float64) bool {
-	s.end = [2]float64{}
+	s.end = grow(s.end, p.m)
 	if !p.body.point(f, x, row) {
 		return false
 	}
@@ -123,8 +123,7 @@ func (f *Frame) endValue(p *problem, x float64, s *tailState, row []float64) boo
 		if !isFinite(row[k]) {
 			return false
 		}
-		g := p.group(k)
-		s.end[g] = max(s.end[g], math.Abs(row[k]))
+		s.end[k] = row[k]
 	}
 	return true
 }
@@ -166,11 +165,14 @@ func (s *tailState) add(p *problem, w *workspace) {
 // be bounded by the last one.
 func (s *tailState) negligible(p *problem, k int, scale [2]float64, known bool, d float64) bool {
 	want := s.goal(p, scale, 0.05)
+	for c := range s.sum {
+		if known && math.Abs(s.end[c])*d > want[p.group(c)] {
+			return false
+		}
+	}
 	for g := range p.groups() {
 		z := s.size[g]
 		switch {
-		case known && s.end[g]*d > want[g]:
-			return false
 		case s.nothing[g] && (g == 1 || k >= zeroPieces):
 		case k >= 2 && z[k] <= want[g] && z[k] <= 0.9*z[k-1] && z[k-1] <= 0.9*z[k-2]:
 		default:
@@ -189,20 +191,21 @@ func (s *tailState) extrapolated(p *problem, k int, scale [2]float64, known bool
 	if k < 5 {
 		return false
 	}
-	var change, rest [2]float64
+	var change, hidden [2]float64
 	for c := range s.sum {
 		g := p.group(c)
 		lim, diff := s.eps[c].limit()
 		change[g] = max(change[g], diff)
-		rest[g] = max(rest[g], math.Abs(lim-s.sum[c]))
+		if known { // what the end's own value leaves room for
+			hidden[g] = max(hidden[g], math.Abs(lim-s.sum[c]-s.end[c]*d))
+		}
 	}
 	want := s.goal(p, scale, 0.1)
 	good := true
 	for g := range p.groups() {
 		l := &s.last[g]
 		l[0], l[1], l[2] = l[1], l[2], change[g]
-		good = good && s.shrinking(g, k, want[g]) && max(l[0], l[1], l[2]) <= want[g] &&
-			(!known || s.end[g]*d <= 4*rest[g]+want[g])
+		good = good && s.shrinking(g, k, want[g]) && max(l[0], l[1], l[2], hidden[g]) <= want[g]
 	}
 	if !good {
 		return false
