@@ -24,6 +24,9 @@ func TestConstants(t *testing.T) {
 		if c.Exact != (c.Standard == 0) || c.Meaning == "" || c.Source == "" || c.UnitPhrase == "" {
 			t.Errorf("%s is described badly: %+v", c.Name, c)
 		}
+		if alpha := map[string]int{"eps_0": -1, "mu_0": 1, "Z_0": 1}[c.Name]; c.Alpha != alpha {
+			t.Errorf("%s goes with alpha^%d, want %d", c.Name, c.Alpha, alpha)
+		}
 		w, ok := want[c.Name]
 		if p, rounded := printed[c.Name]; rounded {
 			if math.Abs(c.Value-p[0]) > p[1] {

@@ -106,6 +106,9 @@ func (f *Frame) run(node int, c Code, dual bool) (Value, *Fault) {
 	}
 	v := c.Any(f)
 	f.dual = false
+	if !dual {
+		v = v.Primal()
+	}
 	if f.ok && !v.Finite() {
 		f.fail(node, RuleBudget, "the value is beyond the range of numbers (1.8e308)",
 			"look for an exponent or an argument of exp that is too large")
