@@ -206,10 +206,15 @@ func TestFaultsOfDomain(t *testing.T) {
 		{"inv", e.call("inv", e.mul(x, Const(identity))), 0, RuleDivision},
 		{"uniaxial", e.call("uniaxial", x, x, Const(Vec(0, 0, 0))), 1, RuleDivision},
 		{"exp", e.call("exp", x), 1000, RuleBudget},
+		{"out of the list", must(t)(Cell(0, 2, e.mul(x, Const(ListOf(1, 2))))), 1, RuleTable},
+		{"complex zero", must(t)(Abs(0, e.pow(e.mul(x, Const(Cplx(1i))), -2))), 0, RuleDivision},
+		{"constant to infinity", must(t)(Integral(0, 1, Num(0), Num(inf), e.pow(x, 2))), 2, RuleDiverges},
+		{"not whole", must(t)(Sum(0, 1, Num(0), x, slot(1))), 2.5, RuleShape},
+		{"bound that is no number", must(t)(Integral(0, 1, Num(0), e.call("exp", e.mul(Num(1e3), x)), e.pow(slot(1), -2))), 2, RuleDiverges},
 		{"lists", e.call("sum", e.mul(Const(ListOf(1, 2)), e.add(x, Const(ListOf(1, 2, 3))))), 1, RuleShape},
 	}
 	for _, c := range cases {
-		f := NewFrame(context.Background(), 1, Budget{})
+		f := NewFrame(context.Background(), 2, Budget{})
 		f.Set(0, Real(c.at))
 		for _, run := range []func(int, Code) (Value, *Fault){f.Run, f.RunDual} {
 			if v, fault := run(0, c.code); fault == nil || fault.Rule != c.rule || fault.Message == "" {
@@ -236,5 +241,47 @@ func TestBuiltinsDescribeThemselves(t *testing.T) {
 		if !seen[name] {
 			t.Errorf("%s is missing", name)
 		}
+	}
+}
+
+func TestTensorsAndLists(t *testing.T) {
+	e := expr{t}
+	m := Const(Ten([9]float64{2, 0, 1, 0, 3, 0, 1, 0, 4}))
+	near(t, "det", run(t, e.call("det", m)).Re(), 21, 0)
+	near(t, "trace", run(t, e.call("trace", m)).Re(), 9, 0)
+	if got := run(t, e.dot(e.call("inv", m), m)); math.Abs(got.At(0).Re()-1) > 1e-15 || math.Abs(got.At(2).Re()) > 1e-15 {
+		t.Errorf("inv(T)·T = %+v", got)
+	}
+	// calcite, optic axis turned by 90° about y: z becomes x
+	u := e.call("uniaxial", Num(8.5), Num(8.0), Const(Vec(0, 0, 2)))
+	if got := run(t, u); !got.Equal(Ten([9]float64{8.5, 0, 0, 0, 8.5, 0, 0, 0, 8})) {
+		t.Errorf("uniaxial = %+v", got)
+	}
+	r := run(t, e.call("rotate", u, Const(Vec(0, 1, 0)), Num(math.Pi/2)))
+	for i, want := range []float64{8, 0, 0, 0, 8.5, 0, 0, 0, 8.5} {
+		if math.Abs(r.At(i).Re()-want) > 1e-14 {
+			t.Errorf("rotated component %d is %g, want %g", i, r.At(i).Re(), want)
+		}
+	}
+	// right-handed: x turned by 90° about z is y
+	rot := must(t)(rotation(0, Const(Vec(0, 0, 1)), Num(math.Pi/2)))
+	if v := run(t, e.dot(rot, Const(Vec(1, 0, 0)))); math.Abs(v.At(1).Re()-1) > 1e-15 {
+		t.Errorf("x turns to %+v", v)
+	}
+	list := Const(CList(3i, 4))
+	if got := run(t, must(t)(Abs(0, list))); !got.Equal(ListOf(3, 4)) {
+		t.Errorf("|list| = %+v", got)
+	}
+	if got := run(t, e.call("arg", list)); !got.Equal(ListOf(math.Pi/2, 0)) {
+		t.Errorf("arg(list) = %+v", got)
+	}
+	if got := run(t, must(t)(Cell(0, 1, list))); !got.Equal(Cplx(4)) {
+		t.Errorf("cell = %+v", got)
+	}
+	if got := run(t, e.dot(Const(CTen([9]complex128{1i, 0, 0, 0, 1, 0, 0, 0, 1})), Const(Vec(1, 2, 3)))); !got.Equal(CVec(1i, 2, 3)) {
+		t.Errorf("complex tensor on vector = %+v", got)
+	}
+	if got := run(t, e.call("dot", Const(Vec(1, 2, 3)), Const(Vec(1, 1, 1)))); got.Re() != 6 {
+		t.Errorf("dot = %+v", got)
 	}
 }

@@ -57,6 +57,7 @@ func TestIntegralsOfKnownValue(t *testing.T) {
 		}, -1, 1, 4},
 		{"pole off any node", func(x float64) float64 { return 1 / sq(math.Abs(x-math.Pi/10)) }, 0, 1, 2*sq(math.Pi/10) + 2*sq(1-math.Pi/10)},
 		{"log off any node", func(x float64) float64 { return math.Log(math.Abs(x - 0.3)) }, 0, 1, 0.3*math.Log(0.3) + 0.7*math.Log(0.7) - 1},
+		{"two poles inside", func(x float64) float64 { return 1/sq(math.Abs(x-0.3)) + 1/sq(math.Abs(x-0.7)) }, 0, 1, 4*sq(0.3) + 4*sq(0.7)},
 		{"zero", func(float64) float64 { return 0 }, 0, 1, 0},
 		{"zero out", func(float64) float64 { return 0 }, 0, inf, 0},
 		{"sinc", func(x float64) float64 { return math.Sin(x) / x }, 0, 10, 1.6583475942188740493}, // Si(10), A&S table 5.1

@@ -31,7 +31,7 @@ func (g *gen) number(depth int) Code {
 		return Num(rapid.Float64Range(-2, 2).Draw(g.r, "constant"))
 	}
 	a := func() Code { return g.number(depth - 1) }
-	switch g.pick(17) {
+	switch g.pick(22) {
 	case 0:
 		return g.add(a(), a())
 	case 1:
@@ -70,6 +70,20 @@ func (g *gen) number(depth int) Code {
 		left := g.add(slot(s), g.pow(slot(s), 3))
 		return must(g.t)(Solve(0, s, left, g.call("sin", a()), Num(-2), Num(2)))
 	case 15:
+		return g.call([]string{"det", "trace"}[g.pick(2)], g.tensor(depth-1))
+	case 16:
+		return must(g.t)(Component(0, g.pick(3), g.vector(depth-1)))
+	case 17:
+		return g.call([]string{"min", "max", "sum", "mean"}[g.pick(4)], a(), a(), a())
+	case 18: // a list and its reduction
+		l := g.mul(g.add(Const(ListOf(1, -2, 0.5)), a()), Const(ListOf(0.3, 0.2, -1)))
+		return g.call([]string{"min", "max", "sum", "mean"}[g.pick(4)], g.call("sin", l))
+	case 19: // phase of a number off the cut, and a power of it
+		z := g.add(Num(3), g.call("exp", g.mul(Const(Cplx(1i)), a())))
+		return g.call("arg", must(g.t)(Pow(0, z, []Code{Num(3), Num(-2), Num(0.3), g.phasor(0)}[g.pick(4)])))
+	case 20:
+		return must(g.t)(TensorComponent(0, g.pick(3), g.pick(3), g.tensor(depth-1)))
+	case 21:
 		return g.call("ellipK", g.mul(Num(0.9), g.pow(g.call("sin", a()), 2)))
 	}
 	return g.call("besselJ", Num(float64(g.pick(3))), a())

@@ -84,9 +84,9 @@ func (f *Frame) segment(w *workspace, p *problem, s segment, scale [2]float64) (
 	case s.left == endPole && s.right == endPole:
 		return f.twoTails(w, p, s, scale)
 	case s.left == endPole:
-		return f.wholeTail(w, p, tail{from: s.a, dir: 1, width: s.b - s.a}, scale)
+		return f.wholeTail(w, p, tail{from: s.a, dir: 1, width: s.b - s.a, pole: true}, scale)
 	case s.right == endPole:
-		return f.wholeTail(w, p, tail{from: s.b, dir: -1, width: s.b - s.a}, scale)
+		return f.wholeTail(w, p, tail{from: s.b, dir: -1, width: s.b - s.a, pole: true}, scale)
 	}
 	e := ends{checkLeft: s.left == endOuter, checkRight: s.right == endOuter, tails: true}
 	return f.adaptive(w, p, s.a, s.b, e, p.share(scale))
@@ -105,16 +105,19 @@ func (f *Frame) wholeTail(w *workspace, p *problem, t tail, scale [2]float64) (s
 		copy(w.total, s.sum)
 		w.err, w.abs = s.err, s.abs
 	}
+	if st == singular {
+		return st, s.where
+	}
 	return st, t.from
 }
 
 // twoTails integrates a segment that is singular at both ends.
 func (f *Frame) twoTails(w *workspace, p *problem, s segment, scale [2]float64) (state, float64) {
 	mid := s.a + (s.b-s.a)/2
-	if st, x := f.wholeTail(w, p, tail{from: s.a, dir: 1, width: mid - s.a}, scale); st != converged {
+	if st, x := f.wholeTail(w, p, tail{from: s.a, dir: 1, width: mid - s.a, pole: true}, scale); st != converged {
 		return st, x
 	}
-	return f.addTail(w, p, tail{from: s.b, dir: -1, width: s.b - mid})
+	return f.addTail(w, p, tail{from: s.b, dir: -1, width: s.b - mid, pole: true})
 }
 
 // addTail adds a tail to what w holds.
@@ -124,6 +127,9 @@ func (f *Frame) addTail(w *workspace, p *problem, t tail) (state, float64) {
 		scale[p.group(k)] = max(scale[p.group(k)], math.Abs(x))
 	}
 	s, st := f.tail(p, t, scale)
+	if st == singular {
+		return st, s.where
+	}
 	if st != converged {
 		return st, t.from
 	}

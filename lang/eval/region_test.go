@@ -161,3 +161,26 @@ func TestSelfEnergyOfSquareAndCube(t *testing.T) {
 	v = run(t, must(t)(RegionIntegral(0, Region{Kind: Box, Params: lengths(1, 1, 1)}, at, cube)), make([]Value, 7)...)
 	near(t, "cube", v.Re(), 2*0.94115632219483008, 1e-9)
 }
+
+func TestRegionsByName(t *testing.T) {
+	for _, name := range []string{"box", "ball", "shell", "cylinder", "tube", "rectangle", "disc", "sphere", "wall", "segment", "ring"} {
+		k, ok := RegionNamed(name)
+		if !ok || k.String() != name || k.Params() == 0 || k.Dims() == 0 || len(k.Coords()) != k.Dims() {
+			t.Errorf("%s: %v %v", name, k, k.Coords())
+		}
+	}
+	if _, ok := RegionNamed("cone"); ok {
+		t.Error("there is a cone")
+	}
+	for _, r := range []Region{
+		{Kind: Box, Params: lengths(1)}, {Kind: Disc, Params: lengths(1), Boundary: true}, {},
+		{Kind: Segment, Params: []Code{Const(Vec(1, 2, 3))}},
+	} {
+		if _, err := RegionIntegral(0, r, at, Num(1)); err == nil {
+			t.Errorf("%+v is not refused", r)
+		}
+		if _, err := Measure(0, r); err == nil || err.Error() == "" {
+			t.Errorf("%+v is measured", r)
+		}
+	}
+}

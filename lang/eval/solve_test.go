@@ -24,6 +24,7 @@ func TestSolve(t *testing.T) {
 		{"two roots", e.pow(x, 2), Num(2), -2, 3, -math.Sqrt2, 2},
 		{"touching", e.pow(e.sub(x, Num(0.7)), 2), Num(0), 0, 2, 0.7, 0},
 		{"close pair", e.pow(e.sub(x, Num(0.7)), 2), Num(1e-10), 0, 2, 0.7 - 1e-5, 2},
+		{"close pair between samples", e.pow(e.sub(x, Num(0.7041)), 2), Num(1e-10), 0, 2, 0.7041 - 1e-5, 2},
 		{"ten turns", e.call("sin", x), Num(0), 1, 32, math.Pi, 10},
 		{"tangent, with its poles", e.call("tan", x), Num(1), 0, 7, math.Pi / 4, 2},
 		{"nanometres", e.div(Num(1e-18), x), x, 1e-12, 1, 1e-9, 0},

@@ -16,6 +16,7 @@ type tail struct {
 	dir     float64 // +1: the tail lies above from
 	width   float64 // distance of the outer edge of piece 0 (inner edge if outward)
 	outward bool
+	pole    bool // known to be singular: the value at the end means nothing
 }
 
 // piece is the interval of piece k, ascending.
@@ -59,6 +60,7 @@ type tailState struct {
 	err     [2]float64    // of the pieces
 	abs     [2]float64    // ∫|f| over the pieces
 	end     []float64     // the integrand at the end itself
+	where   float64       // what stopped the tail
 	last    [2][3]float64 // the last estimates' changes
 	nothing [2]bool       // every piece so far was zero
 }
@@ -87,7 +89,7 @@ func (f *Frame) tail(p *problem, t tail, scale [2]float64) (*tailState, state) {
 	defer f.leave()
 	s := &w.tail
 	s.reset(p.m)
-	known := !t.outward && f.endValue(p, t.from, s, w.row)
+	known := !t.outward && !t.pole && f.endValue(p, t.from, s, w.row)
 	if !f.ok {
 		return s, stopped
 	}
@@ -95,7 +97,12 @@ func (f *Frame) tail(p *problem, t tail, scale [2]float64) (*tailState, state) {
 	for k := range n {
 		a, b := t.piece(k)
 		want := s.goal(p, scale, 0.02)
-		if st, _ := f.adaptive(w, p, a, b, ends{checkLeft: true, checkRight: true, share: 0.01}, want); st != converged {
+		st, x := f.adaptive(w, p, a, b, ends{checkLeft: true, checkRight: true, share: 0.01}, want)
+		if st != converged {
+			s.where = x
+			if st == singular && len(s.size[0]) < 3 {
+				return s, singular // a singular point of its own, far from this end
+			}
 			if st == undefined && t.outward && w.overflown(p) {
 				return s, diverging
 			}
