@@ -37,6 +37,18 @@ type Pass struct {
 	Rule   *Rule
 	Note   *lang.Note
 	report func(lang.Fault)
+	shared map[any]any
+}
+
+// Once gives what the first rule that asks for the key has made for this note,
+// so that rules share what they all need. What it gives must not be changed.
+func (p *Pass) Once(key any, make func() any) any {
+	made, ok := p.shared[key]
+	if !ok {
+		made = make()
+		p.shared[key] = made
+	}
+	return made
 }
 
 // Report files a finding; Rule is set, and Severity unless the rule set it.
@@ -114,14 +126,14 @@ func (b *Broken) Error() string {
 func (b *Broken) Unwrap() error { return b.Err }
 
 // apply runs the rule and turns an error or a panic into *Broken.
-func (r *Rule) apply(note *lang.Note, report func(lang.Fault)) (broken *Broken) {
+func (r *Rule) apply(note *lang.Note, shared map[any]any, report func(lang.Fault)) (broken *Broken) {
 	defer func() {
 		if p := recover(); p != nil {
 			broken = &Broken{Rule: r.Name, Path: note.Path, Err: fmt.Errorf("%v", p), Stack: debug.Stack()}
 		}
 	}()
 	var unfit error
-	pass := &Pass{Rule: r, Note: note, report: func(f lang.Fault) {
+	pass := &Pass{Rule: r, Note: note, shared: shared, report: func(f lang.Fault) {
 		if err := fit(note, f); err != nil {
 			unfit = err
 			return

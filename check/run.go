@@ -64,6 +64,7 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 	}
 	found = r.wanted(found)
 	var broken []error
+	shared := map[any]any{}
 	for _, rule := range r.cfg.Rules {
 		if ctx.Err() != nil {
 			return nil, nil
@@ -71,7 +72,7 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 		if rule.Run == nil || r.off(rule.Name) {
 			continue
 		}
-		if b := rule.apply(note, file); b != nil {
+		if b := rule.apply(note, shared, file); b != nil {
 			broken = append(broken, b)
 		}
 	}
