@@ -39,6 +39,7 @@ type editor struct {
 
 // message is any JSON-RPC message.
 type message struct {
+	came    time.Time
 	Version string          `json:"jsonrpc"`
 	ID      json.RawMessage `json:"id,omitempty"`
 	Method  string          `json:"method,omitempty"`
@@ -117,6 +118,7 @@ func (e *editor) keep(m message, err error) {
 		e.wrong = err
 	}
 	if err == nil {
+		m.came = time.Now()
 		e.got = append(e.got, m)
 	}
 	e.grown.Broadcast()

@@ -27,6 +27,7 @@ func features() []feature {
 		codeActions(),
 		navigation(),
 		renaming(),
+		completions(),
 	}
 }
 
