@@ -188,11 +188,25 @@ func (b *former) member(m *Member) *Form {
 	switch owner.Role {
 	case RoleMedium, RoleNote:
 		full := key + "." + field
-		return atom(Factor{Key: full, Facts: b.facts(m), Symbol: b.n.Lookup(full)})
+		return atom(Factor{Key: full, Facts: b.facts(m), Symbol: b.n.propertyBehind(key, field)})
 	case RoleRegion, RoleTable:
 		return atom(Factor{Key: key + "." + field, Facts: b.facts(m), Over: regionOrNil(owner)})
 	}
 	return b.part(m, b.symbol(owner))
+}
+
+// propertyBehind is the symbol of a property, or of the one that a derived
+// property rests on; nil for a property that the medium does not give.
+func (n *Note) propertyBehind(medium, field string) *Symbol {
+	if s := n.Lookup(medium + "." + field); s != nil {
+		return s
+	}
+	for _, d := range derivations(field) {
+		if s := n.Lookup(medium + "." + d.from); s != nil {
+			return s
+		}
+	}
+	return nil
 }
 
 func regionOrNil(s *Symbol) *Symbol {

@@ -30,7 +30,7 @@ type Factor struct {
 	Key     string // the name's canonical key, or the canonical text of an opaque part
 	Exp     unit.Rat
 	Facts   Facts
-	Symbol  *Symbol // the name; nil for an opaque part or a literal with a unit
+	Symbol  *Symbol // the name, or the property that a derived one rests on; nil for an opaque part or a literal with a unit
 	Part    string  // component of the name that was taken: "x", "zz"; else ""
 	Applied bool    // a tensor that was multiplied on a vector
 	Bars    bool    // it stood in |…|

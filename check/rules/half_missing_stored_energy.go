@@ -20,6 +20,7 @@ func (Book) HalfMissingStoredEnergy() check.Rule {
 			"also times a volume) with a coefficient that is off 1/2 by exactly 2, for static, instantaneous or peak values. " +
 			"A caution where the statistic is not stated in a note with rms values or a harmonic regime, or where the kind follows from the formula alone.",
 		Silent: "For a source work or work, for heat, for a power such as C·U²·f; for rms values, of which the whole square is the energy at the crest; " +
+			"for the mutual term of two currents, for a product with a coercivity (the area of a loop); " +
 			"for a charge in a potential that others make (kind electric potential) or that is moved through a voltage without being stored by it; " +
 			"for the electric and magnetic energy together (kind volumic electromagnetic energy); in a nonlinear medium, where half-product-nonlinear speaks; " +
 			"for an energy per count, where the half is written and the rest is a whole number of equal parts.",
@@ -98,6 +99,12 @@ func (c *claim) sameState(q *square) bool {
 		return true
 	}
 	a, b := q.amplitudes[0], q.amplitudes[1]
+	if a.Facts.Dim.Base() == b.Facts.Dim.Base() || a.Symbol == nil && b.Symbol == nil {
+		return false // a mutual term, which counts once; or bare numbers
+	}
+	if a.Facts.Kind.Is(kind.Coercivity) || b.Facts.Kind.Is(kind.Coercivity) {
+		return false // the area of a loop
+	}
 	if a.Facts.Kind.Is(kind.ElectricPotential) || b.Facts.Kind.Is(kind.ElectricPotential) {
 		return false
 	}

@@ -52,7 +52,7 @@ type shape struct {
 }
 
 var energyShapes = []shape{
-	{amplitudes: []role{roleElectric}, links: []role{roleCapacity}},
+	{amplitudes: []role{roleElectric}, links: []role{roleCapacity}, calls: []string{"trace"}},
 	{amplitudes: []role{roleMagnetic}, links: []role{roleInduction}},
 }
 
