@@ -13,7 +13,7 @@ import (
 
 // describe tells what a name stands for.
 func describe(note *lang.Note, sym *lang.Symbol) *card {
-	c := &card{head: heading(sym)}
+	c := &card{head: titleOf(sym)}
 	switch sym.Role {
 	case lang.RoleMedium:
 		describeMembers(c, note, sym)
@@ -28,8 +28,8 @@ func describe(note *lang.Note, sym *lang.Symbol) *card {
 	return c
 }
 
-// heading is the name as its definition begins, with its value.
-func heading(sym *lang.Symbol) string {
+// titleOf is the name as its definition begins, with its value.
+func titleOf(sym *lang.Symbol) string {
 	name := qualifiedName(sym)
 	if sym.Def != nil && len(sym.Def.Params) > 0 {
 		var params []string

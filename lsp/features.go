@@ -28,6 +28,12 @@ func features() []feature {
 		navigation(),
 		renaming(),
 		completions(),
+		signatures(),
+		folding(),
+		selection(),
+		links(),
+		semanticTokens(),
+		dependencies(),
 	}
 }
 
