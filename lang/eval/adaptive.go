@@ -28,9 +28,9 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 		return st, point
 	}
 	stuck := 0
-	for !w.settled(p, want) {
+	for !w.settled(p, want, 1) {
 		if len(w.heap) == 0 || len(w.iv) >= maxIntervals {
-			return w.giveUp(p)
+			return w.giveUp(p, want)
 		}
 		i := w.pop()
 		if e.tails && w.atEnd(i) {
@@ -50,7 +50,7 @@ func (f *Frame) adaptive(w *workspace, p *problem, a, b float64, e ends, want [2
 			return st, point
 		}
 		if stuck = w.stuck(i, stuck, before); stuck > maxStuck && p.onAbs {
-			return w.giveUp(p)
+			return w.giveUp(p, want)
 		}
 	}
 	w.resum(p)
@@ -191,10 +191,11 @@ func (w *workspace) bad(p *problem, c, h float64) (state, float64) {
 	return undefined, c + h*kronrodNodes[at]
 }
 
-// settled reports whether the sum of the errors is within the demand.
-func (w *workspace) settled(p *problem, want [2]float64) bool {
+// settled reports whether the sum of the errors is within the demand, times
+// slack.
+func (w *workspace) settled(p *problem, want [2]float64, slack float64) bool {
 	for g := range 2 {
-		if w.err[g] > max(want[g], w.demand(p, g)) {
+		if w.err[g] > slack*max(want[g], w.demand(p, g)) {
 			return false
 		}
 	}
@@ -202,7 +203,7 @@ func (w *workspace) settled(p *problem, want [2]float64) bool {
 }
 
 // demand is the accuracy demanded of a group: relative to its integral (or to
-// the integral of the magnitude), but not beyond what rounding leaves of that.
+// the integral of the magnitude), but not beyond the noise of that.
 func (w *workspace) demand(p *problem, g int) float64 {
 	size := w.size(p, g)
 	if g == 1 && p.stretch != 0 {
@@ -211,7 +212,7 @@ func (w *workspace) demand(p *problem, g int) float64 {
 	if w.share != 0 {
 		size *= w.share
 	}
-	return max(p.rel[g]*size, roundoff*w.abs[g])
+	return max(p.rel[g]*size, p.floor*w.abs[g])
 }
 
 // size is what the accuracy of a group is relative to.
@@ -229,7 +230,7 @@ func (w *workspace) size(p *problem, g int) (size float64) {
 
 // giveUp tells how an integral failed: by a piece that cannot be halved any
 // more, which is where the integrand is singular, or by sheer number.
-func (w *workspace) giveUp(p *problem) (state, float64) {
+func (w *workspace) giveUp(p *problem, want [2]float64) (state, float64) {
 	worst, at := 0.0, -1
 	for i := range w.iv {
 		if k := w.urgency(p, i); w.iv[i].depth >= 40 && k > worst {
@@ -237,7 +238,10 @@ func (w *workspace) giveUp(p *problem) (state, float64) {
 		}
 	}
 	w.resum(p)
-	if at < 0 {
+	switch {
+	case w.settled(p, want, reserve): // the promise is kept without the reserve
+		return converged, 0
+	case at < 0:
 		return unsettled, 0
 	}
 	v := w.iv[at]

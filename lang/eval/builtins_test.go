@@ -97,6 +97,9 @@ func TestSlopesOfUnaryBuiltins(t *testing.T) {
 	checkSlopes(t, "abs", must(t)(Abs(0, e.sub(slot(0), Num(2)))), 1)
 	checkSlopes(t, "ellipD", hidden(0, "ellipD", slot(0)), 0.3)
 	checkSlopes(t, "ellipD", hidden(0, "ellipD", slot(0)), -3)
+	if d := ellipDSlope(1e-5, ellipD(1e-5)) - (ellipD(2e-5)-ellipD(0))/2e-5; math.Abs(d) > 1e-9 {
+		t.Errorf("slope of D near zero is off by %g", d)
+	}
 }
 
 // checkSlopes compares the derivatives of code of slot 0 at x.

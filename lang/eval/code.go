@@ -23,8 +23,9 @@ type info struct {
 	cost   int64 // closures run by one evaluation, loops and calls counted once
 	konst  bool  // a constant, its value in value
 	value  Value
-	slot   int // the slot that it reads, if it is nothing but a slot; else -1
-	null   bool
+	slot   int  // the slot that it reads, if it is nothing but a slot; else -1
+	null   bool // known to be zero
+	nested bool // holds integrals: it is known no better than they are
 	breaks []breaks
 	diff   func(*differ) (Code, error)
 }
@@ -141,6 +142,7 @@ func over(args ...Code) *info {
 		n.reads = n.reads.with(a.info.reads)
 		n.cost = min(n.cost+a.cost, 1<<40)
 		n.breaks = joinBreaks(n.breaks, a.breaks)
+		n.nested = n.nested || a.nested
 	}
 	return n
 }

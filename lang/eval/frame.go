@@ -8,7 +8,7 @@ import (
 
 // Budget limits an evaluation. A zero field takes the default.
 type Budget struct {
-	Steps  int64         // operations, counted wherever there is a loop or a call; default 2e8
+	Steps  int64         // operations, counted wherever there is a loop or a call; default 5e8, about a second
 	Memory int64         // bytes of lists built, freed ones included; default 256 MiB
 	Time   time.Duration // default 2 s
 }
@@ -51,7 +51,7 @@ func NewFrame(ctx context.Context, n int, b Budget) *Frame {
 // Restart clears the fault and starts a new budget; slots stay.
 func (f *Frame) Restart(b Budget) {
 	if b.Steps <= 0 {
-		b.Steps = 2e8
+		b.Steps = 5e8
 	}
 	if b.Memory <= 0 {
 		b.Memory = 256 << 20

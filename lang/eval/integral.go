@@ -6,10 +6,13 @@ import (
 	"slices"
 )
 
-// accuracy of the outermost integral, relative to its value; the integrals
-// inside one another are taken 10 and 100 times as accurately, relative to the
-// integral of the magnitude, so that the outer ones see a smooth integrand.
-var accuracy = [3]float64{1e-9, 1e-10, 1e-11}
+// accuracy demanded of the outermost integral, relative to its value, and of the
+// integrals inside one another, relative to the integral of the magnitude, so
+// that the outer ones see a smooth integrand. The first is better than what is
+// promised, 1e-9, by a reserve, since an estimate is not a bound.
+var accuracy = [3]float64{1e-9 / reserve, 1e-10, 1e-11}
+
+const reserve = 5
 
 // Integral is the integral of body over the slot, from one bound to the other;
 // bounds may be infinite. It is accurate to 1e-9 of its value (to 1e-13 of the
@@ -69,6 +72,7 @@ func (g *integral) code() Code {
 	c.info = over(g.from, g.to)
 	c.info.reads = c.info.reads.with(g.body.info.reads.without(g.slot))
 	c.info.breaks = joinBreaks(c.info.breaks, withoutSlot(g.body.breaks, g.slot))
+	c.info.nested = true
 	c.slots = max(c.slots, g.slot+1)
 	return c.derive(g.derive)
 }
@@ -76,8 +80,12 @@ func (g *integral) code() Code {
 func (g *integral) problem(depth int, s sampler, m, primal int) problem {
 	depth = min(depth, 2)
 	rel := accuracy[depth]
-	return problem{node: g.node, m: m, primal: primal, body: s, cost: g.body.cost + 1,
-		rel: [2]float64{rel, rel}, onAbs: depth > 0}
+	p := problem{node: g.node, m: m, primal: primal, body: s, cost: g.body.cost + 1,
+		rel: [2]float64{rel, rel}, onAbs: depth > 0, floor: roundoff}
+	if g.body.nested {
+		p.floor = 0.2 * accuracy[min(depth+1, 2)]
+	}
+	return p
 }
 
 // fast integrates a real body without tangents and without allocation.

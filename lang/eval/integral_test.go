@@ -80,6 +80,22 @@ func TestIntegralsOfKnownValue(t *testing.T) {
 	}
 }
 
+// An integral that converges too slowly to be summed up is not called divergent.
+func TestSlowIsNotDivergent(t *testing.T) {
+	for _, power := range []float64{-0.99, -0.999, -0.9995} {
+		for _, from := range []float64{0, 1} {
+			g := must(t)(Integral(0, 0, Num(from), Num(from+1), fnCode(func(x float64) float64 { return math.Pow(x-from, power) })))
+			v, fault := NewFrame(context.Background(), 1, Budget{}).Run(0, g)
+			switch {
+			case fault == nil:
+				near(t, "integral", v.Re(), 1/(1+power), 1e-7)
+			case fault.Rule == RuleDiverges:
+				t.Errorf("x^%g at %g: %+v", power, from, *fault)
+			}
+		}
+	}
+}
+
 func TestIntegralsWithoutValue(t *testing.T) {
 	cases := []struct {
 		name string

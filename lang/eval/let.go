@@ -46,6 +46,7 @@ func letInfo(slots []int, args []Code, body Code) *info {
 	n := over(args...)
 	n.reads = n.reads.with(body.info.reads.without(slots...))
 	n.cost++
+	n.nested = n.nested || body.nested
 	n.breaks = joinBreaks(n.breaks, letBreaks(slots, args, body))
 	return n
 }

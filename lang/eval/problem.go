@@ -9,6 +9,7 @@ type problem struct {
 	cost   int64
 	rel    [2]float64 // relative accuracy of the value and of the tangent
 	onAbs  bool       // relative to ∫|f|: for the inner of nested integrals
+	floor  float64    // accuracy beyond which the integrand is noise, relative to ∫|f|
 	// stretch is the rate at which the range grows along the tangents: times
 	// the integral it is the size that the tangent cancels from.
 	stretch float64

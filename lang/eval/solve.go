@@ -31,6 +31,7 @@ func Solve(node, slot int, left, right, from, to Code) (Code, error) {
 	}
 	c.info = over(from, to)
 	c.info.reads = c.info.reads.with(g.info.reads.without(slot))
+	c.info.nested = g.nested
 	c.slots = max(c.slots, slot+1)
 	return c.derive(func(d *differ) (Code, error) { return s.derive(d, c) }), nil
 }

@@ -21,6 +21,7 @@ func Sum(node, slot int, from, to, body Code) (Code, error) {
 	c.info = over(from, to)
 	c.info.reads = c.info.reads.with(body.info.reads.without(slot))
 	c.info.breaks = joinBreaks(c.info.breaks, withoutSlot(body.breaks, slot))
+	c.info.nested = body.nested
 	c.slots = max(c.slots, slot+1)
 	return c.derive(s.derive), nil
 }

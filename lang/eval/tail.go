@@ -93,8 +93,8 @@ func (f *Frame) tail(p *problem, t tail, scale [2]float64) (*tailState, state) {
 	if !f.ok {
 		return s, stopped
 	}
-	n := t.pieces()
-	for k := range n {
+	var last limits
+	for k := range t.pieces() {
 		a, b := t.piece(k)
 		want := s.goal(p, scale, 0.02)
 		st, x := f.adaptive(w, p, a, b, ends{checkLeft: true, checkRight: true, share: 0.01}, want)
@@ -113,9 +113,13 @@ func (f *Frame) tail(p *problem, t tail, scale [2]float64) (*tailState, state) {
 		if !t.outward {
 			d /= 2
 		}
-		if s.negligible(p, k, scale, known, d) || s.extrapolated(p, k, scale, known, d) {
+		last = s.observe(p, k, known, d)
+		if s.negligible(p, k, scale, known, d) || s.extrapolated(p, last, scale, 0.1) {
 			return s, converged
 		}
+	}
+	if s.extrapolated(p, last, scale, 0.5*reserve) {
+		return s, converged
 	}
 	return s, s.verdict(p, unsettled, known)
 }
@@ -192,30 +196,41 @@ func (s *tailState) negligible(p *problem, k int, scale [2]float64, known bool, 
 // zeroPieces is after how many vanishing pieces a tail is taken for zero.
 const zeroPieces = 60
 
-// extrapolated reports whether the epsilon algorithm has settled on a limit,
-// for pieces that shrink, and puts the limit into sum.
-func (s *tailState) extrapolated(p *problem, k int, scale [2]float64, known bool, d float64) bool {
-	if k < 5 {
-		return false
-	}
-	var change, hidden [2]float64
+// limits are the state of the extrapolation after piece k.
+type limits struct {
+	k      int
+	known  bool
+	hidden [2]float64 // what the end's own value leaves room for
+}
+
+// observe takes over the new estimates; d is the distance still to go.
+func (s *tailState) observe(p *problem, k int, known bool, d float64) limits {
+	l := limits{k: k, known: known}
+	var change [2]float64
 	for c := range s.sum {
 		g := p.group(c)
 		lim, diff := s.eps[c].limit()
 		change[g] = max(change[g], diff)
-		if known { // what the end's own value leaves room for
-			hidden[g] = max(hidden[g], math.Abs(lim-s.sum[c]-s.end[c]*d))
+		if known {
+			l.hidden[g] = max(l.hidden[g], math.Abs(lim-s.sum[c]-s.end[c]*d))
 		}
 	}
-	want := s.goal(p, scale, 0.1)
-	good := true
-	for g := range p.groups() {
-		l := &s.last[g]
-		l[0], l[1], l[2] = l[1], l[2], change[g]
-		good = good && s.shrinking(g, k, want[g]) && max(l[0], l[1], l[2], hidden[g]) <= want[g]
+	for g := range 2 {
+		s.last[g] = [3]float64{s.last[g][1], s.last[g][2], change[g]}
 	}
-	if !good {
-		return false
+	return l
+}
+
+// extrapolated reports whether the epsilon algorithm has settled on a limit, to
+// a share of the accuracy demanded, for pieces that shrink; it puts the limit
+// into sum.
+func (s *tailState) extrapolated(p *problem, l limits, scale [2]float64, share float64) bool {
+	want := s.goal(p, scale, share)
+	for g := range p.groups() {
+		c := s.last[g]
+		if l.k < 5 || !s.shrinking(g, l.k, want[g]) || !(max(c[0], c[1], c[2], l.hidden[g]) <= want[g]) {
+			return false
+		}
 	}
 	for c := range s.sum {
 		s.sum[c], _ = s.eps[c].limit()

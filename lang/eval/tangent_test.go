@@ -157,6 +157,38 @@ func TestRegionIntegralKeepsOtherSlots(t *testing.T) {
 	}
 }
 
+// A function may be called in its own argument: f(x, f(y, z)), f(x, y) = x - 2y.
+func TestCallInItsOwnArgument(t *testing.T) {
+	e := expr{t}
+	for n := 2; n <= 4; n++ {
+		slots, body := []int{10, 11, 12, 13}[:n], e.sub(slot(10), e.mul(Num(2), slot(11)))
+		f := func(x, y Code) Code {
+			args := []Code{x, y, Num(7), Num(8)}[:n]
+			return Let(0, slots, args, body)
+		}
+		c := f(slot(0), f(slot(1), slot(2)))
+		near(t, "f(x, f(y, z))", run(t, c, append([]Value{Real(1), Real(2), Real(5)}, make([]Value, 11)...)...).Re(), 1-2*(2-2*5), 0)
+	}
+}
+
+func TestIntegralRestoresItsSlot(t *testing.T) {
+	e := expr{t}
+	f := NewFrame(context.Background(), 1, Budget{})
+	for _, c := range []Code{
+		must(t)(Integral(0, 0, Num(0), Num(1), e.pow(slot(0), 2))),
+		must(t)(Sum(0, 0, Num(0), Num(9), e.pow(slot(0), 2))),
+		must(t)(Solve(0, 0, e.pow(slot(0), 3), Num(1), Num(0), Num(3))),
+		turn(0, 0, e.pow(e.call("sin", slot(0)), 2)),
+	} {
+		for _, do := range []func(int, Code) (Value, *Fault){f.Run, f.RunDual} {
+			f.Set(0, Real(42))
+			if _, fault := do(0, c); fault != nil || f.Get(0).Re() != 42 {
+				t.Errorf("slot 0 holds %g; %+v", f.Get(0).Re(), fault)
+			}
+		}
+	}
+}
+
 func TestDerivativesOfFields(t *testing.T) {
 	e := expr{t}
 	// V = q/(4πε r) along x: E = -dV/dx, then dE/dx, by nested derivatives.
