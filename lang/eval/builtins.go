@@ -57,7 +57,7 @@ type builtin struct {
 // Builtins lists the functions of the language in order of name.
 func Builtins() []Signature {
 	var out []Signature
-	for _, b := range builtins() {
+	for _, b := range all {
 		out = append(out, b.Signature)
 	}
 	slices.SortFunc(out, func(a, b Signature) int { return strings.Compare(a.Name, b.Name) })
@@ -67,7 +67,7 @@ func Builtins() []Signature {
 // Builtin builds a call of the function called name. The error is a
 // *ShapeError: an unknown name, a wrong count or a wrong shape of arguments.
 func Builtin(name string, node int, args []Code) (Code, error) {
-	b, ok := lookup(name)
+	b, ok := all[name]
 	if !ok {
 		return Code{}, refuse("", "there is no function `%s`", name)
 	}
@@ -89,34 +89,18 @@ func plural(n int, word string) string {
 	return number(float64(n)) + " " + word + "s"
 }
 
-func lookup(name string) (builtin, bool) {
-	switch {
-	case unaries[name].re != nil:
-		u := unaries[name]
-		return builtin{u.signature(name), makeUnary}, true
-	}
-	b, ok := others[name]
-	return b, ok
-}
-
-func builtins() []builtin {
-	var out []builtin
-	for name := range unaries {
-		b, _ := lookup(name)
-		out = append(out, b)
-	}
-	for _, b := range others {
-		out = append(out, b)
-	}
-	return out
-}
-
-// others are the functions that are not of one number; read only.
-var others map[string]builtin
+// all holds the functions by name; read only.
+var all map[string]builtin
 
 func init() {
-	others = map[string]builtin{}
+	unaries, all = map[string]*unary{}, map[string]builtin{}
+	for _, m := range []map[string]unary{powerFunctions(), circular(), special()} {
+		for name, u := range m {
+			unaries[name] = u.named(name)
+			all[name] = builtin{unaries[name].signature(), makeUnary}
+		}
+	}
 	for _, b := range slices.Concat(binaryBuiltins(), reductions(), partBuiltins(), tensorBuiltins()) {
-		others[b.Name] = b
+		all[b.Name] = b
 	}
 }

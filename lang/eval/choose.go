@@ -48,7 +48,7 @@ func Choose(node int, x Code, pieces []Piece) (Code, error) {
 		}
 	}
 	c = build(c, args...)
-	if x.slot >= 0 && !c.konst {
+	if x.slot >= 0 && c.konst == nil {
 		c.info.breaks = joinBreaks(pieceBreaks(x.slot, pieces), c.info.breaks)
 	}
 	return c.derive(func(d *differ) (Code, error) { return d.pieces(node, x, pieces) }), nil

@@ -20,12 +20,11 @@ type Code struct {
 // changed once built.
 type info struct {
 	reads  reads
-	cost   int64 // closures run by one evaluation, loops and calls counted once
-	konst  bool  // a constant, its value in value
-	value  Value
-	slot   int  // the slot that it reads, if it is nothing but a slot; else -1
-	null   bool // known to be zero
-	nested bool // holds integrals: it is known no better than they are
+	cost   int64  // closures run by one evaluation, loops and calls counted once
+	konst  *Value // the value of a constant, else nil
+	slot   int    // the slot that it reads, if it is nothing but a slot; else -1
+	null   bool   // known to be zero
+	nested bool   // holds integrals: it is known no better than they are
 	breaks []breaks
 	diff   func(*differ) (Code, error)
 }
@@ -81,18 +80,26 @@ func (r reads) without(slots ...int) reads {
 func (c Code) Reads(slot int) bool { return c.info.reads.has(slot) }
 
 // Constant is the value of code that reads nothing, and whether it is that.
-func (c Code) Constant() (Value, bool) { return c.value, c.konst }
+func (c Code) Constant() (Value, bool) {
+	if c.konst == nil {
+		return Value{}, false
+	}
+	return *c.konst, true
+}
 
 // number is the constant real number that the code is.
 func (c Code) number() (float64, bool) {
-	return real(c.value.x), c.konst && c.Type.IsReal()
+	if c.konst == nil || !c.Type.IsReal() {
+		return 0, false
+	}
+	return real(c.konst.x), true
 }
 
 // Const is a constant; its tangent is dropped.
 func Const(v Value) Code {
 	v = v.Primal()
 	c := Code{Type: v.typ, Any: func(*Frame) Value { return v }}
-	c.info = &info{cost: 1, konst: true, value: v, slot: -1}
+	c.info = &info{cost: 1, konst: &v, slot: -1}
 	switch v.typ {
 	case Type{}:
 		x := real(v.x)
@@ -101,8 +108,6 @@ func Const(v Value) Code {
 		w := v.vec3()
 		c.vec = func(*Frame) vec3 { return w }
 	}
-	t := v.typ
-	c.diff = func(*differ) (Code, error) { return nullOf(t), nil }
 	return c
 }
 
@@ -119,12 +124,7 @@ func Slot(i int, t Type) Code {
 	case Type{Shape: Vector}:
 		c.vec = func(f *Frame) vec3 { return f.slots[i].vec3() }
 	}
-	c.diff = func(d *differ) (Code, error) {
-		if d.slot == i {
-			return unit(t)
-		}
-		return nullOf(t), nil
-	}
+	c.diff = func(d *differ) (Code, error) { return unit(t) } // of calls it for slot i only
 	return c
 }
 
@@ -187,7 +187,7 @@ func (v vec3) value() Value { return Vec(v.x, v.y, v.z) }
 
 func fold(c Code, args []Code) (Code, bool) {
 	for _, a := range args {
-		if !a.konst {
+		if a.konst == nil {
 			return Code{}, false
 		}
 	}

@@ -16,7 +16,7 @@ type differ struct {
 
 // derive attaches the derivative, unless the code was folded to a constant.
 func (c Code) derive(fn func(*differ) (Code, error)) Code {
-	if c.diff == nil {
+	if c.konst == nil {
 		c.diff = fn
 	}
 	return c
@@ -67,8 +67,7 @@ func nullOf(t Type) Code {
 	case Type{Shape: Vector}:
 		c.vec = func(*Frame) vec3 { return vec3{} }
 	}
-	c.info = &info{cost: 1, konst: true, value: v, slot: -1, null: true}
-	c.diff = func(*differ) (Code, error) { return nullOf(t), nil }
+	c.info = &info{cost: 1, konst: &v, slot: -1, null: true}
 	return c
 }
 

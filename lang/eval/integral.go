@@ -66,7 +66,7 @@ func (g *integral) code() Code {
 		c.Real = g.fast
 	}
 	c = build(c, g.from, g.to, g.body)
-	if c.konst {
+	if c.konst != nil {
 		return c
 	}
 	c.info = over(g.from, g.to)

@@ -102,7 +102,7 @@ func firstFree(r Region, at Coordinates, body Code) int {
 // guard restores slots that code uses for itself: they are beyond those of the
 // code, but other code of the frame may keep values there.
 func guard(c Code, own []int) Code {
-	if c.konst || len(own) == 0 {
+	if c.konst != nil || len(own) == 0 {
 		return c
 	}
 	fast, general, inner := c.Real, c.Any, c.info

@@ -26,7 +26,7 @@ func Solve(node, slot int, left, right, from, to Code) (Code, error) {
 	}
 	c := Code{Real: s.root, Any: s.any}
 	c = build(c, g, from, to)
-	if c.konst {
+	if c.konst != nil {
 		return c, nil
 	}
 	c.info = over(from, to)
@@ -252,69 +252,4 @@ func (h *hunt) both(x, y float64) {
 	if z, ok := h.bracket(x, h.x[2], y, h.y[2]); ok {
 		h.found(z)
 	}
-}
-
-// bracket refines a change of sign by Brent's method (R. P. Brent, Algorithms
-// for Minimization without Derivatives, 1973, ch. 4). A pole changes sign too,
-// but there the difference grows: it is no root.
-func (h *hunt) bracket(a, b, fa, fb float64) (float64, bool) {
-	edge := max(math.Abs(fa), math.Abs(fb))
-	c, fc, d := a, fa, b-a
-	e := d
-	for range 200 {
-		if (fb > 0) == (fc > 0) {
-			c, fc = a, fa
-			d = b - a
-			e = d
-		}
-		if math.Abs(fc) < math.Abs(fb) {
-			a, b, c = b, c, b
-			fa, fb, fc = fb, fc, fb
-		}
-		tol, m := 2*epsilon*math.Abs(b), (c-b)/2
-		if math.Abs(m) <= tol || fb == 0 {
-			break
-		}
-		d, e = brentStep(a, b, c, fa, fb, fc, d, e, tol, m)
-		a, fa = b, fb
-		if math.Abs(d) > tol {
-			b += d
-		} else {
-			b += math.Copysign(tol, m)
-		}
-		if fb = h.at(b); math.IsNaN(fb) {
-			return 0, false
-		}
-	}
-	return b, math.Abs(fb) <= edge
-}
-
-// brentStep chooses between interpolation and bisection.
-func brentStep(a, b, c, fa, fb, fc, d, e, tol, m float64) (float64, float64) {
-	if math.Abs(e) < tol || math.Abs(fa) <= math.Abs(fb) {
-		return m, m
-	}
-	s := fb / fa
-	p, q := 2*m*s, 1-s
-	if a != c {
-		q, r := fa/fc, fb/fc
-		p = s * (2*m*q*(q-r) - (b-a)*(r-1))
-		q = (q - 1) * (r - 1) * (s - 1)
-		return accept(p, q, d, e, tol, m)
-	}
-	return accept(p, q, d, e, tol, m)
-}
-
-// accept takes the interpolated step p/q if it stays inside and shrinks fast
-// enough.
-func accept(p, q, d, e, tol, m float64) (float64, float64) {
-	if p > 0 {
-		q = -q
-	} else {
-		p = -p
-	}
-	if 2*p < min(3*m*q-math.Abs(tol*q), math.Abs(e*q)) {
-		return p / q, d
-	}
-	return m, m
 }

@@ -15,7 +15,7 @@ func special() map[string]unary {
 		"ellipK": {re: ellipK, slope: func(m, _ float64) float64 { return ellipKSlope(m) }, outside: modulus,
 			diff: ellipKDiff, doc: "complete elliptic integral of the first kind K, of the parameter m = k²"},
 		"ellipE": {re: ellipE, slope: func(m, _ float64) float64 { return -0.5 * ellipD(m) }, outside: beyondUnit,
-			diff: func(n int, x, _ Code) (Code, error) { return product(n, Num(-0.5), hidden(n, "ellipD", x)), nil },
+			diff: func(n int, x, _ Code) (Code, error) { return product(n, Num(-0.5), hidden(n, x)), nil },
 			doc:  "complete elliptic integral of the second kind E, of the parameter m = k²"},
 		"awg": {re: wireGauge, slope: func(_, y float64) float64 { return -math.Log(92) / 39 * y },
 			diff:  func(n int, _, y Code) (Code, error) { return product(n, Num(-math.Log(92)/39), y), nil },
@@ -77,7 +77,7 @@ func ellipD(m float64) float64 {
 func ellipKSlope(m float64) float64 { return (ellipK(m) - ellipD(m)) / (2 * (1 - m)) }
 
 func ellipKDiff(n int, x, y Code) (Code, error) {
-	num, err := Sub(n, y, hidden(n, "ellipD", x))
+	num, err := Sub(n, y, hidden(n, x))
 	if err != nil {
 		return Code{}, err
 	}
@@ -88,26 +88,19 @@ func ellipKDiff(n int, x, y Code) (Code, error) {
 	return Div(n, num, den)
 }
 
-// hidden functions occur in derivatives only.
-func hidden(n int, name string, a Code) Code {
-	u := unary{re: ellipD, outside: modulus, slope: ellipDSlope, diff: ellipDDiff}
-	k := u.kernel(name)
-	c := Code{Type: a.Type, Any: func(f *Frame) Value { return k.each(f, n, a.Any(f)) }}
-	if a.Real != nil {
-		c.Real = u.fast(name, n, a.Real)
+// hidden is ellipD, which occurs in derivatives only.
+func hidden(n int, a Code) Code {
+	c, err := dFunction.call(n, a)
+	if err != nil {
+		return nullOf(a.Type) // complex: refused before, by ellipK or ellipE
 	}
-	return build(c, a).derive(func(d *differ) (Code, error) {
-		return d.linear(a, func(x Code) (Code, error) {
-			if x.null {
-				return nullOf(a.Type), nil
-			}
-			s, err := u.diff(n, a, c)
-			if err != nil {
-				return Code{}, err
-			}
-			return Mul(n, s, x)
-		})
-	})
+	return c
+}
+
+var dFunction *unary
+
+func init() {
+	dFunction = unary{re: ellipD, outside: modulus, slope: ellipDSlope, diff: ellipDDiff}.named("ellipD")
 }
 
 // ellipDSlope is dD/dm = ((K - D)/(1 - m) - D)/(2m), with its limit 3π/32 and
@@ -125,7 +118,7 @@ func ellipDDiff(n int, x, y Code) (Code, error) {
 	if err != nil {
 		return Code{}, err
 	}
-	num, err := Sub(n, product(n, Num(2), k), hidden(n, "ellipD", x))
+	num, err := Sub(n, product(n, Num(2), k), hidden(n, x))
 	if err != nil {
 		return Code{}, err
 	}

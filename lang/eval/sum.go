@@ -15,7 +15,7 @@ func Sum(node, slot int, from, to, body Code) (Code, error) {
 		c.Real = s.fast
 	}
 	c = build(c, from, to, body)
-	if c.konst {
+	if c.konst != nil {
 		return c, nil
 	}
 	c.info = over(from, to)

@@ -69,7 +69,7 @@ func (t *Table) reading(node, y, x int, at Code, order int) Code {
 	where := at.Real
 	c.Real = func(f *Frame) float64 { return r.fast(f, where(f)) }
 	c = build(c, args...)
-	if at.slot >= 0 && !c.konst {
+	if at.slot >= 0 && c.konst == nil {
 		c.info.breaks = joinBreaks(c.info.breaks, t.knots(x, at.slot))
 	}
 	return c.derive(func(d *differ) (Code, error) {

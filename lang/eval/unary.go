@@ -19,9 +19,12 @@ type unary struct {
 	takes Takes
 	gives Gives
 	doc   string
+
+	name string
+	kern kernel1
 }
 
-func (u unary) signature(name string) Signature {
+func (u *unary) signature() Signature {
 	t, g := u.takes, u.gives
 	if t == 0 {
 		t = TakesNumber
@@ -29,28 +32,31 @@ func (u unary) signature(name string) Signature {
 	if g == 0 {
 		g = GivesNumber
 	}
-	return Signature{Name: name, Min: 1, Max: 1, Params: []string{"x"}, Takes: []Takes{t}, Gives: g, Doc: u.doc}
+	return Signature{Name: u.name, Min: 1, Max: 1, Params: []string{"x"}, Takes: []Takes{t}, Gives: g, Doc: u.doc}
 }
 
 // makeUnary builds the call of a function of one number, element by element on
 // a list.
 func makeUnary(name string, node int, args []Code) (Code, error) {
-	u, a := unaries[name], args[0]
-	if a.Type.Shape == Vector || a.Type.Shape == Tensor {
-		return Code{}, refuse("", "%s takes a number or a list, not %s", name, a.Type)
-	}
-	if a.Type.Complex && u.cx == nil {
-		return Code{}, refuse("take `Re`, `Im` or `|…|` of it first", "%s takes real numbers, not %s", name, a.Type)
-	}
-	k := u.kernel(name)
-	c := Code{Type: a.Type, Any: func(f *Frame) Value { return k.each(f, node, a.Any(f)) }}
-	if a.Real != nil {
-		c.Real = u.fast(name, node, a.Real)
-	}
-	return build(c, a).derive(func(d *differ) (Code, error) { return d.unary(u, name, node, a) }), nil
+	return unaries[name].call(node, args[0])
 }
 
-func (u unary) fast(name string, node int, r func(*Frame) float64) func(*Frame) float64 {
+func (u *unary) call(node int, a Code) (Code, error) {
+	if a.Type.Shape == Vector || a.Type.Shape == Tensor {
+		return Code{}, refuse("", "%s takes a number or a list, not %s", u.name, a.Type)
+	}
+	if a.Type.Complex && u.cx == nil {
+		return Code{}, refuse("take `Re`, `Im` or `|…|` of it first", "%s takes real numbers, not %s", u.name, a.Type)
+	}
+	x := a.Any
+	c := Code{Type: a.Type, Any: func(f *Frame) Value { return u.kern.each(f, node, x(f)) }}
+	if a.Real != nil {
+		c.Real = u.fast(node, a.Real)
+	}
+	return build(c, a).derive(func(d *differ) (Code, error) { return d.unary(u, node, a) }), nil
+}
+
+func (u *unary) fast(node int, r func(*Frame) float64) func(*Frame) float64 {
 	re, outside := u.re, u.outside
 	if outside == nil {
 		return func(f *Frame) float64 { return re(r(f)) }
@@ -58,7 +64,7 @@ func (u unary) fast(name string, node int, r func(*Frame) float64) func(*Frame) 
 	return func(f *Frame) float64 {
 		x := r(f)
 		if why := outside(x); why != "" {
-			f.outside(node, name, x, why)
+			f.outside(node, u.name, x, why)
 			return 0
 		}
 		return re(x)
@@ -74,12 +80,12 @@ func (f *Frame) outside(node int, name string, x float64, why string) {
 	f.complexResult(node, call)
 }
 
-func (u unary) kernel(name string) kernel1 {
+func (u *unary) kernel() kernel1 {
 	return kernel1{
 		re: func(f *Frame, node int, a, da float64) (float64, float64) {
 			if u.outside != nil {
 				if why := u.outside(a); why != "" {
-					f.outside(node, name, a, why)
+					f.outside(node, u.name, a, why)
 					return 0, 0
 				}
 			}
@@ -92,7 +98,7 @@ func (u unary) kernel(name string) kernel1 {
 		cx: func(f *Frame, node int, a, da complex128) (complex128, complex128) {
 			w := u.cx(a)
 			if !finite(w) && finite(a) {
-				f.fail(node, RuleDivision, name+" is infinite at this argument", "keep the argument away from this value")
+				f.fail(node, RuleDivision, u.name+" is infinite at this argument", "keep the argument away from this value")
 				return 0, 0
 			}
 			if da == 0 {
@@ -104,12 +110,12 @@ func (u unary) kernel(name string) kernel1 {
 }
 
 // unary is the chain rule f'(a)·a'.
-func (d *differ) unary(u unary, name string, node int, a Code) (Code, error) {
+func (d *differ) unary(u *unary, node int, a Code) (Code, error) {
 	return d.linear(a, func(x Code) (Code, error) {
 		if x.null {
 			return nullOf(a.Type), nil
 		}
-		y, err := Builtin(name, node, []Code{a})
+		y, err := u.call(node, a)
 		if err != nil {
 			return Code{}, err
 		}
@@ -144,15 +150,13 @@ func logDomain(x float64) string {
 
 // The complex forms are the principal values of math/cmplx. Derivatives are
 // those of DLMF 4.7, 4.20, 4.24, 4.34 (dlmf.nist.gov).
-var unaries map[string]unary
+var unaries map[string]*unary
 
-func init() {
-	unaries = map[string]unary{}
-	for _, m := range []map[string]unary{powerFunctions(), circular(), special()} {
-		for name, u := range m {
-			unaries[name] = u
-		}
-	}
+// named completes a function with its name and its kernel.
+func (u unary) named(name string) *unary {
+	u.name = name
+	u.kern = u.kernel()
+	return &u
 }
 
 func powerFunctions() map[string]unary {
