@@ -68,6 +68,9 @@ func bessel(f *Frame, node int, name string, n, x float64) float64 {
 		f.fail(node, RuleShape, name+" takes a whole number as its order, not "+number(n), "")
 		return 0
 	}
+	if !f.spend(node, int64(math.Abs(n))/4) { // the recurrence runs over the orders
+		return 0
+	}
 	if name == "besselJ" {
 		return math.Jn(int(n), x)
 	}

@@ -191,7 +191,7 @@ func fold(c Code, args []Code) (Code, bool) {
 			return Code{}, false
 		}
 	}
-	f := &Frame{ok: true, memory: 1 << 20, chunk: 1 << 20}
+	f := &Frame{ok: true, budget: Budget{Memory: 1 << 24}, chunk: 1 << 20}
 	v := c.Any(f)
 	if !f.ok || !v.Finite() {
 		return Code{}, false

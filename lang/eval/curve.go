@@ -20,6 +20,14 @@ func (a jet) over(b jet) jet {
 	return jet{q, (a.d - along(q, b.d)) / b.v}
 }
 
+// within moves a value that misses the ends of ascending or descending cells by
+// rounding onto them.
+func (a jet) within(cells []jet) jet {
+	p, q := cells[0].v, cells[len(cells)-1].v
+	a.v = max(min(p, q), min(a.v, max(p, q)))
+	return a
+}
+
 // curve is an interpolant of points with x ascending: straight, or the monotone
 // piecewise cubic of F. N. Fritsch and J. Butland, SIAM J. Sci. Stat. Comput. 5
 // (1984) 300, with the one-sided three-point slopes of SLATEC's PCHIC at the
@@ -200,6 +208,7 @@ func (c *curve) inverse(y jet) (jet, bool) {
 	if y.v < min(c.y[0].v, c.y[n-1].v)-slack || y.v > max(c.y[0].v, c.y[n-1].v)+slack {
 		return jet{}, false
 	}
+	y = y.within(c.y)
 	i := sort.Search(n, func(i int) bool { return c.y[i].v > y.v == up && c.y[i].v != y.v }) - 1
 	i = max(0, min(i, n-2))
 	x := c.invert(i, y.v)

@@ -9,7 +9,7 @@ import (
 // Budget limits an evaluation. A zero field takes the default.
 type Budget struct {
 	Steps  int64         // operations, counted wherever there is a loop or a call; default 5e8, about a second
-	Memory int64         // bytes of lists built, freed ones included; default 256 MiB
+	Memory int64         // bytes of the largest list; default 256 MiB
 	Time   time.Duration // default 2 s
 }
 
@@ -24,7 +24,6 @@ type Frame struct {
 	budget   Budget
 	chunk    int64 // steps until the next look at the clock
 	steps    int64 // steps left after the chunk
-	memory   int64 // bytes left
 
 	fault    Fault
 	forgiven Fault // the last fault that an integrand had at a single point
@@ -59,7 +58,7 @@ func (f *Frame) Restart(b Budget) {
 	if b.Time <= 0 {
 		b.Time = 2 * time.Second
 	}
-	f.budget, f.steps, f.memory = b, b.Steps, b.Memory
+	f.budget, f.steps = b, b.Steps
 	f.chunk, f.deadline = 0, time.Now().Add(b.Time)
 	f.fault, f.ok = Fault{}, true
 }
@@ -161,11 +160,11 @@ func (f *Frame) refill(node int) bool {
 	return true
 }
 
-// reserve takes n list cells from the memory budget.
+// reserve allows for a list of n cells: its size against the memory budget, its
+// making against the steps. Lists are garbage soon after, so sizes do not add up.
 func (f *Frame) reserve(node, n int) bool {
-	f.memory -= int64(n) * 16
-	if f.memory < 0 {
-		f.fail(node, RuleBudget, "the lists of this evaluation take too much memory", "shorten the lists")
+	if int64(n)*16 > f.budget.Memory {
+		f.fail(node, RuleBudget, "a list of this evaluation takes too much memory", "shorten the list")
 	}
-	return f.ok
+	return f.spend(node, int64(n))
 }

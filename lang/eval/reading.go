@@ -93,7 +93,7 @@ func (r *reading) read(f *Frame, at jet) jet {
 		if r.x == r.y {
 			return [4]jet{at, {v: 1}, {}, {}}[r.order]
 		}
-		return p.direct.at(at, r.order)
+		return p.direct.at(at.within(p.direct.x), r.order)
 	}
 	if !p.byAxis.monotone {
 		r.unreadable(f, "this column does not rise or fall all the way")

@@ -6,6 +6,7 @@ import (
 	"testing"
 
 	"gonum.org/v1/gonum/interp"
+	"pgregory.net/rapid"
 )
 
 // A magnetization curve, invented: field strength in A/m, flux density in T.
@@ -229,4 +230,36 @@ func TestLoopArea(t *testing.T) {
 	}
 	l := lists([]float64{0, 4, 0}, []float64{0, 0, 3})
 	near(t, "triangle", run(t, must(t)(Loop(0, l[0], l[1]))).Re(), 6, 1e-15)
+}
+
+// On monotone data the cubic stays between neighbouring cells, rises all the
+// way (but for rounding), and is inverted by reading it backwards.
+func TestMonotoneCubicIsMonotone(t *testing.T) {
+	rapid.Check(t, func(r *rapid.T) {
+		n := rapid.IntRange(2, 9).Draw(r, "rows")
+		step := rapid.Float64Range(1e-3, 1e3)
+		xs, ys := make([]float64, n), make([]float64, n)
+		for i := 1; i < n; i++ {
+			xs[i], ys[i] = xs[i-1]+step.Draw(r, "dx"), ys[i-1]+step.Draw(r, "dy")
+		}
+		tab, err := NewTable("t", false, []Column{{"x", Const(ListOf(xs...))}, {"y", Const(ListOf(ys...))}})
+		if err != nil {
+			r.Fatal(err)
+		}
+		forward, back := reader(t, tab, 1, 0), reader(t, tab, 0, 1)
+		last := math.Inf(-1)
+		for k := range 50 {
+			x := xs[n-1] * float64(k) / 49
+			v, fault := forward(x)
+			if fault != nil || v.Re() < last-1e-14*ys[n-1] || v.Tangent().Re() < -1e-9 {
+				r.Fatalf("at %g: %g after %g, slope %g, %+v", x, v.Re(), last, v.Tangent().Re(), fault)
+			}
+			last = v.Re()
+			w, fault := back(v.Re())
+			again, _ := forward(w.Re())
+			if fault != nil || math.Abs(again.Re()-v.Re()) > 1e-12*ys[n-1]+8*epsilon*x*v.Tangent().Re() {
+				r.Fatalf("y(x(%g)) = %g, %+v", v.Re(), again.Re(), fault)
+			}
+		}
+	})
 }
