@@ -4,6 +4,7 @@ import (
 	"context"
 	"math"
 	"testing"
+	"time"
 )
 
 // must unwraps the result of a combinator.
@@ -17,10 +18,11 @@ func must(t testing.TB) func(Code, error) Code {
 	}
 }
 
-// run evaluates with default budget and the given slots.
+// run evaluates with the given slots; steps are bounded, time hardly, so that a
+// slow machine gives the same results.
 func run(t testing.TB, c Code, slots ...Value) Value {
 	t.Helper()
-	f := NewFrame(context.Background(), len(slots), Budget{})
+	f := NewFrame(context.Background(), len(slots), Budget{Time: time.Minute})
 	for i, v := range slots {
 		f.Set(i, v)
 	}
