@@ -87,6 +87,11 @@ func (e *editor) hangUp() {
 	if e.wrong != nil {
 		e.t.Errorf("output that is no frame: %v", e.wrong)
 	}
+	for _, m := range e.got {
+		if strings.HasPrefix(m.Method, "window/showMessage") {
+			e.t.Errorf("a popup: %s", m.Params)
+		}
+	}
 }
 
 // receive reads frames until the output ends.

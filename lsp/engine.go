@@ -4,12 +4,10 @@ import (
 	"context"
 	"errors"
 	"fmt"
-	"os"
 	"path"
 	"path/filepath"
 	"strings"
 	"sync"
-	"time"
 
 	"inkjoule/check"
 	"inkjoule/check/project"
@@ -32,8 +30,7 @@ type engine struct {
 
 // loaded is a configuration made ready, as its file was at that time.
 type loaded struct {
-	at     time.Time
-	size   int64
+	at     stamp
 	runner check.Runner
 	fault  error // what is wrong with the file
 }
@@ -90,10 +87,9 @@ func (e *engine) config(in Input) loaded {
 	e.mu.Lock()
 	defer e.mu.Unlock()
 	now, ok := e.loaded[file]
-	at, size := stamp(file)
-	if !ok || !now.at.Equal(at) || now.size != size {
+	if at := fileStamp(file); !ok || now.at != at {
 		now = e.load(file)
-		now.at, now.size = at, size
+		now.at = at
 		e.loaded[file] = now
 	}
 	return now
@@ -112,16 +108,4 @@ func (e *engine) load(file string) loaded {
 		err = fmt.Errorf("the configuration can't be used as it is: %w", err)
 	}
 	return loaded{runner: runner, fault: err}
-}
-
-// stamp tells a version of a file from another; zero if there is none.
-func stamp(file string) (time.Time, int64) {
-	if file == "" {
-		return time.Time{}, 0
-	}
-	info, err := os.Stat(file)
-	if err != nil {
-		return time.Time{}, 0
-	}
-	return info.ModTime(), info.Size()
 }

@@ -20,12 +20,15 @@ type event func(s *session, raw jsonrpc2.RawMessage) error
 func features() []feature {
 	return []feature{
 		textSync(),
+		surroundings(),
 		pulledDiagnostics(),
+		overview(),
 		inlayHints(),
 		hovers(),
 		documentSymbols(),
 		codeActions(),
 		navigation(),
+		workspaceSymbols(),
 		renaming(),
 		completions(),
 		signatures(),

@@ -4,10 +4,13 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"maps"
+	"os"
 	"path"
 	"path/filepath"
 	"strings"
 	"sync"
+	"time"
 
 	"go.lsp.dev/uri"
 
@@ -46,7 +49,31 @@ type files struct {
 	home home
 	mu   sync.Mutex
 	open map[uri.URI]*lang.Source // the editor's texts; nil once the analysis is made
-	read map[uri.URI]bool         // what was asked for, existing or not
+	read map[uri.URI]stamp        // what was asked for, existing or not, as it was then
+}
+
+// A stamp tells a version of a text from another, without reading it.
+type stamp struct {
+	src  *lang.Source // the editor's text; nil for a file
+	at   time.Time
+	size int64
+}
+
+// stampOf is the stamp of a text as it is now; of a file that does not exist it
+// is zero.
+func (v *view) stampOf(u uri.URI) stamp {
+	if doc := v.docs[u]; doc != nil {
+		return stamp{src: doc.src}
+	}
+	return fileStamp(u.FsPath())
+}
+
+func fileStamp(file string) stamp {
+	info, err := os.Stat(file)
+	if file == "" || err != nil {
+		return stamp{}
+	}
+	return stamp{at: info.ModTime().Round(0), size: info.Size()}
 }
 
 // Read implements lang.Files.
@@ -73,8 +100,20 @@ func (f *files) Read(ctx context.Context, name string) (string, error) {
 func (f *files) ask(u uri.URI) *lang.Source {
 	f.mu.Lock()
 	defer f.mu.Unlock()
-	f.read[u] = true
-	return f.open[u]
+	src := f.open[u]
+	if src != nil {
+		f.read[u] = stamp{src: src}
+	} else {
+		f.read[u] = fileStamp(u.FsPath())
+	}
+	return src
+}
+
+// stamps are the texts that were asked for, as they were then.
+func (f *files) stamps() map[uri.URI]stamp {
+	f.mu.Lock()
+	defer f.mu.Unlock()
+	return maps.Clone(f.read)
 }
 
 // release lets go of the texts, which would otherwise live as long as the
@@ -89,5 +128,6 @@ func (f *files) release() {
 func (f *files) reads(u uri.URI) bool {
 	f.mu.Lock()
 	defer f.mu.Unlock()
-	return f.read[u]
+	_, ok := f.read[u]
+	return ok
 }

@@ -2,6 +2,7 @@ package lsp
 
 import (
 	"path/filepath"
+	"strings"
 
 	"go.lsp.dev/uri"
 )
@@ -33,4 +34,10 @@ func appendFolder(to []folder, u string) []folder {
 		return to
 	}
 	return append(to, folder(filepath.Clean(parsed.FsPath())))
+}
+
+// contains reports whether a file lies in the folder.
+func (f folder) contains(file string) bool {
+	rel, err := filepath.Rel(string(f), file)
+	return err == nil && rel != ".." && !strings.HasPrefix(rel, ".."+string(filepath.Separator))
 }

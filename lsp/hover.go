@@ -200,6 +200,9 @@ func (v *view) ruleCard(name string) *card {
 	c.line("physics", r.Formula)
 	c.line("write instead", r.Remedy)
 	c.line("source", r.Source)
+	c.example(r.Wrong.Note)
+	c.paragraph("put right:")
+	c.example(r.Right.Note)
 	return c
 }
 

@@ -2,6 +2,7 @@ package lsp
 
 import (
 	"errors"
+	"slices"
 	"time"
 
 	"go.lsp.dev/jsonrpc2"
@@ -81,17 +82,27 @@ func (s *session) send(doc *snapshot, all []protocol.Diagnostic) {
 	})
 }
 
-// closed takes a closed document's diagnostics off the screen.
+// closed takes a closed document's diagnostics off the screen, or shows those
+// of its file where the notes of the workspace are shown.
 func (s *session) closed(u uri.URI) {
 	if s.now().client.pulls {
 		return
 	}
 	s.behind(func() {
 		s.publish.Lock()
-		defer s.publish.Unlock()
-		if s.now().docs[u] == nil {
-			s.peer.notify(protocol.MethodTextDocumentPublishDiagnostics,
-				&protocol.PublishDiagnosticsParams{URI: u, Diagnostics: []protocol.Diagnostic{}})
+		s.shown[u] = true
+		s.publish.Unlock()
+		if v := s.now(); v.settings.workspace && v.inFolders(u) {
+			if r, err := v.record(s.ctx, u); err == nil {
+				s.sendClosed(u, r.items)
+				return
+			}
 		}
+		s.sendClosed(u, nil)
 	})
+}
+
+// inFolders reports whether a note lies in a workspace folder.
+func (v *view) inFolders(u uri.URI) bool {
+	return u.IsFile() && slices.ContainsFunc(v.folders, func(f folder) bool { return f.contains(u.FsPath()) })
 }

@@ -21,7 +21,9 @@ func pulledDiagnostics() feature {
 	return feature{
 		offer: func(c *client, to *protocol.ServerCapabilities) {
 			if c.pulls {
-				to.DiagnosticProvider = &protocol.DiagnosticOptions{Identifier: ptr(source), InterFileDependencies: true}
+				to.DiagnosticProvider = &protocol.DiagnosticOptions{
+					Identifier: ptr(source), InterFileDependencies: true, WorkspaceDiagnostics: true,
+				}
 			}
 		},
 		methods: map[string]method{protocol.MethodTextDocumentDiagnostic: request(pull)},

@@ -29,6 +29,11 @@ type session struct {
 	catalogue *check.Catalogue // the rules, for their documentation
 	pages     string           // address of the rules' documentation, which a rule name completes
 
+	library *library
+	shown   map[uri.URI]bool // closed notes with findings on show; guarded by publish
+	surveys atomic.Int64     // surveys asked for and not begun, plus the running one
+	tokens  atomic.Int64     // progress tokens handed out
+
 	refreshing atomic.Bool // a refresh is on its way
 
 	mu   sync.Mutex
@@ -55,8 +60,9 @@ func newSession(ctx context.Context, s *server) *session {
 	ctx, stop := context.WithCancel(ctx)
 	out := &session{
 		ctx: ctx, stop: stop, log: s.log, analyse: s.opt.Analyse, peer: s, catalogue: s.opt.Catalogue,
-		pages: s.opt.Pages,
-		cpu:   make(chan struct{}, max(1, runtime.GOMAXPROCS(0))),
+		pages:   s.opt.Pages,
+		library: newLibrary(), shown: map[uri.URI]bool{},
+		cpu: make(chan struct{}, max(1, runtime.GOMAXPROCS(0))),
 	}
 	out.view = &view{session: out, client: &client{}, settings: defaults(), docs: map[uri.URI]*snapshot{}}
 	return out

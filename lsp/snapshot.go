@@ -32,6 +32,7 @@ type snapshot struct {
 	supersede context.CancelCauseFunc
 	once      sync.Once
 	done      chan struct{}
+	config    stamp                     // of the configuration, as it was for the analysis
 	previous  atomic.Pointer[lang.Note] // for reuse; dropped once used
 	pace      time.Duration             // what the analysis of the text before has taken
 	result    analysis
@@ -53,7 +54,7 @@ func (a *analysis) uses() []lang.Use { return a.whole() }
 func (v *view) snap(u uri.URI, at home, src *lang.Source) *snapshot {
 	return &snapshot{
 		uri: u, home: at, src: src, enc: v.client.enc, session: v.session,
-		files: &files{home: at, open: v.texts(), read: map[uri.URI]bool{}},
+		files: &files{home: at, open: v.texts(), read: map[uri.URI]stamp{}},
 		ctx:   v.ctx, supersede: func(error) {}, done: make(chan struct{}),
 	}
 }
@@ -146,6 +147,7 @@ func (s *snapshot) analyse() (a analysis, err error) {
 		}
 	}()
 	begun := time.Now()
+	s.config = configStamp(s.home)
 	in := Input{Root: s.home.root, Path: s.home.path, Text: s.src.Text, Files: s.files, Previous: s.previous.Load()}
 	a.note, a.findings, err = s.session.analyse(s.ctx, in)
 	a.cost = time.Since(begun)
@@ -155,5 +157,10 @@ func (s *snapshot) analyse() (a analysis, err error) {
 
 // uses reports whether the note's analysis has, or may have, read the other.
 func (s *snapshot) uses(other uri.URI) bool {
-	return s.uri != other && (s.files.reads(other) || !s.finished() && strings.Contains(s.src.Text, "uses"))
+	return s.uri != other && (s.files.reads(other) || !s.finished() && refersTo(s.src.Text))
+}
+
+// refersTo reports whether a text may refer to another file.
+func refersTo(text string) bool {
+	return strings.Contains(text, "uses") || strings.Contains(text, ` from "`)
 }

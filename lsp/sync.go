@@ -146,10 +146,15 @@ func (v *view) renew(changed uri.URI) []*snapshot {
 		if !old.uses(changed) {
 			continue
 		}
-		doc := v.snap(u, old.home, old.src).opened(old.version).after(old)
-		old.supersede(errStale)
-		v.docs[u] = doc
-		out = append(out, doc)
+		out = append(out, v.again(u, old))
 	}
 	return out
+}
+
+// again makes a new snapshot of an open document whose text has not changed.
+func (v *view) again(u uri.URI, old *snapshot) *snapshot {
+	doc := v.snap(u, old.home, old.src).opened(old.version).after(old)
+	old.supersede(errStale)
+	v.docs[u] = doc
+	return doc
 }
