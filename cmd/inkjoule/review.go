@@ -60,6 +60,7 @@ type review struct {
 }
 
 func runReview(ctx context.Context, w *world, f *reviewFlags, paths []string) error {
+	w.hurry()
 	r, err := newReview(w, f)
 	if err != nil {
 		return err
