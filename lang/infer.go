@@ -157,24 +157,32 @@ func productShape(op Op, x, y eval.Shape) (eval.Shape, bool) {
 	return 0, false
 }
 
-// cyclesToAngle lets a factor 2π turn cycles into radians and back, so that
-// 2*pi*f is an angular frequency and omega/(2*pi) a frequency.
+// cyclesToAngle lets a factor 2π turn cycles into radians, so that 2*pi*f*L is
+// made with an angular frequency, and radians back into cycles where the whole
+// is a frequency or a period: omega/(2*pi) is in Hz, but the 2π below
+// omega*mu_0/(2*pi) belongs to the geometry.
 func cyclesToAngle(d unit.Dim, pi int) (unit.Dim, int) {
 	one := unit.Whole(1)
 	for pi > 0 && d[unit.Cycle].Sign() > 0 {
 		d[unit.Cycle], d[unit.Angle], pi = d[unit.Cycle].Sub(one), d[unit.Angle].Add(one), pi-1
 	}
-	for pi > 0 && d[unit.Angle].Sign() < 0 && d[unit.Cycle].IsZero() {
-		d[unit.Angle], d[unit.Cycle], pi = d[unit.Angle].Add(one), d[unit.Cycle].Sub(one), pi-1
-	}
-	for pi < 0 && d[unit.Angle].Sign() > 0 {
-		d[unit.Angle], d[unit.Cycle], pi = d[unit.Angle].Sub(one), d[unit.Cycle].Add(one), pi+1
-	}
-	for pi < 0 && d[unit.Cycle].Sign() < 0 && d[unit.Angle].IsZero() {
+	for pi < 0 && d[unit.Cycle].Sign() < 0 {
 		d[unit.Cycle], d[unit.Angle], pi = d[unit.Cycle].Add(one), d[unit.Angle].Sub(one), pi+1
+	}
+	switch base := d.Base(); {
+	case pi < 0 && base == perTime && d[unit.Angle] == one:
+		d[unit.Angle], d[unit.Cycle], pi = unit.Rat{}, one, pi+1
+	case pi > 0 && base == time && d[unit.Angle] == one.Neg():
+		d[unit.Angle], d[unit.Cycle], pi = unit.Rat{}, one.Neg(), pi-1
 	}
 	return d, pi
 }
+
+// perTime and time are the dimensions 1/s and s.
+var (
+	perTime = unit.Dim{unit.Time: unit.Whole(-1)}
+	time    = unit.Dim{unit.Time: unit.Whole(1)}
+)
 
 // cross infers x × y.
 func (e *elab) cross(b *Binary, x, y typed) typed {
