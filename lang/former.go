@@ -43,11 +43,15 @@ func (n *Note) Normal(s *Symbol, expand Expand) *Form {
 	return n.Form(s, s.Def.Members[0], expand)
 }
 
-// StatementForm gives the normal form of an expression of a relation.
+// StatementForm gives the normal form of any expression of a statement, nil
+// where it is unknown.
 func (n *Note) StatementForm(s *Stmt, x Expr, expand Expand) *Form {
-	for _, c := range n.state.byStmt[s] {
-		b := &former{n: n, c: c, expand: expand}
-		return b.form(x)
+	cs := n.state.byStmt[s]
+	for i := len(cs) - 1; i >= 0; i-- {
+		if x.Index() >= cs[i].base {
+			b := &former{n: n, c: cs[i], expand: expand}
+			return b.form(x)
+		}
 	}
 	return nil
 }

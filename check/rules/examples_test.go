@@ -43,7 +43,6 @@ func told(found []check.Finding) string {
 var pending = map[string]string{
 	"field-of-another-medium": "the finding",
 	"integral-not-converged":  "integrals",
-	"unused-waiver":           "the rule that its example names",
 }
 
 // The documentation is executed: a rule fires, and alone, on its wrong example,
