@@ -20,7 +20,7 @@ func codeActions() feature {
 				return // such a client could only run commands
 			}
 			to.CodeActionProvider = &protocol.CodeActionOptions{CodeActionKinds: []protocol.CodeActionKind{
-				protocol.CodeActionKindQuickFix, protocol.CodeActionKindRefactorRewrite, fixAllKind,
+				protocol.CodeActionKindQuickFix, protocol.CodeActionKindRefactorRewrite, protocol.CodeActionKindRefactorExtract, fixAllKind,
 			}}
 		},
 		methods: map[string]method{protocol.MethodTextDocumentCodeAction: request(actions)},
@@ -62,7 +62,9 @@ func actionKinds() []offer {
 	return []offer{
 		{protocol.CodeActionKindQuickFix, (*spot).fixes},
 		{protocol.CodeActionKindQuickFix, (*spot).writeAsked},
+		{protocol.CodeActionKindQuickFix, (*spot).waivers},
 		{protocol.CodeActionKindRefactorRewrite, (*spot).writeResults},
+		{protocol.CodeActionKindRefactorExtract, (*spot).extractions},
 		{fixAllKind, (*spot).fixAll},
 	}
 }

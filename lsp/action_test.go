@@ -134,3 +134,57 @@ func TestFixes(t *testing.T) {
 		d.quit()
 	}
 }
+
+// TestWaive holds that a finding can be answered for, for its name, and that
+// the waiver silences it.
+func TestWaive(t *testing.T) {
+	for _, end := range []string{"\n", "\r\n"} {
+		note := strings.ReplaceAll("Waive\n\n    f(x) = x^2 for x from 0 to 3\n    y = f(5)*2 = 50   # beyond\n    z = y*2 = 100\n", "\n", end)
+		d := sit(t, able, note)
+		got := d.actions("y = f(|5)", "quickfix")
+		if len(got) != 1 || got[0].Title != "Waive outside-stated-range for y" || len(got[0].Diagnostics) != 1 {
+			t.Fatalf("got %s", show(got))
+		}
+		text := d.applied(got[0].Edit.DocumentChanges[0].Edits)
+		if want := strings.Replace(note, "# beyond"+end, "# beyond"+end+"    waive outside-stated-range for y: \"REASON\""+end, 1); text != want {
+			t.Errorf("the note becomes %q, want %q", text, want)
+		}
+		d.edit(d.uri, 2, text)
+		for _, x := range d.diagnosed(d.uri, 2).Diagnostics {
+			if x.Code == "outside-stated-range" || x.Code == "unused-waiver" || x.Code == "syntax" {
+				t.Errorf("after the waiver: %s", x.Message)
+			}
+		}
+		d.quit()
+	}
+}
+
+// TestWaiveOnlyWhatCanBe holds that an error of dimension has no waiver.
+func TestWaiveOnlyWhatCanBe(t *testing.T) {
+	d := sit(t, able, "Waive\n\n    b = 3 m + 2 s = 1 m\n")
+	if got := d.actions("3 m| + 2"); len(got) != 0 {
+		t.Errorf("got %s", show(got))
+	}
+	d.quit()
+}
+
+// TestExtractProperty holds that a number in a formula of a medium becomes the
+// medium's property, with the same value.
+func TestExtractProperty(t *testing.T) {
+	note := "Extract\n\n    medium oil: linear, isotropic\n        eps_r = 2.2\n    E = 2 kV/mm\n    D in oil = 2.35*eps_0*E\n"
+	d := sit(t, able, note)
+	got := d.actions("2.3|5*eps_0", "refactor.extract")
+	if len(got) != 1 || got[0].Title != "Make 2.35 the property oil.property_1" {
+		t.Fatalf("got %s", show(got))
+	}
+	want := strings.Replace(strings.Replace(note, "eps_r = 2.2\n", "eps_r = 2.2\n        property_1 = 2.35\n", 1), "= 2.35*", "= oil.property_1*", 1)
+	if text := d.applied(got[0].Edit.DocumentChanges[0].Edits); text != want {
+		t.Errorf("the note becomes\n%s\nwant\n%s", text, want)
+	}
+	for _, none := range []string{"E |= 2 kV", "*eps|_0*E", "2|.2\n"} {
+		if got := d.actions(none, "refactor.extract"); len(got) != 0 {
+			t.Errorf("%s: %s", none, show(got))
+		}
+	}
+	d.quit()
+}

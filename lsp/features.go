@@ -29,6 +29,7 @@ func features() []feature {
 		codeActions(),
 		navigation(),
 		workspaceSymbols(),
+		fileRenames(),
 		renaming(),
 		completions(),
 		signatures(),
