@@ -193,6 +193,9 @@ func (e *elab) cross(b *Binary, x, y typed) typed {
 	t.Media, t.kinds, t.plain, t.blind = x.Media, x.kinds, x.plain, x.blind
 	t.join(y)
 	t.Kind, t.KindBy = crossKind(x, y, t.Dim)
+	if t.Dim.Base() == kind.EnergyDensity.Dim().Base() {
+		t.Kind, t.KindBy, t.kinds = 0, Unknown, []kind.ID{kind.Torque} // a torque per volume
+	}
 	t.Qualifier, t.QualBy = productQualifier(OpMul, x, y)
 	return e.built(t, b)(eval.Cross(b.ID, x.code, y.code))
 }

@@ -103,7 +103,13 @@ func decide(d unit.Dim, in []kind.ID) (kind.ID, Standing) {
 	fields := slices.ContainsFunc(in, electromagnetic)
 	switch d.Base() {
 	case kind.Torque.Dim().Base():
-		if fields && !has(kind.Force) {
+		stored := slices.ContainsFunc(in, func(k kind.ID) bool { return k.Is(kind.Energy) || k.Is(kind.Coenergy) })
+		switch angle := d[unit.Angle].Sign(); {
+		case angle < 0 && stored, has(kind.Torque) && angle == 0: // ∂W/∂θ, (D×E)·V
+			return kind.Torque, Inferred
+		case angle < 0: // P/ω is a torque or, times a quality factor, an energy
+			return 0, Unknown
+		case fields && !has(kind.Force), has(kind.Torque):
 			return kind.Energy, Inferred
 		}
 	case kind.EnergyDensity.Dim().Base():
