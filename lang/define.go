@@ -244,14 +244,28 @@ func isJ(x Expr) bool {
 	return ok && n.Text == "j"
 }
 
-// validity elaborates the bounds of a validity range, which orders nothing and
-// is checked where the value is used: against the note's quantity of that
-// name, which it thereby uses.
+// validity elaborates the validity ranges of a value or function, which order
+// nothing and are checked where the value is used: against the note's quantity
+// of that name, which they thereby use. Ranges of parameters are none.
 func (e *elab) validity(d *Definition) {
 	for _, r := range d.For {
-		e.bounds(r)
-		if n, ok := r.Var.(*Name); ok && e.a.cells[CanonicalName(n.Text)] != nil {
-			e.use(CanonicalName(n.Text), n.Span)
+		n, ok := r.Var.(*Name)
+		if !ok || hasParam(d, n.Text) {
+			continue
+		}
+		t := e.bounds(r)
+		key := CanonicalName(n.Text)
+		if e.a.cells[key] != nil {
+			e.use(key, n.Span)
+		}
+		if !t.Known {
+			continue
+		}
+		lo, ok1 := e.value(e.again(r.From))
+		hi, ok2 := e.value(e.again(r.To))
+		if ok1 && ok2 {
+			v := Validity{Name: n.Text, Key: key, Low: lo.Re(), High: hi.Re(), Unit: unitFor(r, e.a, t.Dim), Span: r.Span}
+			e.c.sym.Valid = append(e.c.sym.Valid, v)
 		}
 	}
 }

@@ -24,24 +24,12 @@ func (e *elab) function(d *Definition) {
 		inner.bind(CanonicalName(p.Text), t)
 	}
 	t := inner.body(d)
-	e.conditions(d)
+	e.validity(d)
 	if !all || !t.Known {
 		e.c.sym.Facts.Known = false
 		return
 	}
 	e.settle(d, t)
-}
-
-// conditions elaborates the ranges of a function that are no parameter's: the
-// conditions under which it holds.
-func (e *elab) conditions(d *Definition) {
-	for _, r := range d.For {
-		n, ok := r.Var.(*Name)
-		if ok && !hasParam(d, n.Text) && e.a.cells[CanonicalName(n.Text)] != nil {
-			e.bounds(r)
-			e.use(CanonicalName(n.Text), n.Span)
-		}
-	}
 }
 
 func hasParam(d *Definition, name string) bool {

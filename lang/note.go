@@ -64,6 +64,15 @@ type Result struct {
 	Asked     *Blank    // the `__` that asks for it, or nil
 }
 
+// Validity is a range for which a definition is stated: `for T from A to B`.
+type Validity struct {
+	Name      string // of the condition, as written
+	Key       string // canonical
+	Low, High float64
+	Unit      unit.Unit // in which the range is written
+	Span      Span      // of the clause, statement-relative
+}
+
 // Symbol is a name of the note.
 type Symbol struct {
 	Name  string // as its definition spells it
@@ -76,7 +85,8 @@ type Symbol struct {
 	Span  Span // the name in its definition, note offsets
 	Input bool // its definition is a literal
 	Doc   string
-	Per   string // the source that the definition names
+	Per   string     // the source that the definition names
+	Valid []Validity // the conditions under which it holds; parameters are none
 	Facts Facts
 	Result
 }
