@@ -88,7 +88,7 @@ func (a *analysis) finish(c *cell) {
 // same reports whether the result of an earlier cell still holds: every cell
 // that it used is itself one that was taken over.
 func (c *cell) same(now *cell) bool {
-	if c.key != now.key || len(c.deps) != len(now.deps) || c.cyclic || now.cyclic || !sameCell(c.regime, now.regime) || !sameCell(c.owner, now.owner) {
+	if c.key != now.key || len(c.deps) != len(now.deps) || c.cyclic || now.cyclic || c.hinted || !sameCell(c.regime, now.regime) || !sameCell(c.owner, now.owner) {
 		return false
 	}
 	for i, d := range c.deps {

@@ -42,6 +42,7 @@ type work struct {
 	sym    Symbol  // what the cell defines; Stmt and Span are set by the note
 	judged *Judgement
 	plain  bool          // a pure number
+	hinted bool          // a fault may name the nearest of all names: it holds for those names only
 	pi     int           // power of π in a plain number's value, for 2π·Hz
 	grad   eval.Gradient // of the value with respect to the note's uncertain inputs
 	from   []kind.ID     // kinds that went in, where the cell has none of its own

@@ -30,7 +30,9 @@ type analysis struct {
 	pending    []pendingNames
 	imported   map[string]*Note
 	views      []*analysis
-	incomplete bool // a referred note could not be read: names may come from it
+	near       map[string]string // the nearest names found so far, for unknown ones
+	spelled    []string          // all names, once one was looked for
+	incomplete bool              // a referred note could not be read: names may come from it
 }
 
 // unitReading is a unit phrase read once for the whole note.

@@ -93,11 +93,12 @@ func editDistance(a, b string, most int) int {
 
 // unknownName reports a name that nothing defines, with the nearest one.
 func (e *elab) unknownName(at Tree, name, rule string) {
+	e.c.hinted = true
 	if e.a.incomplete {
 		return
 	}
 	f := Fault{Rule: rule, Severity: Error, Span: at.Place(), Message: fmt.Sprintf("%s is not defined in this note", name)}
-	if near := nearest(name, e.a.names()); near != "" {
+	if near := e.a.nearestName(name); near != "" {
 		f.Detail = fmt.Sprintf("did you mean %s?", near)
 		f.Fix = &Fix{Title: "Write " + near, Edits: []Edit{{at.Place(), near}}}
 	} else if u := e.a.readUnit(name); u.err == nil {
@@ -106,6 +107,22 @@ func (e *elab) unknownName(at Tree, name, rule string) {
 		f.Detail = "define it, or refer to the note that does with `uses`"
 	}
 	e.report(f)
+}
+
+// mostGuesses bounds the unknown names for which a near one is looked for, each
+// among all names: a note full of them must not take long to be told so.
+const mostGuesses = 100
+
+// nearestName is the name of the note that is nearest to an unknown one, or "".
+func (a *analysis) nearestName(name string) string {
+	if near, ok := a.near[name]; ok || len(a.near) >= mostGuesses {
+		return near
+	}
+	if a.near == nil {
+		a.near, a.spelled = map[string]string{}, a.names()
+	}
+	a.near[name] = nearest(name, a.spelled)
+	return a.near[name]
 }
 
 // names are the spellings of everything the note defines.
