@@ -155,8 +155,11 @@ func (f *frames) line() ([]byte, error) {
 // looks for the header anywhere in the line, since after a body of the wrong
 // length it follows junk.
 func contentLength(line []byte) (n int64, found bool) {
-	const name = "content-length:"
-	at := bytes.LastIndex(bytes.ToLower(line), []byte(name))
+	const name = "Content-Length:"
+	at := len(line) - len(name)
+	for at >= 0 && !asciiFold(line[at:at+len(name)], name) {
+		at--
+	}
 	if at < 0 {
 		return 0, false
 	}
@@ -165,6 +168,24 @@ func contentLength(line []byte) (n int64, found bool) {
 		return 0, true
 	}
 	return max(n, 0), true
+}
+
+// asciiFold compares ASCII letters without regard to case, other bytes as they
+// are: header names are ASCII, and a line may hold any bytes.
+func asciiFold(text []byte, name string) bool {
+	for i, c := range text {
+		if 'A' <= c && c <= 'Z' {
+			c += 'a' - 'A'
+		}
+		n := name[i]
+		if 'A' <= n && n <= 'Z' {
+			n += 'a' - 'A'
+		}
+		if c != n {
+			return false
+		}
+	}
+	return true
 }
 
 // Write frames a message and hands it to the outbox.

@@ -2,9 +2,11 @@ package lsp
 
 import (
 	"context"
+	"fmt"
 	"log/slog"
 	"maps"
 	"runtime"
+	"runtime/debug"
 	"sync"
 	"sync/atomic"
 	"time"
@@ -100,7 +102,17 @@ func (s *session) behind(f func()) {
 	s.gate.Lock()
 	defer s.gate.Unlock()
 	if s.ctx.Err() == nil {
-		s.work.Go(f)
+		s.work.Go(func() {
+			defer s.survive()
+			f()
+		})
+	}
+}
+
+// survive keeps a panic in one piece of work from ending all of it.
+func (s *session) survive() {
+	if r := recover(); r != nil {
+		s.log.Error("panic", "value", fmt.Sprint(r), "stack", string(debug.Stack()))
 	}
 }
 
