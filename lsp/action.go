@@ -42,6 +42,9 @@ func actions(ctx context.Context, v *view, p *actionParams) (any, error) {
 	if err != nil {
 		return nil, err
 	}
+	if s.found, err = s.doc.findings(ctx); err != nil {
+		return nil, err
+	}
 	within := s.doc.mapper().RangeToSpan(p.Range)
 	out := []protocol.CommandOrCodeAction{}
 	for _, offer := range actionKinds() {
@@ -90,7 +93,7 @@ func touches(a, b lang.Span) bool { return a.Start <= b.End && b.Start <= a.End 
 func (s *spot) fixes(within lang.Span) []protocol.CommandOrCodeAction {
 	var out []protocol.CommandOrCodeAction
 	rep := s.view.reporter(s.doc)
-	for _, f := range s.all.findings {
+	for _, f := range s.found {
 		if f.Fix == nil || f.IsWaived() || len(f.Fix.Edits) == 0 || !touches(f.Span, within) {
 			continue
 		}
@@ -129,7 +132,7 @@ func (s *spot) write(within lang.Span, kind protocol.CodeActionKind, fits func(h
 // none there is no action: an empty one would make each save an edit.
 func (s *spot) fixAll(lang.Span) []protocol.CommandOrCodeAction {
 	var edits []lang.Edit
-	for _, f := range s.all.findings {
+	for _, f := range s.found {
 		if f.Fix != nil && !f.IsWaived() && !overlapsAny(edits, f.Fix.Edits) {
 			edits = append(edits, f.Fix.Edits...)
 		}

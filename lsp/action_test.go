@@ -104,7 +104,7 @@ func swapping(ctx context.Context, in Input) (*lang.Note, []check.Finding, error
 
 func TestFixes(t *testing.T) {
 	for _, caps := range []object{able, {"textDocument": object{"codeAction": object{"codeActionLiteralSupport": object{}}}}} {
-		d := &desk{editor: launch(t, Options{Analyse: swapping}), uri: "file:///a.joule", text: "x a y a z"}
+		d := &desk{editor: launch(t, Options{Analyser: atOnce(swapping)}), uri: "file:///a.joule", text: "x a y a z"}
 		d.start(caps)
 		d.open(d.uri, d.text)
 		one := d.actions("a y|")

@@ -170,7 +170,7 @@ func (s *spot) fromNote(alias *lang.Symbol) []item {
 	if err != nil {
 		return nil
 	}
-	a, err := other.analysis(s.view.ctx)
+	a, err := other.read(s.view.ctx)
 	if err != nil {
 		return nil
 	}

@@ -16,10 +16,10 @@ const source = "inkjoule"
 
 // diagnostics turns the findings of a note into what the client shows. Where
 // the client can't show a part, the text says it.
-func (v *view) diagnostics(s *snapshot, a *analysis) []protocol.Diagnostic {
+func (v *view) diagnostics(s *snapshot, findings []check.Finding) []protocol.Diagnostic {
 	w := v.reporter(s)
 	out := []protocol.Diagnostic{}
-	for _, f := range a.findings {
+	for _, f := range findings {
 		if !f.IsWaived() && (f.Path == "" || f.Path == s.home.path) {
 			out = append(out, w.diagnostic(f))
 		}

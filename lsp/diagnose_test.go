@@ -74,7 +74,7 @@ func TestDiagnosticShowsWhatTheClientCan(t *testing.T) {
 		{"a client that can nothing", object{}, false},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			e := launch(t, Options{Analyse: letters, Pages: "https://example.org/rules/"})
+			e := launch(t, Options{Analyser: atOnce(letters), Pages: "https://example.org/rules/"})
 			e.start(c.caps)
 			e.open("file:///a.joule", "!\n ?")
 			d := e.diagnosed("file:///a.joule", 1).Diagnostics
@@ -106,7 +106,7 @@ func TestTags(t *testing.T) {
 		foreign := check.Finding{Fault: lang.Fault{Rule: "y", Severity: lang.Error}, Path: "other.joule"}
 		return nil, []check.Finding{{Fault: f, Path: in.Path}, waived, foreign}, nil
 	}
-	e := launch(t, Options{Analyse: unused})
+	e := launch(t, Options{Analyser: atOnce(unused)})
 	e.start(object{"textDocument": object{"publishDiagnostics": object{"tagSupport": object{"valueSet": []int{1}}}}})
 	e.open("file:///a.joule", "a = 1")
 	d := e.diagnosed("file:///a.joule", 1).Diagnostics
@@ -129,7 +129,7 @@ func TestOneChannel(t *testing.T) {
 		{"neither", object{}, false},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			e := launch(t, Options{Analyse: letters})
+			e := launch(t, Options{Analyser: atOnce(letters)})
 			caps := e.start(c.caps)["capabilities"].(object)
 			if _, offered := caps["diagnosticProvider"]; offered != c.pulls {
 				t.Errorf("diagnosticProvider offered: %v", offered)
@@ -150,7 +150,7 @@ func TestOneChannel(t *testing.T) {
 }
 
 func TestPullUnchanged(t *testing.T) {
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.start(pulling)
 	doc := object{"uri": "file:///a.joule"}
 	e.open("file:///a.joule", "!")
@@ -170,7 +170,7 @@ func TestPullUnchanged(t *testing.T) {
 
 // TestCloseClears holds that nothing stays on the screen of a closed document.
 func TestCloseClears(t *testing.T) {
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.start(object{})
 	e.open("file:///a.joule", "!")
 	e.diagnosed("file:///a.joule", 1)
@@ -188,7 +188,7 @@ func TestUnsavedTextOverridesTheDisk(t *testing.T) {
 	dir := t.TempDir()
 	other := writeNote(t, dir, "sub/b.joule", "on disk")
 	note := writeNote(t, dir, "a.joule", "")
-	e := launch(t, Options{Analyse: referring})
+	e := launch(t, Options{Analyser: atOnce(referring)})
 	e.startIn(object{}, dir)
 	says := func(text string) {
 		t.Helper()
@@ -218,7 +218,7 @@ func TestRefreshForDependents(t *testing.T) {
 	dir := t.TempDir()
 	other := writeNote(t, dir, "b.joule", "on disk")
 	note := writeNote(t, dir, "a.joule", "")
-	e := launch(t, Options{Analyse: referring})
+	e := launch(t, Options{Analyser: atOnce(referring)})
 	e.startIn(pulling, dir)
 	e.open(note, "uses b.joule")
 	e.must("textDocument/diagnostic", object{"textDocument": object{"uri": note}}, nil)
@@ -243,7 +243,7 @@ func TestTheFolderIsAWall(t *testing.T) {
 	if err := os.Symlink(filepath.Join(top, "secret.joule"), filepath.Join(dir, "link.joule")); err != nil {
 		t.Skip("no symbolic links here")
 	}
-	e := launch(t, Options{Analyse: referring})
+	e := launch(t, Options{Analyser: atOnce(referring)})
 	e.startIn(object{}, dir)
 	for i, path := range []string{"../secret.joule", "../../w/../secret.joule", "/etc/passwd", "link.joule", filepath.Join(top, "secret.joule")} {
 		if i == 0 {
@@ -287,7 +287,7 @@ func TestOneKey(t *testing.T) {
 		{"untitled:Untitled-1"},
 	} {
 		t.Run(same[0], func(t *testing.T) {
-			e := launch(t, Options{Analyse: letters})
+			e := launch(t, Options{Analyser: atOnce(letters)})
 			e.start(pulling)
 			e.open(same[0], "!")
 			for i, spelling := range same {

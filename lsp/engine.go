@@ -17,8 +17,7 @@ import (
 // NewAnalyser is the analysis that the command line makes too: the language,
 // the rules, and the configuration that holds for the note's folder.
 func NewAnalyser(rules []*check.Rule, catalogue *check.Catalogue) Analyser {
-	e := &engine{rules: rules, catalogue: catalogue, loaded: map[string]loaded{}}
-	return e.analyse
+	return &engine{rules: rules, catalogue: catalogue, loaded: map[string]loaded{}}
 }
 
 type engine struct {
@@ -35,26 +34,30 @@ type loaded struct {
 	fault  error // what is wrong with the file
 }
 
-func (e *engine) analyse(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
-	if err := readable(in); err != nil {
-		src := lang.NewSource(in.Text)
-		return &lang.Note{Path: in.Path, Script: &lang.Script{Source: src}}, []check.Finding{remark(in, err)}, nil
+// Read implements Analyser. A text that is no note is read as an empty one.
+func (e *engine) Read(ctx context.Context, in Input) (*lang.Note, error) {
+	if readable(in) != nil {
+		return &lang.Note{Path: in.Path, Script: &lang.Script{Source: lang.NewSource(in.Text)}}, nil
 	}
-	note, err := lang.Analyze(ctx, in.Text, lang.Options{Path: in.Path, Files: in.Files, Previous: in.Previous})
-	if err != nil {
-		return nil, nil, err
+	return lang.Analyze(ctx, in.Text, lang.Options{Path: in.Path, Files: in.Files, Previous: in.Previous})
+}
+
+// Check implements Analyser.
+func (e *engine) Check(ctx context.Context, in Input, note *lang.Note) ([]check.Finding, error) {
+	if err := readable(in); err != nil {
+		return []check.Finding{remark(in, err)}, nil
 	}
 	config := e.config(in)
-	found, err := config.runner.Run(ctx, note)
+	found, broken := config.runner.Run(ctx, note)
 	if ctx.Err() != nil {
-		return nil, nil, ctx.Err()
+		return nil, ctx.Err()
 	}
-	for _, err := range []error{config.fault, err} {
+	for _, err := range []error{config.fault, broken} {
 		if err != nil {
 			found = append([]check.Finding{remark(in, err)}, found...)
 		}
 	}
-	return note, found, nil
+	return found, nil
 }
 
 // readable says why a text is not read as a note.

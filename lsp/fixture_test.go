@@ -41,7 +41,7 @@ func realOptions(t testing.TB) Options {
 	if err != nil {
 		t.Fatal(err)
 	}
-	return Options{Analyse: NewAnalyser(rules.All(), c), Catalogue: c, Version: "test"}
+	return Options{Analyser: NewAnalyser(rules.All(), c), Catalogue: c, Version: "test"}
 }
 
 // able are the capabilities of an editor that can nearly all.

@@ -124,7 +124,7 @@ func incoming(ctx context.Context, v *view, p *itemParams) (any, error) {
 		return out, nil
 	}
 	for _, f := range s.everywhere(ctx, name) {
-		a, err := f.doc.analysis(ctx)
+		a, err := f.doc.read(ctx)
 		if err != nil {
 			return nil, err
 		}

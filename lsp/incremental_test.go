@@ -125,7 +125,12 @@ func TestIncrementalEqualsFull(t *testing.T) {
 
 func analysed(t *testing.T, opt Options, text string, previous *lang.Note) (*lang.Note, []check.Finding) {
 	t.Helper()
-	note, found, err := opt.Analyse(context.Background(), Input{Path: "a.joule", Text: text, Previous: previous})
+	in := Input{Path: "a.joule", Text: text, Previous: previous}
+	note, err := opt.Analyser.Read(context.Background(), in)
+	var found []check.Finding
+	if err == nil {
+		found, err = opt.Analyser.Check(context.Background(), in, note)
+	}
 	if err != nil {
 		t.Fatalf("%v\n%q", err, text)
 	}

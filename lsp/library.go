@@ -76,14 +76,16 @@ func (v *view) newRecord(ctx context.Context, u uri.URI) (*record, error) {
 	if err != nil {
 		return nil, err
 	}
-	a, err := doc.analysis(ctx)
+	found, err := doc.findings(ctx)
 	switch {
 	case ctx.Err() != nil:
 		return nil, ctx.Err()
 	case err != nil:
 		r.items = unchecked(err)
 	default:
-		r.items = v.diagnostics(doc, a)
+		r.items = v.diagnostics(doc, found)
+	}
+	if a, err := doc.read(ctx); err == nil {
 		r.symbols = (&spot{view: v, doc: doc, note: a.note, all: a}).workspaceSymbols()
 	}
 	r.stamps = doc.files.stamps()

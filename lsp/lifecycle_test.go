@@ -35,7 +35,7 @@ func wantCode(t *testing.T, err error, code int) {
 }
 
 func TestPhases(t *testing.T) {
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	wantCode(t, e.call("textDocument/hover", object{}, nil), -32002)
 	wantCode(t, e.call("no/such", object{}, nil), -32002)
 	e.open("file:///a.joule", "!") // before initialize: ignored
@@ -60,7 +60,7 @@ func TestPhases(t *testing.T) {
 }
 
 func TestExitWithoutShutdown(t *testing.T) {
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.start(object{})
 	e.notify("exit", nil)
 	<-e.ended
@@ -81,7 +81,7 @@ func TestEndOfInput(t *testing.T) {
 	}
 	for _, c := range []struct {
 		name, last string
-		analyse    Analyser
+		analyse    atOnce
 	}{
 		{"between frames", "", letters},
 		{"in a header", "Content-Le", letters},
@@ -89,7 +89,7 @@ func TestEndOfInput(t *testing.T) {
 		{"while analysing", "", deaf},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			e := launch(t, Options{Analyse: c.analyse})
+			e := launch(t, Options{Analyser: c.analyse})
 			e.start(object{})
 			e.open("file:///a.joule", "!")
 			e.raw(c.last)
@@ -110,7 +110,7 @@ func TestPanicInHandler(t *testing.T) {
 		}
 		return letters(ctx, in)
 	}
-	e := launch(t, Options{Analyse: broken})
+	e := launch(t, Options{Analyser: atOnce(broken)})
 	e.start(pulling)
 	e.open("file:///a.joule", "bad")
 	var report struct{ Items []struct{ Code string } }
@@ -142,7 +142,7 @@ func TestClientThatDoesNotRead(t *testing.T) {
 	toServer, fromEditor := io.Pipe()
 	_, fromServer := io.Pipe() // never read
 	ended := make(chan error, 1)
-	go func() { ended <- Serve(context.Background(), toServer, fromServer, Options{Analyse: letters}) }()
+	go func() { ended <- Serve(context.Background(), toServer, fromServer, Options{Analyser: atOnce(letters)}) }()
 	e := &editor{t: t, to: fromEditor}
 	e.begin("initialize", object{"capabilities": object{}})
 	for i := range 1000 {

@@ -7,16 +7,18 @@ import (
 	"go.lsp.dev/protocol"
 	"go.lsp.dev/uri"
 
+	"inkjoule/check"
 	"inkjoule/lang"
 )
 
 // A spot is a place in an analysed note, as most requests name it.
 type spot struct {
-	view *view
-	doc  *snapshot
-	note *lang.Note
-	all  *analysis
-	at   int // note offset
+	view  *view
+	doc   *snapshot
+	note  *lang.Note
+	all   *reading
+	found []check.Finding // only where the request is about them
+	at    int             // note offset
 }
 
 // spot finds what a position means. It waits for the analysis.
@@ -34,7 +36,7 @@ func (v *view) whole(ctx context.Context, u uri.URI) (*spot, error) {
 	if err != nil {
 		return nil, err
 	}
-	a, err := doc.analysis(ctx)
+	a, err := doc.read(ctx)
 	if err != nil {
 		return nil, err
 	}

@@ -83,7 +83,7 @@ func referred(note *lang.Note, alias *lang.Symbol) []target {
 
 // occurrences lists the places of the name in its note, in the order of the
 // text.
-func (n *named) occurrences(a *analysis) []occurrence {
+func (n *named) occurrences(a *reading) []occurrence {
 	if n.local == nil {
 		return occurrencesOf(a, func(sym *lang.Symbol) bool { return sameSymbol(sym, n.sym) })
 	}
@@ -95,7 +95,7 @@ func (n *named) occurrences(a *analysis) []occurrence {
 }
 
 // occurrencesOf lists the places of the names that fit, each once.
-func occurrencesOf(a *analysis, fits func(*lang.Symbol) bool) []occurrence {
+func occurrencesOf(a *reading, fits func(*lang.Symbol) bool) []occurrence {
 	var out []occurrence
 	note := a.note
 	for _, u := range a.uses() {

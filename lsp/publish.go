@@ -42,14 +42,14 @@ func (s *session) diagnose(doc *snapshot) {
 	case <-doc.ctx.Done():
 		return
 	}
-	a, err := doc.analysis(doc.ctx)
+	found, err := doc.findings(doc.ctx)
 	v := s.now()
 	switch {
 	case doc.ctx.Err() != nil:
 	case err != nil:
 		s.send(doc, unchecked(err))
 	default:
-		s.send(doc, v.diagnostics(doc, a))
+		s.send(doc, v.diagnostics(doc, found))
 	}
 }
 

@@ -36,7 +36,7 @@ func pull(ctx context.Context, v *view, p *protocol.DocumentDiagnosticParams) (a
 		return nil, err
 	}
 	var items []protocol.Diagnostic
-	switch a, err := doc.analysis(ctx); {
+	switch found, err := doc.findings(ctx); {
 	case errors.Is(err, errStale):
 		return nil, &jsonrpc2.Error{Code: codeServerCancelled, Message: errStale.Message, Data: jsonrpc2.RawMessage(`{"retriggerRequest":true}`)}
 	case errors.Is(err, context.Canceled) || errors.Is(err, errCancelled):
@@ -44,7 +44,7 @@ func pull(ctx context.Context, v *view, p *protocol.DocumentDiagnosticParams) (a
 	case err != nil:
 		items = unchecked(err)
 	default:
-		items = v.diagnostics(doc, a)
+		items = v.diagnostics(doc, found)
 	}
 	id, err := fingerprint(items)
 	if err != nil {

@@ -114,7 +114,7 @@ func allowedName(name string) error {
 // that a local name would hide.
 func (s *spot) free(ctx context.Context, f found, n *named, name string) error {
 	key := lang.CanonicalName(name)
-	a, err := f.doc.analysis(ctx)
+	a, err := f.doc.read(ctx)
 	if err != nil {
 		return err
 	}
@@ -141,7 +141,7 @@ func (s *spot) free(ctx context.Context, f found, n *named, name string) error {
 }
 
 // symbolIn is a name as a note of the work knows it.
-func symbolIn(a *analysis, id symbolID) *lang.Symbol {
+func symbolIn(a *reading, id symbolID) *lang.Symbol {
 	for _, u := range a.uses() {
 		if identityOf(a.note, u.Symbol) == id {
 			return u.Symbol

@@ -25,9 +25,15 @@ const patience = 10 * time.Second
 // request; the process must then exit with status 1.
 var ErrNoShutdown = errors.New("the client left without a shutdown request")
 
-// Analyser reads and checks one note. It obeys ctx, keeps no state between
-// calls, and may be called from several goroutines.
-type Analyser func(ctx context.Context, in Input) (*lang.Note, []check.Finding, error)
+// Analyser reads and checks notes. It obeys ctx and may be called from several
+// goroutines. The two steps are apart because most requests need only the
+// first.
+type Analyser interface {
+	// Read reads, resolves and evaluates a note.
+	Read(ctx context.Context, in Input) (*lang.Note, error)
+	// Check gives the findings of a note that Read has returned.
+	Check(ctx context.Context, in Input, note *lang.Note) ([]check.Finding, error)
+}
 
 // Input is what an Analyser gets.
 type Input struct {
@@ -41,7 +47,7 @@ type Input struct {
 // Options of a server.
 type Options struct {
 	Version   string           // shown to the client
-	Analyse   Analyser         // required
+	Analyser  Analyser         // required
 	Catalogue *check.Catalogue // the rules, for hover and completion; nil: none
 	Pages     string           // address of the rules' documentation, which a rule name completes; "" if none
 	Log       *slog.Logger     // nil: nothing is logged

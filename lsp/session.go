@@ -22,7 +22,7 @@ type session struct {
 	ctx       context.Context
 	stop      context.CancelFunc
 	log       *slog.Logger
-	analyse   Analyser
+	analyser  Analyser
 	peer      peer
 	cpu       chan struct{} // one token for each analysis that may run
 	gate      sync.Mutex    // guards the start of work against the end of the session
@@ -61,7 +61,7 @@ type view struct {
 func newSession(ctx context.Context, s *server) *session {
 	ctx, stop := context.WithCancel(ctx)
 	out := &session{
-		ctx: ctx, stop: stop, log: s.log, analyse: s.opt.Analyse, peer: s, catalogue: s.opt.Catalogue,
+		ctx: ctx, stop: stop, log: s.log, analyser: s.opt.Analyser, peer: s, catalogue: s.opt.Catalogue,
 		pages:   s.opt.Pages,
 		library: newLibrary(), shown: map[uri.URI]bool{},
 		cpu: make(chan struct{}, max(1, runtime.GOMAXPROCS(0))),

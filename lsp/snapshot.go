@@ -31,23 +31,55 @@ type snapshot struct {
 	ctx       context.Context // ends when a newer text supersedes this one
 	supersede context.CancelCauseFunc
 	once      sync.Once
-	done      chan struct{}
-	config    stamp                     // of the configuration, as it was for the analysis
-	previous  atomic.Pointer[lang.Note] // for reuse; dropped once used
-	pace      time.Duration             // what the analysis of the text before has taken
-	result    analysis
-	err       error
+	reading   stage[*reading]        // the note, read and evaluated
+	checking  stage[[]check.Finding] // its findings, which take longer
+	config    stamp                  // of the configuration, as it was for the analysis
+	cost      time.Duration          // what the analysis has taken
+	previous  atomic.Pointer[lang.Note]
+	pace      time.Duration // what the analysis of the text before has taken
 }
 
-// analysis is all that is known about a text.
-type analysis struct {
-	note     *lang.Note
-	findings []check.Finding
-	cost     time.Duration
-	whole    func() []lang.Use // all uses, found when first asked for
+// reading is a note as most requests need it, without its findings.
+type reading struct {
+	note  *lang.Note
+	whole func() []lang.Use // all uses, found when first asked for
 }
 
-func (a *analysis) uses() []lang.Use { return a.whole() }
+func (r *reading) uses() []lang.Use { return r.whole() }
+
+// stage is a result that many may wait for.
+type stage[T any] struct {
+	done  chan struct{}
+	value T
+	err   error
+}
+
+func newStage[T any]() stage[T] { return stage[T]{done: make(chan struct{})} }
+
+// finished reports whether the result is there, or has failed.
+func (g *stage[T]) finished() bool {
+	select {
+	case <-g.done:
+		return true
+	default:
+		return false
+	}
+}
+
+// wait returns the result. The error is the cause of whichever context ends
+// before it is there.
+func (g *stage[T]) wait(ctx, life context.Context) (value T, err error) {
+	select {
+	case <-g.done:
+	case <-ctx.Done():
+		return value, context.Cause(ctx)
+	case <-life.Done():
+		if !g.finished() {
+			return value, context.Cause(life)
+		}
+	}
+	return g.value, g.err
+}
 
 // snap makes a snapshot of a text in a view. It lasts as long as somebody holds
 // it.
@@ -55,7 +87,8 @@ func (v *view) snap(u uri.URI, at home, src *lang.Source) *snapshot {
 	return &snapshot{
 		uri: u, home: at, src: src, enc: v.client.enc, session: v.session,
 		files: &files{home: at, open: v.texts(), read: map[uri.URI]stamp{}},
-		ctx:   v.ctx, supersede: func(error) {}, done: make(chan struct{}),
+		ctx:   v.ctx, supersede: func(error) {},
+		reading: newStage[*reading](), checking: newStage[[]check.Finding](),
 	}
 }
 
@@ -80,63 +113,71 @@ func (v *view) texts() map[uri.URI]*lang.Source {
 func (s *snapshot) after(old *snapshot) *snapshot {
 	s.previous.Store(old.previous.Load())
 	s.pace = old.pace
-	if old.finished() && old.err == nil {
-		s.previous.Store(old.result.note)
-		s.pace = old.result.cost
+	if old.reading.finished() && old.reading.err == nil {
+		s.previous.Store(old.reading.value.note)
+	}
+	if old.checking.finished() && old.checking.err == nil {
+		s.pace = old.cost
 	}
 	return s
 }
 
 func (s *snapshot) mapper() mapper { return newMapper(s.src, s.enc) }
 
-// finished reports whether the analysis has been made or has failed.
-func (s *snapshot) finished() bool {
-	select {
-	case <-s.done:
-		return true
-	default:
-		return false
-	}
+// read returns the note, which is analysed if it has not been. The error is
+// errStale when a newer text has come in between.
+func (s *snapshot) read(ctx context.Context) (*reading, error) {
+	s.begin()
+	return s.reading.wait(ctx, s.ctx)
 }
 
-// analysis returns the analysis, which is begun if it has not been. The error
-// is errStale when a newer text has come in between, else the context's cause.
-func (s *snapshot) analysis(ctx context.Context) (*analysis, error) {
-	s.once.Do(func() { s.session.behind(s.run) })
-	select {
-	case <-s.done:
-	case <-ctx.Done():
-		return nil, context.Cause(ctx)
-	case <-s.ctx.Done():
-		if !s.finished() {
-			return nil, context.Cause(s.ctx)
-		}
-	}
-	if s.err != nil {
-		return nil, s.err
-	}
-	return &s.result, nil
+// findings returns what has been found in the note; see read.
+func (s *snapshot) findings(ctx context.Context) ([]check.Finding, error) {
+	s.begin()
+	return s.checking.wait(ctx, s.ctx)
 }
+
+func (s *snapshot) begin() { s.once.Do(func() { s.session.behind(s.run) }) }
 
 // run analyses the text, one of a few at a time.
 func (s *snapshot) run() {
-	defer close(s.done)
-	select {
-	case s.session.cpu <- struct{}{}:
-		defer func() { <-s.session.cpu }()
-		s.result, s.err = s.analyse()
-	case <-s.ctx.Done():
-		s.err = context.Cause(s.ctx)
+	defer close(s.checking.done)
+	begun := time.Now()
+	s.readStage()
+	if s.checking.err = s.reading.err; s.checking.err != nil {
+		return
 	}
+	s.checking.err = s.guarded(func(in Input) (err error) {
+		s.checking.value, err = s.session.analyser.Check(s.ctx, in, s.reading.value.note)
+		return err
+	})
+	s.cost = time.Since(begun)
+}
+
+func (s *snapshot) readStage() {
+	defer close(s.reading.done)
+	s.config = configStamp(s.home)
+	s.reading.err = s.guarded(func(in Input) error {
+		note, err := s.session.analyser.Read(s.ctx, in)
+		s.reading.value = &reading{note: note, whole: sync.OnceValue(func() []lang.Use { return usesOf(note) })}
+		return err
+	})
 	s.files.release()
-	if s.err == nil {
+	if s.reading.err == nil {
 		s.previous.Store(nil)
 	}
 }
 
-// analyse calls the analyser. A panic in it becomes an error: one note that
-// can't be analysed must not end the session.
-func (s *snapshot) analyse() (a analysis, err error) {
+// guarded does one part of the analysis, with others of a few at a time. A
+// panic in it becomes an error: one note that can't be analysed must not end
+// the session.
+func (s *snapshot) guarded(part func(in Input) error) (err error) {
+	select {
+	case s.session.cpu <- struct{}{}:
+		defer func() { <-s.session.cpu }()
+	case <-s.ctx.Done():
+		return context.Cause(s.ctx)
+	}
 	defer func() {
 		if r := recover(); r != nil {
 			s.session.log.Error("panic", "note", s.home.path, "value", fmt.Sprint(r), "stack", string(debug.Stack()))
@@ -146,18 +187,12 @@ func (s *snapshot) analyse() (a analysis, err error) {
 			err = cause
 		}
 	}()
-	begun := time.Now()
-	s.config = configStamp(s.home)
-	in := Input{Root: s.home.root, Path: s.home.path, Text: s.src.Text, Files: s.files, Previous: s.previous.Load()}
-	a.note, a.findings, err = s.session.analyse(s.ctx, in)
-	a.cost = time.Since(begun)
-	a.whole = sync.OnceValue(func() []lang.Use { return usesOf(a.note) })
-	return a, err
+	return part(Input{Root: s.home.root, Path: s.home.path, Text: s.src.Text, Files: s.files, Previous: s.previous.Load()})
 }
 
 // uses reports whether the note's analysis has, or may have, read the other.
 func (s *snapshot) uses(other uri.URI) bool {
-	return s.uri != other && (s.files.reads(other) || !s.finished() && refersTo(s.src.Text))
+	return s.uri != other && (s.files.reads(other) || !s.reading.finished() && refersTo(s.src.Text))
 }
 
 // refersTo reports whether a text may refer to another file.

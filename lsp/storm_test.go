@@ -19,7 +19,7 @@ import (
 )
 
 // slow is an analyser that takes a while and obeys its context.
-func slow(d time.Duration) Analyser {
+func slow(d time.Duration) atOnce {
 	return func(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
 		select {
 		case <-time.After(d):
@@ -33,7 +33,7 @@ func slow(d time.Duration) Analyser {
 // TestCancelStorm holds that each of many requests, cancelled before, while or
 // after it runs, is answered exactly once.
 func TestCancelStorm(t *testing.T) {
-	e := launch(t, Options{Analyse: slow(20 * time.Millisecond)})
+	e := launch(t, Options{Analyser: atOnce(slow(20 * time.Millisecond))})
 	e.start(pulling)
 	const uri, n = "file:///a.joule", 500
 	e.open(uri, "!")
@@ -70,7 +70,7 @@ func TestCancelStorm(t *testing.T) {
 // TestCancelStringID holds that a request with a string id can be cancelled
 // while it runs.
 func TestCancelStringID(t *testing.T) {
-	e := launch(t, Options{Analyse: slow(time.Hour)})
+	e := launch(t, Options{Analyser: atOnce(slow(time.Hour))})
 	e.start(pulling)
 	e.open("file:///a.joule", "!")
 	e.send(object{"jsonrpc": "2.0", "id": "one", "method": "textDocument/diagnostic", "params": object{"textDocument": object{"uri": "file:///a.joule"}}})
@@ -84,7 +84,7 @@ func TestCancelStringID(t *testing.T) {
 // TestDuplicateID holds that a request whose id is in use is refused and the
 // first one served.
 func TestDuplicateID(t *testing.T) {
-	e := launch(t, Options{Analyse: slow(100 * time.Millisecond)})
+	e := launch(t, Options{Analyser: atOnce(slow(100 * time.Millisecond))})
 	e.start(pulling)
 	e.open("file:///a.joule", "!")
 	for range 2 {
@@ -104,7 +104,7 @@ func TestDuplicateID(t *testing.T) {
 func TestEditsCancelDiagnosis(t *testing.T) {
 	var mu sync.Mutex
 	finished := 0
-	e := launch(t, Options{Analyse: func(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
+	e := launch(t, Options{Analyser: atOnce(func(ctx context.Context, in Input) (*lang.Note, []check.Finding, error) {
 		n, f, err := slow(20*time.Millisecond)(ctx, in)
 		if err == nil {
 			mu.Lock()
@@ -112,7 +112,7 @@ func TestEditsCancelDiagnosis(t *testing.T) {
 			mu.Unlock()
 		}
 		return n, f, err
-	}})
+	})})
 	e.start(object{})
 	const uri, n = "file:///a.joule", 300
 	e.open(uri, "!")
@@ -145,7 +145,7 @@ func TestEditsCancelDiagnosis(t *testing.T) {
 // documents, and that each close clears what was shown.
 func TestOpenAndClose(t *testing.T) {
 	before := goleak.IgnoreCurrent()
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.start(object{})
 	text := string(make([]byte, 10_000)) + "!"
 	cycle := func(from, n int) uint64 {
@@ -182,7 +182,7 @@ const role = "INKJOULE_TEST_ROLE"
 func playRole() {
 	switch os.Getenv(role) {
 	case "server":
-		if err := Serve(context.Background(), os.Stdin, os.Stdout, Options{Analyse: letters}); err != nil {
+		if err := Serve(context.Background(), os.Stdin, os.Stdout, Options{Analyser: atOnce(letters)}); err != nil {
 			os.Exit(1)
 		}
 		os.Exit(0)
@@ -202,6 +202,7 @@ func play(t *testing.T, name string) *exec.Cmd {
 // TestParentKilled holds that the server leaves within 5 s of the death of the
 // process that it was told to watch, although its input stays open.
 func TestParentKilled(t *testing.T) {
+	t.Parallel()
 	parent := play(t, "sleeper")
 	if err := parent.Start(); err != nil {
 		t.Fatal(err)

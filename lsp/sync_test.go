@@ -163,7 +163,7 @@ func TestSyncOverTheWire(t *testing.T) {
 		{"utf-32", []string{"utf-32"}, 4},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			e := launch(t, Options{Analyse: letters})
+			e := launch(t, Options{Analyser: atOnce(letters)})
 			result := e.start(object{"general": object{"positionEncodings": c.offers}})
 			if got := result["capabilities"].(object)["positionEncoding"]; got != c.name {
 				t.Fatalf("encoding %v, want %s", got, c.name)
@@ -183,7 +183,7 @@ func TestSyncOverTheWire(t *testing.T) {
 // TestUnreadableChange holds that a change that can't be read never becomes the
 // whole text.
 func TestUnreadableChange(t *testing.T) {
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.start(object{})
 	const uri = "file:///a.joule"
 	e.open(uri, "!!")
@@ -198,7 +198,7 @@ func TestUnreadableChange(t *testing.T) {
 // TestSaveFindsALostEdit holds that a text that went out of step is taken from
 // the save.
 func TestSaveFindsALostEdit(t *testing.T) {
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.start(object{})
 	const uri = "file:///a.joule"
 	e.open(uri, "!")

@@ -17,7 +17,7 @@ import (
 func (s *spot) waivers(within lang.Span) []protocol.CommandOrCodeAction {
 	var out []protocol.CommandOrCodeAction
 	rep := s.view.reporter(s.doc)
-	for _, f := range s.all.findings {
+	for _, f := range s.found {
 		rule := s.view.catalogue.Find(f.Rule)
 		if rule == nil || rule.Firm || f.IsWaived() || f.Rule == "unused-waiver" || !touches(f.Span, within) {
 			continue

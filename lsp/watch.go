@@ -217,7 +217,7 @@ func (s *session) pollOnce() {
 	v := s.now()
 	var stale []*snapshot
 	for _, doc := range v.docs {
-		if doc.finished() && !v.fresh(doc) {
+		if doc.reading.finished() && !v.fresh(doc) {
 			stale = append(stale, doc)
 		}
 	}

@@ -26,7 +26,7 @@ func (s *spot) everywhere(ctx context.Context, n *named) []found {
 	id := identityOf(s.note, n.sym)
 	var out []found
 	for _, doc := range s.view.relatives(ctx, s.doc, id) {
-		a, err := doc.analysis(ctx)
+		a, err := doc.read(ctx)
 		if err != nil {
 			continue
 		}
@@ -37,7 +37,7 @@ func (s *spot) everywhere(ctx context.Context, n *named) []found {
 	return out
 }
 
-func occurrencesIn(a *analysis, id symbolID) []occurrence {
+func occurrencesIn(a *reading, id symbolID) []occurrence {
 	return occurrencesOf(a, func(sym *lang.Symbol) bool { return identityOf(a.note, sym) == id })
 }
 

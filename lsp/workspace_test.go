@@ -44,7 +44,7 @@ func TestSurvey(t *testing.T) {
 	b := writeNote(t, dir, "sub/b.joule.md", "!")
 	writeNote(t, dir, "clean.joule", "fine")
 	writeNote(t, dir, "no-note.txt", "!!!!!")
-	e := launch(t, Options{Analyse: referring})
+	e := launch(t, Options{Analyser: atOnce(referring)})
 	e.startIn(watching, dir)
 	e.shows(b, 1) // the later one in the order of paths
 	writeNote(t, dir, "a.joule", "!!! later")
@@ -88,7 +88,7 @@ func (e *editor) lastOf(u string) []json.RawMessage {
 func TestSurveyCanBeSwitchedOff(t *testing.T) {
 	dir := t.TempDir()
 	a := writeNote(t, dir, "a.joule", "!!")
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	on := true
 	e.answer = func(m message) any {
 		if m.Method == "workspace/configuration" {
@@ -156,7 +156,7 @@ func TestRegistration(t *testing.T) {
 		{watching, []string{"workspace/didChangeWatchedFiles"}},
 		{object{"workspace": object{"didChangeConfiguration": object{"dynamicRegistration": true}}}, []string{"workspace/didChangeConfiguration"}},
 	} {
-		e := launch(t, Options{Analyse: letters})
+		e := launch(t, Options{Analyser: atOnce(letters)})
 		e.start(c.caps)
 		if c.want != nil {
 			e.await("the registration", isMethod("client/registerCapability"))
@@ -183,16 +183,18 @@ func TestRegistration(t *testing.T) {
 // TestReferredFileChangesOnDisk holds that a note follows the disk: by events,
 // and without any by looking.
 func TestReferredFileChangesOnDisk(t *testing.T) {
+	t.Parallel()
 	for _, c := range []struct {
 		name  string
 		caps  object
 		event bool
 	}{{"events", watching, true}, {"no events", object{}, false}} {
 		t.Run(c.name, func(t *testing.T) {
+			t.Parallel()
 			dir := t.TempDir()
 			other := writeNote(t, dir, "b.joule", "first")
 			note := writeNote(t, dir, "a.joule", "")
-			e := launch(t, Options{Analyse: referring})
+			e := launch(t, Options{Analyser: atOnce(referring)})
 			e.startIn(c.caps, dir)
 			e.open(note, "uses b.joule")
 			says := func(text string) {
@@ -266,7 +268,7 @@ func TestWorkspaceFolders(t *testing.T) {
 	one, two := t.TempDir(), t.TempDir()
 	a := writeNote(t, one, "a.joule", "!")
 	b := writeNote(t, two, "b.joule", "!!")
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.startIn(object{}, one)
 	e.shows(a, 1)
 	folder := func(dir string) []object { return []object{{"uri": string(uri.File(dir)), "name": "x"}} }
@@ -282,7 +284,7 @@ func TestPullAll(t *testing.T) {
 	dir := t.TempDir()
 	a := writeNote(t, dir, "a.joule", "!")
 	b := writeNote(t, dir, "b.joule", "!!")
-	e := launch(t, Options{Analyse: letters})
+	e := launch(t, Options{Analyser: atOnce(letters)})
 	e.startIn(pulling, dir)
 	e.open(a, "!!!")
 	type report struct {
@@ -350,23 +352,25 @@ func TestWorkspaceSymbols(t *testing.T) {
 // TestProgress holds that long work is told of after a second and not before,
 // and only to a client that wants it.
 func TestProgress(t *testing.T) {
+	t.Parallel()
 	for _, c := range []struct {
 		name string
 		caps object
 		each time.Duration
 		told bool
 	}{
-		{"long", object{"window": object{"workDoneProgress": true}}, 250 * time.Millisecond, true},
+		{"long", object{"window": object{"workDoneProgress": true}}, 130 * time.Millisecond, true},
 		{"short", object{"window": object{"workDoneProgress": true}}, time.Millisecond, false},
-		{"not wanted", object{}, 250 * time.Millisecond, false},
+		{"not wanted", object{}, 130 * time.Millisecond, false},
 	} {
 		t.Run(c.name, func(t *testing.T) {
+			t.Parallel()
 			dir := t.TempDir()
 			var last string
 			for i := range 6 {
 				last = writeNote(t, dir, fmt.Sprintf("%d.joule", i), "!")
 			}
-			e := launch(t, Options{Analyse: slow(c.each)})
+			e := launch(t, Options{Analyser: atOnce(slow(c.each))})
 			e.startIn(c.caps, dir)
 			e.await("the last note", func(m message) bool { return strings.Contains(string(m.Params), last) })
 			if c.told {

@@ -50,7 +50,7 @@ func serve(c *cobra.Command, w *world, log string) error {
 	}
 	err = lsp.Serve(c.Context(), w.in, out, lsp.Options{
 		Version:   versionOnly(),
-		Analyse:   lsp.NewAnalyser(all, catalogue),
+		Analyser:  lsp.NewAnalyser(all, catalogue),
 		Catalogue: catalogue,
 		Log:       slog.New(slog.NewTextHandler(w.err, &slog.HandlerOptions{Level: level})),
 	})
