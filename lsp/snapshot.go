@@ -142,6 +142,7 @@ func (s *snapshot) begin() { s.once.Do(func() { s.session.behind(s.run) }) }
 // run analyses the text, one of a few at a time.
 func (s *snapshot) run() {
 	defer close(s.checking.done)
+	defer s.files.release()
 	begun := time.Now()
 	s.readStage()
 	if s.checking.err = s.reading.err; s.checking.err != nil {
@@ -162,7 +163,6 @@ func (s *snapshot) readStage() {
 		s.reading.value = &reading{note: note, whole: sync.OnceValue(func() []lang.Use { return usesOf(note) })}
 		return err
 	})
-	s.files.release()
 	if s.reading.err == nil {
 		s.previous.Store(nil)
 	}
