@@ -104,7 +104,9 @@ func (a *analysis) enterNote(p pendingNames) {
 		a.incomplete = a.incomplete || prefix == ""
 		return
 	}
-	view := &analysis{opt: a.opt, ctx: a.ctx, cells: map[string]*cell{}, units: a.units}
+	opt := a.opt
+	opt.Previous = nil // a view lives as long as the note: it must not keep the one before
+	view := &analysis{opt: opt, ctx: a.ctx, cells: map[string]*cell{}, units: a.units}
 	for key, old := range p.note.state.cells {
 		c := foreign(old, key, "", view, p.note.Path)
 		a.renumber(c, p.note)

@@ -3,6 +3,9 @@ package lsp
 import (
 	"encoding/json"
 	"fmt"
+	"os"
+	"path/filepath"
+	"runtime"
 	"slices"
 	"strings"
 	"testing"
@@ -106,6 +109,71 @@ func BenchmarkHover(b *testing.B) {
 			spread(b, took, "hover")
 		})
 	}
+}
+
+// BenchmarkCompletion asks for the names that fit a letter. Budget: 100 ms.
+func BenchmarkCompletion(b *testing.B) {
+	for _, n := range sizes {
+		b.Run(fmt.Sprint(n), func(b *testing.B) {
+			d := seat(b, n)
+			line, _ := d.middle()
+			params := object{"textDocument": object{"uri": d.uri}, "position": at(line+3, len("    p_1"))}
+			var took []time.Duration
+			for range b.N {
+				d.forget()
+				begun := time.Now()
+				var c completed
+				d.must("textDocument/completion", params, &c)
+				took = append(took, time.Since(begun))
+			}
+			spread(b, took, "completion")
+		})
+	}
+}
+
+// BenchmarkWorkspace reviews 1,000 notes of 100 statements that are not open,
+// and reports the time and the memory afterwards. Budget: below 200 MB
+// resident. Run it with -benchtime=1x.
+func BenchmarkWorkspace(b *testing.B) {
+	dir := b.TempDir()
+	text := strings.Replace(longNote(100), "U_0/d", "U_0/nothing", 1) // one finding each
+	const n = 1000
+	for i := range n {
+		if err := os.WriteFile(filepath.Join(dir, fmt.Sprintf("%04d.joule", i)), []byte(text), 0o644); err != nil {
+			b.Fatal(err)
+		}
+	}
+	for range b.N {
+		e := launch(b, realOptions(b))
+		begun := time.Now()
+		e.startIn(object{}, dir)
+		e.await("the last note", func(m message) bool { return strings.Contains(string(m.Params), fmt.Sprintf("%04d.joule", n-1)) })
+		b.ReportMetric(time.Since(begun).Seconds(), "s-survey")
+		e.forget()
+		e.must("workspace/symbol", object{"query": "w_7"}, nil)
+		begun = time.Now()
+		e.must("workspace/symbol", object{"query": "w_7"}, nil)
+		b.ReportMetric(float64(time.Since(begun).Milliseconds()), "ms-symbols")
+		runtime.GC()
+		var m runtime.MemStats
+		runtime.ReadMemStats(&m)
+		b.ReportMetric(float64(m.HeapAlloc)/1e6, "MB-heap")
+		b.ReportMetric(resident(), "MB-resident")
+		b.ReportMetric(0, "ns/op")
+		e.quit()
+	}
+}
+
+// resident is the memory of this process in MB, where the system tells it.
+func resident() float64 {
+	raw, _ := os.ReadFile("/proc/self/status")
+	for line := range strings.Lines(string(raw)) {
+		var kB float64
+		if n, _ := fmt.Sscanf(line, "VmRSS: %f kB", &kB); n == 1 {
+			return kB / 1000
+		}
+	}
+	return 0
 }
 
 // BenchmarkTyping replays 200 edits at intervals of 20 ms, each with a hover,

@@ -175,6 +175,41 @@ func TestOpenAndClose(t *testing.T) {
 	goleak.VerifyNone(t, before)
 }
 
+// TestTenThousandEdits holds that memory stays flat while two notes, of which
+// one refers to the other, are edited in turn.
+func TestTenThousandEdits(t *testing.T) {
+	dir := t.TempDir()
+	other := writeNote(t, dir, "other.joule", "")
+	note := writeNote(t, dir, "note.joule", "")
+	e := launch(t, realOptions(t))
+	e.startIn(object{}, dir)
+	e.open(other, "Other\n\n    a = 1 m\n")
+	e.open(note, "Note\n\n    uses \"other.joule\"\n    b = 2*a = 2 m\n")
+	version := 1
+	edits := func(n int) uint64 {
+		for range n {
+			version++
+			e.change(other, version, object{"range": between(2, 8, 2, 9), "text": fmt.Sprint(version % 10)})
+			e.change(note, version, object{"range": between(3, 8, 3, 9), "text": fmt.Sprint(version % 10)})
+			if version%500 == 0 {
+				e.diagnosed(note, version)
+				e.forget()
+			}
+		}
+		e.diagnosed(other, version)
+		e.forget()
+		runtime.GC()
+		var m runtime.MemStats
+		runtime.ReadMemStats(&m)
+		return m.HeapAlloc
+	}
+	base := edits(1000)
+	if grown := edits(5000); grown > base+base/10+1<<20 {
+		t.Errorf("the heap grew from %d to %d bytes", base, grown)
+	}
+	e.quit()
+}
+
 // role names the environment variable that makes a process of this test play
 // another part.
 const role = "INKJOULE_TEST_ROLE"
