@@ -2,6 +2,7 @@ package lsp
 
 import (
 	"context"
+	"slices"
 	"strings"
 
 	"go.lsp.dev/protocol"
@@ -128,19 +129,28 @@ func (s *spot) write(within lang.Span, kind protocol.CodeActionKind, fits func(h
 	return out
 }
 
-// fixAll makes all corrections that do not touch each other. Where there are
-// none there is no action: an empty one would make each save an edit.
+// fixAll corrects the writing of statements that could not be read, where it is
+// clear what was meant. It may run at each save, so it never touches what has a
+// meaning: a stated result that differs, or a name that is not known, is for a
+// person to look at. Where there is nothing to do there is no action: an empty
+// one would make each save an edit.
 func (s *spot) fixAll(lang.Span) []protocol.CommandOrCodeAction {
 	var edits []lang.Edit
 	for _, f := range s.found {
-		if f.Fix != nil && !f.IsWaived() && !overlapsAny(edits, f.Fix.Edits) {
+		if f.Rule == "syntax" && f.Fix != nil && !guesses(f.Fix) && !overlapsAny(edits, f.Fix.Edits) {
 			edits = append(edits, f.Fix.Edits...)
 		}
 	}
 	if len(edits) == 0 {
 		return nil
 	}
-	return []protocol.CommandOrCodeAction{s.action("Correct all that has one safe correction", fixAllKind, edits)}
+	return []protocol.CommandOrCodeAction{s.action("Correct the writing", fixAllKind, edits)}
+}
+
+// guesses reports whether a correction may miss what was meant: a comma in a
+// number stands for a point or for nothing.
+func guesses(f *lang.Fix) bool {
+	return slices.ContainsFunc(f.Edits, func(e lang.Edit) bool { return e.New == "." })
 }
 
 func overlapsAny(all, more []lang.Edit) bool {

@@ -115,21 +115,38 @@ func TestFixes(t *testing.T) {
 		if len(one) != 1 || one[0].Title != "Write b" || len(one[0].Diagnostics) != 1 || one[0].Diagnostics[0].Code != "swap" {
 			t.Fatalf("got %s", show(one))
 		}
-		all := d.actions("x |a", "source.fixAll")
-		if len(all) != 1 || all[0].Kind != "source.fixAll.joule" {
-			t.Fatalf("got %s", show(all))
-		}
-		edits := all[0].Edit.Changes[d.uri]
+		edits := one[0].Edit.Changes[d.uri]
 		if _, rich := caps["workspace"]; rich {
-			edits = all[0].Edit.DocumentChanges[0].Edits
+			edits = one[0].Edit.DocumentChanges[0].Edits
 		}
-		if text := d.applied(edits); text != "x b y b z" {
+		if text := d.applied(edits); text != "x b y a z" {
 			t.Errorf("the note becomes %q", text)
 		}
-		d.edit(d.uri, 2, "x")
-		d.text = "x"
-		if none := d.actions("|x", "source.fixAll"); len(none) != 0 {
-			t.Errorf("an action that does nothing: %s", show(none))
+		d.quit()
+	}
+}
+
+// TestFixAll holds that the writing is corrected, and that nothing is touched
+// that may have a meaning.
+func TestFixAll(t *testing.T) {
+	for _, c := range []struct{ note, want string }{
+		{"Fix\n\n    a = 12kV\n    b := 3 m\n    c = a*2 = 24 kV\n", "Fix\n\n    a = 12 kV\n    b = 3 m\n    c = a*2 = 24 kV\n"},
+		{"Fix\n\n    a = 2 m\n    c = a*2 = 5 m\n", ""},       // a result that differs
+		{"Fix\n\n    area = 2 m\n    c = aera*2 = 4 m\n", ""}, // a name that is not known
+		{"Fix\n\n    a = 1,5 mm\n    b = 1,000 ohm\n", ""},    // a comma
+		{"Fix\n\n    a = 2 m = 2 m\n", ""},
+	} {
+		d := sit(t, able, c.note)
+		got := d.actions("|Fix", "source.fixAll")
+		switch {
+		case c.want == "" && len(got) > 0:
+			t.Errorf("%q: %s", c.note, show(got))
+		case c.want != "" && len(got) != 1:
+			t.Errorf("%q: %s", c.note, show(got))
+		case c.want != "":
+			if text := d.applied(got[0].Edit.DocumentChanges[0].Edits); text != c.want {
+				t.Errorf("%q becomes %q", c.note, text)
+			}
 		}
 		d.quit()
 	}

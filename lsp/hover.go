@@ -44,6 +44,9 @@ func hover(ctx context.Context, v *view, p *protocol.HoverParams) (any, error) {
 // card describes what is at the spot and where that stands; nil for nothing.
 func (s *spot) card() (*card, lang.Span) {
 	if u := s.use(); u != nil {
+		if c := s.derivedCard(u); c != nil {
+			return c, u.Span
+		}
 		return describe(s.note, u.Symbol), u.Span
 	}
 	stmt := s.stmt()
@@ -57,6 +60,28 @@ func (s *spot) card() (*card, lang.Span) {
 		}
 	}
 	return s.verdict(stmt)
+}
+
+// derivedCard describes a property that follows from the one that the medium
+// states, as mica.eps from mica.eps_r; nil for any other use.
+func (s *spot) derivedCard(u *lang.Use) *card {
+	part := s.lastPart(u.Span)
+	if u.Define || u.Symbol.Role != lang.RoleProperty || u.Stmt == nil || lang.CanonicalName(s.text(part)) == lastKey(u.Symbol.Key) {
+		return nil
+	}
+	for _, t := range s.path() {
+		if _, ok := t.(*lang.Member); !ok || u.Stmt.Abs(t) != u.Span {
+			continue
+		}
+		c := &card{head: s.text(u.Span)}
+		if facts, ok := s.note.FactsOf(u.Stmt, t); ok {
+			describeFacts(c, &lang.Symbol{Role: lang.RoleProperty, Facts: facts})
+		}
+		c.line("follows from", titleOf(u.Symbol))
+		c.line("source", u.Symbol.Per)
+		return c
+	}
+	return nil
 }
 
 // nodeCard describes the i-th node of a path where that has a meaning of its

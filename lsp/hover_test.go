@@ -23,7 +23,7 @@ func TestHover(t *testing.T) {
 		{"w, peak", "w", []string{"w = 616(16) J/m^3", "*standard uncertainty*: 16 J/m^3", "*worst case*", "*kind*: energy density", "*qualifier*: peak", "*media*: mica"}},
 		{"1/2 * |D·E", "D", []string{"D = ", "electric flux density"}},
 		{"U, peak", "U", []string{"12.00(10) kV", "*source*: nameplate", "voltage"}},
-		{"mica.|eps*E", "mica.eps", []string{"mica.eps_r", "supplier sheet"}},
+		{"mica.|eps*E", "mica.eps", []string{"mica.eps\n", "permittivity", "follows from*: mica.eps\\_r = diag(6.900", "supplier sheet"}},
 		{"D in |mica", "mica", []string{"medium mica", "*stated*: linear, uniaxial, homogeneous, lossy", "eps\\_r", "E\\_bd"}},
 		{"2*p|i", "pi", []string{"constant"}},
 		{"N = om|ega", "omega", []string{"ω = 314.2 rad/s"}},

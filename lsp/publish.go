@@ -25,8 +25,11 @@ func (s *session) edited(doc *snapshot) {
 // touched has documents diagnosed that have not changed themselves, but
 // something that they refer to.
 func (s *session) touched(docs []*snapshot) {
-	if len(docs) > 0 && s.now().client.pulls {
-		s.refresh()
+	if len(docs) == 0 {
+		return
+	}
+	s.refresh()
+	if s.now().client.pulls {
 		return
 	}
 	for _, doc := range docs {

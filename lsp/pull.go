@@ -73,8 +73,8 @@ func fingerprint(items []protocol.Diagnostic) (string, error) {
 	return fmt.Sprintf("%x", h.Sum64()), nil
 }
 
-// refresh asks a pulling client to ask again, once for all that changes within
-// a moment.
+// refresh asks the client to ask again for what it shows, once for all that
+// changes within a moment: diagnostics where it pulls them, and the hints.
 func (s *session) refresh() {
 	if !s.refreshing.CompareAndSwap(false, true) {
 		return
@@ -86,8 +86,12 @@ func (s *session) refresh() {
 			return
 		}
 		s.refreshing.Store(false)
-		if err := s.peer.ask(s.ctx, protocol.MethodWorkspaceDiagnosticRefresh, nil, nil); err != nil && s.ctx.Err() == nil {
-			s.log.Warn("the client did not refresh its diagnostics", "error", err)
+		c := s.now().client
+		if c.pulls {
+			s.say(protocol.MethodWorkspaceDiagnosticRefresh, nil, nil)
+		}
+		if c.can("workspace.inlayHint.refreshSupport") {
+			s.say(protocol.MethodWorkspaceInlayHintRefresh, nil, nil)
 		}
 	})
 }
