@@ -14,7 +14,8 @@
 // # Invariants
 //
 //   - A snapshot never changes. An edit makes a new one and cancels the work on
-//     the one before.
+//     the one before. Its note comes first, its findings after that: most
+//     requests wait for the note alone.
 //   - Offsets are bytes everywhere; only mapper.go knows what a column is.
 //   - A diagnostic is never sent for a text older than the newest one received.
 //   - A client has one channel of diagnostics: it pulls them, or they are pushed.
