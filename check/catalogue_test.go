@@ -13,9 +13,9 @@ import (
 const languageNames = `syntax unknown-name unknown-unit unknown-kind unknown-function unknown-rule unknown-property unknown-note
 name-defined-twice constant-redefined cyclic-definition dimension-mismatch shape-mix dimensioned-argument
 temperature-offset stated-result-differs substituted-member-differs integral-diverges integral-not-converged
-no-root table-outside-rows division-by-zero over-budget criterion-fails check-fails field-of-another-medium
+no-root table-outside-rows division-by-zero over-budget criterion-fails check-fails
 unread-calculation unit-hides-name criterion-within-uncertainty assumption-fails
-outside-stated-range unused-waiver unused-definition input-without-source unasked-result`
+outside-stated-range several-roots unused-waiver unused-definition input-without-source unasked-result`
 
 func TestCatalogueExplainsEveryFindingOfTheLanguage(t *testing.T) {
 	c, err := NewCatalogue(nil)

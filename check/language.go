@@ -267,33 +267,5 @@ func physicsFaults() []*Rule {
     T = 25 °C + 5 K = 30 °C
 `},
 		}),
-		graded(lang.Error, Rule{
-			Name:    "field-of-another-medium",
-			Title:   "A field in one medium meets the property of another",
-			Sees:    "A product of E or H, bound to one medium, with a permittivity, permeability or conductivity of another, where no property of its own medium stands in the product. D and B may cross: their normal components are continuous.",
-			Formula: "D = ε₁E₁ in medium 1, D = ε₂E₂ in medium 2.",
-			Remedy:  "Use the property of the field's own medium.",
-			Source:  "Jackson, Classical Electrodynamics, 3rd ed., I.5 (from memory)",
-			Wrong: Example{`
-    medium oil: linear, isotropic, homogeneous, lossless, nondispersive
-        eps_r = 2.2
-    medium board: linear, isotropic, homogeneous, lossless, nondispersive
-        eps_r = 4.4
-    E_o in oil, electric field strength = 2 kV/mm
-    D = board.eps*E_o = 77.92 uC/m^2
-    E_b in board = D/board.eps = 2.0 kV/mm
-    k = oil.eps_r/board.eps_r = 0.50
-`},
-			Right: Example{`
-    medium oil: linear, isotropic, homogeneous, lossless, nondispersive
-        eps_r = 2.2
-    medium board: linear, isotropic, homogeneous, lossless, nondispersive
-        eps_r = 4.4
-    E_o in oil, electric field strength = 2 kV/mm
-    D = oil.eps*E_o = 38.96 uC/m^2
-    E_b in board = D/board.eps = 1.0 kV/mm
-    k = oil.eps_r/board.eps_r = 0.50
-`},
-		}),
 	}
 }

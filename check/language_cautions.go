@@ -37,6 +37,18 @@ Field between the plates:
 `},
 		}),
 		graded(lang.Caution, Rule{
+			Name:   "several-roots",
+			Title:  "An equation has several roots in its range",
+			Sees:   "A `solve` whose sampled range holds more than one root. The least is taken.",
+			Remedy: "Narrow the range to the root that is meant.",
+			Wrong: Example{`
+    x = solve(x^2 = 2 for x from -2 to 2) = -1.414
+`},
+			Right: Example{`
+    x = solve(x^2 = 2 for x from 0 to 2) = 1.414
+`},
+		}),
+		graded(lang.Caution, Rule{
 			Name:   "outside-stated-range",
 			Title:  "A function is used outside its domain",
 			Sees:   "A call with an argument outside the range that the function's definition states by `for … from … to …`.",

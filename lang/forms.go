@@ -217,8 +217,3 @@ func (e *elab) severalRoots() {
 func infinity() typed {
 	return typed{Facts: number(), plain: true, code: eval.Num(math.Inf(1))}
 }
-
-// notYet says that a part of the language is read and not yet evaluated.
-func (e *elab) notYet(at Tree, what string) {
-	e.report(Fault{Rule: "not-evaluated-yet", Severity: Advice, Span: at.Place(), Message: fmt.Sprintf("%s is not evaluated yet", what)})
-}
