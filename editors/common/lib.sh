@@ -67,30 +67,30 @@ wait_for() {
     done
 }
 
-# work_dir: a temporary folder in $work, removed at the end with the processes
-# in $children (process groups that the script started itself).
-children=()
+# work_dir: a temporary folder in $work. At the end of the script it is removed,
+# and every process that the script started, however deep, is ended: each carries
+# $INKJOULE_RUN in its environment.
 work_dir() {
     work=$(mktemp -d "${TMPDIR:-/tmp}/inkjoule-editor.XXXXXX")
+    export INKJOULE_RUN=$work
     trap clean_up EXIT
     trap 'exit 130' INT TERM HUP
 }
 clean_up() {
-    local p
-    for p in "${children[@]}"; do kill -- "-$p" 2>/dev/null || true; done
-    for p in "${children[@]}"; do
-        wait_for 5 group_gone "$p" || kill -9 -- "-$p" 2>/dev/null || true
-    done
-    declare -F end_editor >/dev/null && end_editor
-    rm -rf "$work"
+    end_screen
+    none_started || kill $(started) 2>/dev/null || true
+    wait_for 5 none_started || kill -9 $(started) 2>/dev/null || true
+    rm -rf "$work" 2>/dev/null || { sleep 1; rm -rf "$work"; }
 }
-group_gone() { ! kill -0 -- "-$1"; }
+started() {
+    (unset INKJOULE_RUN; grep -lazs "^INKJOULE_RUN=$work\$" /proc/[0-9]*/environ | sed 's#/proc/\([0-9]*\)/.*#\1#') || true
+}
+none_started() { [ -z "$(started)" ]; }
 
-# start LOG COMMAND...: in the background, in a process group of its own.
+# start LOG COMMAND...: in the background, apart from this terminal.
 start() {
     local log=$1; shift
     setsid "$@" >"$log" 2>&1 </dev/null &
-    children+=($!)
 }
 
 # build_binary: the program under test, in $INKJOULE; INKJOULE_BIN names another one.
@@ -104,10 +104,10 @@ build_binary() {
 prepare() {
     work_dir
     build_binary
-    export INKJOULE INKJOULE_NOTE=$work/notes/demo.joule
-    mkdir -p "$work/notes"
+    export INKJOULE INKJOULE_NOTE=$work/notes/demo.joule INKJOULE_REVIEW=$work/review.json INKJOULE_DUMP=$work/dump
+    mkdir -p "$work/notes" "$INKJOULE_DUMP"
     cp "$EDITORS/testdata/demo.joule" "$INKJOULE_NOTE"
-    review "$INKJOULE_NOTE" >"$work/review.json"
+    review "$INKJOULE_NOTE" >"$INKJOULE_REVIEW"
 }
 
 # review NOTE: the note's findings and values; findings end with status 1, which is no failure here.
@@ -120,4 +120,47 @@ review() {
 # free_port: a TCP port of the loopback address that nobody uses now.
 free_port() {
     node -e 'const s = require("net").createServer().listen(0, "127.0.0.1", () => { console.log(s.address().port); s.close(); })'
+}
+
+# compare_dumps EDITOR LOG: holds what a script inside the editor wrote to
+# $INKJOULE_DUMP (now.json; after.json and edited.joule) against review.
+compare_dumps() {
+    local editor=$1 log=$2
+    if [ -s "$INKJOULE_DUMP/error.txt" ]; then
+        bad "$editor: the script in the editor met an error"; cat "$INKJOULE_DUMP/error.txt"; return
+    fi
+    if [ ! -s "$INKJOULE_DUMP/now.json" ] || [ ! -s "$INKJOULE_DUMP/after.json" ]; then
+        bad "$editor: the script in the editor answered"; tail -20 "$log"; return
+    fi
+    count node "$EDITORS/common/compare.mjs" "$editor" "$INKJOULE_NOTE" "$INKJOULE_REVIEW" "$INKJOULE_DUMP/now.json"
+    review "$INKJOULE_DUMP/edited.joule" >"$work/edited.json"
+    count node "$EDITORS/common/compare.mjs" "$editor, after an edit" "$INKJOULE_DUMP/edited.joule" "$work/edited.json" "$INKJOULE_DUMP/after.json"
+}
+
+# start_screen COMMAND: in a terminal of 130 x 44 that the script can read and type into.
+start_screen() {
+    socket=inkjoule-$$
+    tmux -L "$socket" -f /dev/null new-session -d -x 130 -y 44 "env TERM=screen-256color LANG=C.UTF-8 LC_ALL=C.UTF-8 $1"
+}
+send_keys() { tmux -L "$socket" send-keys "$@" 2>/dev/null || true; }
+screen() { tmux -L "$socket" capture-pane -p; }
+on_screen() { screen | grep -qF -- "$1"; }
+# on_screen_line A B: one line of the screen holds A, and B's beginning after it.
+on_screen_line() { screen | grep -F -- "$1" | grep -qF -- "${2:0:16}"; }
+# screen_shot NAME: the screen as text, among the artefacts.
+screen_shot() { mkdir -p "$INKJOULE_ARTEFACTS"; screen >"$INKJOULE_ARTEFACTS/$1.txt" || true; }
+end_screen() {
+    [ -z "${socket:-}" ] || tmux -L "$socket" kill-server 2>/dev/null || true
+}
+
+# The first value that an editor shows, the first finding's line, message and source text.
+first_value() { node "$EDITORS/common/facts.mjs" "$INKJOULE_NOTE" "$INKJOULE_REVIEW" value; }
+first_finding() { node "$EDITORS/common/facts.mjs" "$INKJOULE_NOTE" "$INKJOULE_REVIEW" "$1"; }
+
+# server_gone: no language server that this script's editor started is left.
+server_gone() {
+    local p
+    for p in $(started); do
+        ! tr '\0' ' ' <"/proc/$p/cmdline" 2>/dev/null | grep -qF "$INKJOULE serve" || return 1
+    done
 }
