@@ -17,7 +17,7 @@ packages=(
     neovim vim-nox vim-ale vim-youcompleteme tmux           # on a terminal
     emacs-nox elpa-eglot
     kate xvfb openbox xdotool imagemagick dbus dbus-x11     # on an X display
-    at-spi2-core python3-pyatspi                            # to read Kate's lists
+    at-spi2-core python3-pyatspi libkf5syntaxhighlighting-tools                            # to read what Kate shows
     curl ca-certificates unzip
 )
 

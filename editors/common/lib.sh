@@ -106,7 +106,8 @@ prepare() {
     build_binary
     export INKJOULE INKJOULE_NOTE=$work/notes/demo.joule INKJOULE_REVIEW=$work/review.json INKJOULE_DUMP=$work/dump
     mkdir -p "$work/notes" "$INKJOULE_DUMP"
-    cp "$EDITORS/testdata/demo.joule" "$INKJOULE_NOTE"
+    pristine=$EDITORS/testdata/demo.joule
+    cp "$pristine" "$INKJOULE_NOTE"
     review "$INKJOULE_NOTE" >"$INKJOULE_REVIEW"
 }
 
@@ -132,7 +133,8 @@ compare_dumps() {
     if [ ! -s "$INKJOULE_DUMP/now.json" ] || [ ! -s "$INKJOULE_DUMP/after.json" ]; then
         bad "$editor: the script in the editor answered"; tail -20 "$log"; return
     fi
-    count node "$EDITORS/common/compare.mjs" "$editor" "$INKJOULE_NOTE" "$INKJOULE_REVIEW" "$INKJOULE_DUMP/now.json"
+    count node "$EDITORS/common/compare.mjs" "$editor" "$pristine" "$INKJOULE_REVIEW" "$INKJOULE_DUMP/now.json"
+    check "$editor: a line was deleted" test "$(wc -l <"$INKJOULE_DUMP/edited.joule")" = $(($(wc -l <"$pristine") - 1))
     review "$INKJOULE_DUMP/edited.joule" >"$work/edited.json"
     count node "$EDITORS/common/compare.mjs" "$editor, after an edit" "$INKJOULE_DUMP/edited.joule" "$work/edited.json" "$INKJOULE_DUMP/after.json"
 }
@@ -163,4 +165,11 @@ server_gone() {
     for p in $(started); do
         ! tr '\0' ' ' <"/proc/$p/cmdline" 2>/dev/null | grep -qF "$INKJOULE serve" || return 1
     done
+}
+
+# free_display: the number of an X display that nobody uses now.
+free_display() {
+    local n=70
+    while [ -e "/tmp/.X11-unix/X$n" ] || [ -e "/tmp/.X$n-lock" ]; do n=$((n + 1)); done
+    echo $n
 }
