@@ -6,6 +6,7 @@
 // The dump is what a script inside the editor wrote:
 //   {columns: "utf-8" | "utf-16" | "utf-32",   what the editor counts
 //    diagnostics: [{line, column, endLine, endColumn, rule, severity, message}],
+//                                               ("caution or advice" where it knows two grades only)
 //    hints: [{line, text}],                     computed values shown in the text
 //    hovers: [{name, text}]}                    what a hover over a name's definition says
 // Lines and columns are 1-based, ends exclusive. A key that is absent is not
@@ -54,7 +55,7 @@ function differences(shown, expected) {
 function findingLines(list, parts, column) {
   return list.map((f) => {
     const out = [f.rule];
-    if (parts.severity) out.push(f.severity);
+    if (parts.severity) out.push(parts.two && f.severity !== 'error' ? 'caution or advice' : f.severity);
     out.push(`${f.line}:${column(f.line, f.column)}`);
     if (parts.end) out.push(`to ${f.endLine}:${column(f.endLine, f.endColumn)}`);
     return out.join(' ');
@@ -63,7 +64,11 @@ function findingLines(list, parts, column) {
 
 function compareFindings() {
   const one = dump.diagnostics[0] ?? {};
-  const parts = { severity: 'severity' in one, end: 'endColumn' in one };
+  const parts = {
+    severity: 'severity' in one,
+    two: dump.diagnostics.some((d) => d.severity === 'caution or advice'),
+    end: 'endColumn' in one,
+  };
   const shown = findingLines(dump.diagnostics, parts, codePoints);
   const expected = findingLines(review.findings, parts, (_, column) => column);
   const what = ['rule', parts.severity && 'severity', 'start', parts.end && 'end'].filter(Boolean).join(', ');
@@ -92,7 +97,7 @@ function statesNothing(value) {
 }
 
 function compareHints() {
-  const expected = review.values.filter((v) => !v.input && statesNothing(v));
+  const expected = review.values.filter((v) => !v.input && v.shown && statesNothing(v));
   const problems = [];
   for (const v of expected) {
     const here = dump.hints.filter((h) => h.line === v.line);
@@ -111,7 +116,7 @@ function compareHovers() {
   for (const h of dump.hovers) {
     const value = review.values.find((v) => v.name === h.name);
     if (!value) problems.push(`review knows no value ${h.name}`);
-    else if (!plain(h.text).includes(plain(value.shown))) {
+    else if (value.shown && !plain(h.text).includes(plain(value.shown))) {
       problems.push(`${h.name}: hover lacks "${value.shown}": ${JSON.stringify(h.text)}`);
     }
   }

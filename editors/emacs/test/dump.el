@@ -78,7 +78,8 @@
         (goto-char (point-min))
         (forward-line (1- (alist-get 'line (car (last (alist-get 'findings review))))))
         (delete-region (point) (line-beginning-position 2))
-        (run-hooks 'post-command-hook)
+        ;; Eglot tells the server of a change once Emacs is idle; a batch run never is.
+        (eglot--signal-textDocument/didChange)
         (settle now))
       (dump "after.json" `(diagnostics . ,(diagnostics)) `(hints . ,(hints)))
       (let ((text (buffer-string)))

@@ -106,15 +106,15 @@ def row_height(tree, x, top):
 
 
 def step_through(tree):
-    """Clicks down the list and gives (entry, line, column, y), one for each finding."""
+    """Clicks down the list and gives (entry, line, column), one for each finding."""
     box = tree.queryComponent().getExtents(pyatspi.DESKTOP_COORDS)
     x = box.x + 140
     height = row_height(tree, x, box.y)
     steps = []
-    for row in range(1, len(findings(tree)) + 1):
-        y = int(box.y + (row + 0.5) * height)
-        click(x, y)
-        steps.append((selected(tree), *cursor(), y))
+    for row in range(1, len(entries(tree))):
+        click(x, int(box.y + (row + 0.5) * height))
+        if FINDING.match(selected(tree)):  # else it is what to write instead, below its finding
+            steps.append((selected(tree), *cursor()))
     return steps
 
 
@@ -131,7 +131,7 @@ def delete_line(line):
 
 def dump(name, steps):
     out = []
-    for entry, line, column, _ in steps:
+    for entry, line, column in steps:
         parts = FINDING.match(entry)
         out.append({"line": line, "column": column, "rule": parts["rule"], "message": parts["message"]})
     with open(os.path.join(DUMP, name), "w", encoding="utf-8") as file:

@@ -17,9 +17,10 @@ let g:ale_hover_to_preview = 1
 
 let s:ale = {}
 
-" ALE takes the server's UTF-16 columns as they are; its ends are inclusive.
+" ALE takes the server's UTF-16 columns as they are; its ends are inclusive, and
+" it shows advice as a warning.
 function! s:ale.Diagnostics() abort
-  let l:grades = {'E': 'error', 'W': 'caution', 'I': 'advice'}
+  let l:grades = {'E': 'error', 'W': 'caution or advice'}
   return map(copy(get(get(g:ale_buffer_info, bufnr('%'), {}), 'loclist', [])), {_, d -> {
   \   'line': d.lnum, 'column': d.col, 'endLine': d.end_lnum, 'endColumn': d.end_col + 1,
   \   'rule': get(d, 'code', ''), 'severity': l:grades[d.type], 'message': get(d, 'detail', d.text)}})

@@ -48,7 +48,7 @@ async function start() {
       { scheme: 'file', language: 'joule' },
       { scheme: 'untitled', language: 'joule' },
     ],
-    middleware: { provideInlayHints },
+    middleware: { provideInlayHints, handleDiagnostics, provideDiagnostics },
     initializationFailedHandler: () => false,
   });
   try {
@@ -62,6 +62,25 @@ async function start() {
 /** Values at line ends, unless the user switched them off. */
 function provideInlayHints(document, range, token, next) {
   return setting('hints.results', document) === false ? [] : next(document, range, token);
+}
+
+/** Diagnostics that the server sends by itself. */
+function handleDiagnostics(uri, diagnostics, next) {
+  diagnostics.forEach(nameRuleOnce);
+  next(uri, diagnostics);
+}
+
+/** Diagnostics that VS Code asks for. */
+async function provideDiagnostics(document, previousResultId, token, next) {
+  const report = await next(document, previousResultId, token);
+  if (report?.kind === 'full') report.items.forEach(nameRuleOnce);
+  return report;
+}
+
+/** The server ends a message's first line with the rule's name, which VS Code shows beside each message anyway. */
+function nameRuleOnce(diagnostic) {
+  const rule = diagnostic.code?.value ?? diagnostic.code;
+  diagnostic.message = diagnostic.message.replace(` [${rule}]`, '');
 }
 
 function refreshHints() {
