@@ -1,7 +1,7 @@
 // What a reply must look like. Each function gives a list of complaints.
 import { protocol } from './session.mjs';
 
-const { Diagnostic, DocumentSymbol, FoldingRange, InlayHint, Location, Range, SelectionRange, SymbolInformation, TextEdit, WorkspaceEdit } = protocol;
+const { Diagnostic, DocumentSymbol, FoldingRange, InlayHint, Location, Range, SelectionRange, TextEdit, WorkspaceEdit } = protocol;
 
 /** A range must lie in the document, forwards, and never inside a character. */
 export function range(document, r, what = 'range') {
@@ -54,7 +54,7 @@ export function symbols(document, list) {
 }
 
 export const workspaceSymbols = (list) => each(list, 'workspace symbols', (s) =>
-  need(SymbolInformation.is(s) || (typeof s.name === 'string' && typeof s.location?.uri === 'string'), `no symbol: ${JSON.stringify(s)}`));
+  need(typeof s.name === 'string' && typeof s.kind === 'number' && typeof s.location?.uri === 'string', `no symbol: ${JSON.stringify(s)}`));
 
 export const locations = (document, list) => each([list].flat(), 'locations', (l) => {
   const [uri, r] = l?.targetUri ? [l.targetUri, l.targetSelectionRange] : [l?.uri, l?.range];

@@ -1,6 +1,6 @@
 #!/usr/bin/env bash
 # Opens a faulty note in Vim with ALE and with YouCompleteMe: what they show must be
-# what review says. Usage: run.sh [syntax] [ale] [ycm]     (default: all)
+# what review says. Usage: run.sh [syntax] [ale] [ycm]     (default: syntax and ale)
 set -euo pipefail
 cd "$(dirname "$0")"
 . ../../common/lib.sh
@@ -53,7 +53,7 @@ leave() {
     end_screen
 }
 
-for part in "${@:-syntax ale ycm}"; do
+for part in "${@:-syntax ale}"; do
     for p in $part; do "$p"; done
 done
 finish
