@@ -45,6 +45,7 @@ type work struct {
 	hinted bool          // a fault may name the nearest of all names: it holds for those names only
 	pi     int           // power of π in a plain number's value, for 2π·Hz
 	grad   eval.Gradient // of the value with respect to the note's uncertain inputs
+	forms  *keptForms    // normal forms, built when a rule asks
 	from   []kind.ID     // kinds that went in, where the cell has none of its own
 }
 
@@ -53,7 +54,7 @@ var noWork = &work{}
 
 // begin gives the cell work of its own to write into.
 func (c *cell) begin() {
-	c.work = &work{}
+	c.work = &work{forms: &keptForms{}}
 	if _, whole := c.tree.(*Definition); whole && c.owner == nil && c.stmt != nil {
 		c.facts = make([]Facts, 0, c.stmt.Nodes)
 	}

@@ -3,6 +3,7 @@ package lang
 import (
 	"fmt"
 	"math/big"
+	"reflect"
 	"strings"
 
 	"inkjoule/lang/eval"
@@ -11,8 +12,9 @@ import (
 
 // This file turns expressions into their normal form.
 
-// Expand tells which names a form looks through. A name that it does not look
-// through stays an atom.
+// Expand tells which names a form looks through, by what the symbol is and
+// carries alone. A name that it does not look through stays an atom. Forms are
+// kept by the function, so it must not be a closure over anything that varies.
 type Expand func(*Symbol) bool
 
 // UpToDeclared looks through names that have no declared kind of their own.
@@ -35,12 +37,23 @@ func (n *Note) Form(s *Symbol, x Expr, expand Expand) *Form {
 	return b.form(x)
 }
 
-// Normal is the normal form of what the symbol's definition says first.
-func (n *Note) Normal(s *Symbol, expand Expand) *Form {
-	if s.Def == nil || len(s.Def.Members) == 0 || len(s.Def.Params) > 0 {
+// Normal is the normal form of what the symbol's definition says first. It is
+// built once for each way of looking through names, and kept as long as the
+// definition and all that it needs stay the same.
+func (n *Note) Normal(s *Symbol, expand Expand) *Form { return n.normal(s, expand, 0) }
+
+func (n *Note) normal(s *Symbol, expand Expand, depth int) *Form {
+	c := n.state.cellOf(s)
+	if c == nil || s.Def == nil || len(s.Def.Members) == 0 || len(s.Def.Params) > 0 {
 		return nil
 	}
-	return n.Form(s, s.Def.Members[0], expand)
+	key := reflect.ValueOf(expand).Pointer()
+	if f, ok := c.forms.get(n, key); ok {
+		return f
+	}
+	f := (&former{n: n, c: c, expand: expand, depth: depth}).form(s.Def.Members[0])
+	c.forms.put(key, f)
+	return f
 }
 
 // StatementForm gives the normal form of any expression of a statement, nil
@@ -167,8 +180,7 @@ func (b *former) symbol(s *Symbol) *Form {
 	c := b.n.state.cellOf(s)
 	plain := c != nil && c.plain && s.Facts.KindBy != Declared
 	if (b.expand(s) || plain) && s.Role == RoleQuantity && s.Def != nil && len(s.Def.Members) > 0 && b.depth < maxLookThrough && !c.cyclic && (plain || !s.Input) {
-		inner := &former{n: b.n, c: c, expand: b.expand, depth: b.depth + 1}
-		if f := inner.form(s.Def.Members[0]); f != nil && len(f.Terms) <= mostTerms {
+		if f := b.n.normal(s, b.expand, b.depth+1); f != nil && len(f.Terms) <= mostTerms {
 			return f
 		}
 	}

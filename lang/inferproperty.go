@@ -79,7 +79,7 @@ func (e *elab) complexPermittivity(medium *cell, at Tree) (typed, bool) {
 		e.fault("unknown-property", at, fmt.Sprintf("%s states a complex permittivity and a loss factor: the loss would count twice", medium.title()), "keep one of the two")
 		return unknown(), true
 	}
-	second := loss.code // eps” itself, or the conductivity
+	var second eval.Code // eps”
 	var err error
 	if conducting {
 		w, known := e.angularFrequency(at)

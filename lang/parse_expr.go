@@ -234,7 +234,7 @@ func (r *reader) member(x Expr) Expr {
 	field := r.ident("a name after the point")
 	node := Node{Span: x.Place().to(field.Span)}
 	if p := r.peek(); is(p, "(") && touch(r.before(), p) {
-		return r.call(&Call{Node: node, Of: x, Fn: Name{field.Node, field.Text}})
+		return r.call(&Call{Node: node, Of: x, Fn: Name(field)})
 	}
 	return &Member{node, x, field}
 }

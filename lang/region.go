@@ -131,7 +131,7 @@ func (e *elab) overWhat(x Expr) (c *cell, boundary, ok bool) {
 		}
 		e.use(c.key, n.Span)
 	case *Member:
-		c, ok = e.ownerOf(n)
+		c, _ = e.ownerOf(n)
 	}
 	if c == nil || c.role != RoleRegion {
 		if c != nil {

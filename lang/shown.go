@@ -22,7 +22,6 @@ type formatter struct {
 	unit   unit.Unit
 	root   bool // a level unit counts a root-power quantity
 	digits int  // significant digits of the largest component
-	exact  bool // digits come from an uncertainty: never fewer
 }
 
 // value writes a value with its unit.

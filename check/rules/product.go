@@ -202,14 +202,3 @@ func (p *product) only(roles ...role) bool {
 
 // is reports whether the exact coefficient is num/den.
 func (p *product) is(num, den int64) bool { return p.coef.Cmp(big.NewRat(num, den)) == 0 }
-
-// symbols gives the names among the factors.
-func (p *product) symbols() []*lang.Symbol {
-	var out []*lang.Symbol
-	for _, f := range p.all {
-		if f.Symbol != nil {
-			out = append(out, f.Symbol)
-		}
-	}
-	return out
-}

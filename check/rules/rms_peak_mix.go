@@ -66,12 +66,25 @@ func (m mixer) stat(x lang.Expr) kind.Qualifier {
 	return f.Qualifier
 }
 
+// bothKnown is a quick test before forms are built.
+func (m mixer) bothKnown(x, y lang.Expr) bool {
+	for _, z := range []lang.Expr{x, y} {
+		if f, ok := m.p.Note.FactsOf(m.stmt, z); !ok || f.Qualifier == kind.Unqualified {
+			return false
+		}
+	}
+	return true
+}
+
 func (m mixer) node(t lang.Tree) bool {
 	switch t := t.(type) {
 	case *lang.Binary:
 		m.binary(t)
 	case *lang.Relation:
 		for i := range t.Ops {
+			if !m.bothKnown(t.Terms[i], t.Terms[i+1]) {
+				continue
+			}
 			a, b := m.stat(t.Terms[i]), m.stat(t.Terms[i+1])
 			if known(a, b) && !kind.Like(a, b) && m.amplitudes(t.Terms[i], t.Terms[i+1]) {
 				m.report(t, t.Terms[i], t.Terms[i+1], "compared with", a, b)
@@ -84,6 +97,9 @@ func (m mixer) node(t lang.Tree) bool {
 func known(a, b kind.Qualifier) bool { return a != kind.Unqualified && b != kind.Unqualified }
 
 func (m mixer) binary(b *lang.Binary) {
+	if b.Op != lang.OpAdd && b.Op != lang.OpSub && b.Op != lang.OpDiv || !m.bothKnown(b.X, b.Y) {
+		return
+	}
 	x, y := m.stat(b.X), m.stat(b.Y)
 	if !known(x, y) {
 		return
