@@ -1,9 +1,6 @@
 package kind
 
-import (
-	"sort"
-	"strings"
-)
+import "strings"
 
 // Fault is what is wrong with the words after a name's comma, at bytes
 // [Start, End) of them. Its rule is "unknown-kind".
@@ -22,21 +19,21 @@ func (f *Fault) Error() string { return f.Message }
 // "energy density". The case of letters does not matter. Where the qualifier is
 // readable and the kind is not, it is returned with the fault.
 func Parse(words string) (Qualifier, ID, *Fault) {
-	if fold(words) == "" {
+	if strings.TrimSpace(words) == "" {
 		return Unqualified, 0, &Fault{End: len(words), Message: "no kind follows the comma",
 			Detail: "write a kind, `energy density`, or drop the comma"}
 	}
-	if k, ok := derived().byName[fold(words)]; ok {
+	if k, ok := named(words); ok {
 		return Unqualified, k, nil
 	}
 	q, rest := cutQualifier(words)
 	if q == Unqualified {
 		return Unqualified, 0, unknown(words, 0)
 	}
-	if fold(rest) == "" {
+	if strings.TrimSpace(rest) == "" {
 		return q, 0, nil
 	}
-	if k, ok := derived().byName[fold(rest)]; ok {
+	if k, ok := named(rest); ok {
 		return q, k, nil
 	}
 	return q, 0, unknown(words, len(words)-len(rest))
@@ -70,19 +67,48 @@ var twins = map[string]string{
 // unknown makes the fault for words whose kind begins at from.
 func unknown(words string, from int) *Fault {
 	text := strings.TrimSpace(words[from:])
-	f := &Fault{Start: from, End: len(words), Message: "`" + text + "` is not a kind of quantity"}
+	f := &Fault{Start: from, End: len(words), Message: "`" + short(text) + "` is not a kind of quantity"}
+	if kind, medium, ok := cutMedium(text); ok {
+		f.Detail = "the medium goes before the comma: `NAME in " + medium + ", " + kind + " = …`"
+		return f
+	}
 	if s := reordered(words); s != "" {
 		f.Suggest, f.Detail = s, "write `"+s+"`"
 		return f
 	}
-	f.Nearest = Nearest(text, 3)
-	if len(f.Nearest) == 0 {
+	hits := nearest(text)
+	for _, h := range hits[:min(3, len(hits))] {
+		f.Nearest = append(f.Nearest, h.name)
+	}
+	if len(hits) == 0 {
 		f.Detail = "write a kind of ISO 80000, such as `energy density`, or leave the kind out"
 		return f
 	}
 	f.Detail = "did you mean `" + strings.Join(f.Nearest, "`, `") + "`?"
-	f.Suggest = words[:from] + f.Nearest[0]
+	// One is offered as a correction: the only one, or a slip nearer than others.
+	if len(hits) == 1 || hits[0].rank == 0 && hits[0].nearer(hits[1]) {
+		f.Suggest = words[:from] + f.Nearest[0]
+	}
 	return f
+}
+
+// short cuts text to what fits a message.
+func short(text string) string {
+	const longest = 80
+	if len(text) > longest {
+		text = text[:longest] + "…"
+	}
+	return strings.ToValidUTF8(text, "\uFFFD")
+}
+
+// cutMedium splits `energy density in mica`.
+func cutMedium(text string) (kind, medium string, ok bool) {
+	kind, medium, ok = strings.Cut(text, " in ")
+	if !ok || len(medium) > 40 {
+		return "", "", false
+	}
+	_, ok = named(kind)
+	return kind, medium, ok
 }
 
 // reordered finds `voltage rms` and `mean power`: a qualifier at the end, or
@@ -109,77 +135,8 @@ func accepted(words string) string {
 	if q == Unqualified {
 		return ""
 	}
-	if _, ok := derived().byName[fold(rest)]; !ok && rest != "" {
+	if _, ok := named(rest); !ok && rest != "" {
 		return ""
 	}
 	return words
-}
-
-// Nearest returns up to n names of kinds nearest to the words, best first.
-func Nearest(words string, n int) []string {
-	want := fold(words)
-	if len(want) > 80 {
-		return nil // no kind is nearly as long
-	}
-	type hit struct {
-		name string
-		far  int
-	}
-	var hits []hit
-	for _, k := range All() {
-		for _, name := range table[k].Names() {
-			if d := distance(want, fold(name)); d*3 <= len(want) || shares(want, fold(name)) {
-				hits = append(hits, hit{name, d})
-			}
-		}
-	}
-	sort.SliceStable(hits, func(i, j int) bool { return hits[i].far < hits[j].far })
-	var names []string
-	for _, h := range hits {
-		if len(names) < n {
-			names = append(names, h.name)
-		}
-	}
-	return names
-}
-
-// shares reports that every word of one is a word of the other: `field
-// strength` is near `electric field strength`.
-func shares(a, b string) bool {
-	wa, wb := strings.Fields(a), strings.Fields(b)
-	if len(wa) > len(wb) {
-		wa, wb = wb, wa
-	}
-	for _, w := range wa {
-		found := false
-		for _, v := range wb {
-			found = found || v == w
-		}
-		if !found {
-			return false
-		}
-	}
-	return len(wa) > 0
-}
-
-// distance is the number of characters to change, insert or drop to turn a
-// into b.
-func distance(a, b string) int {
-	x, y := []rune(a), []rune(b)
-	row := make([]int, len(y)+1)
-	for j := range row {
-		row[j] = j
-	}
-	for i, c := range x {
-		left, diagonal := i+1, i
-		for j, d := range y {
-			cost := diagonal
-			if c != d {
-				cost = 1 + min(diagonal, left, row[j+1])
-			}
-			diagonal, left, row[j] = row[j+1], cost, left
-		}
-		row[len(y)] = left
-	}
-	return row[len(y)]
 }
