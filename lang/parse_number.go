@@ -123,21 +123,21 @@ func (r *reader) spread(already bool, unit *UnitPhrase) *Spread {
 	l := r.numeral()
 	l.Unit = r.unit()
 	s := &Spread{Span: r.spanFrom(t.Pos.Offset), Num: l.Num, Size: l.Num.Value, Unit: l.Unit}
-	r.checkSpread(l, unit)
+	r.checkSpread(l, unit, s.Span)
 	return s
 }
 
 // checkSpread refuses what could be read in two ways.
-func (r *reader) checkSpread(l *Literal, unit *UnitPhrase) {
+func (r *reader) checkSpread(l *Literal, unit *UnitPhrase, span Span) {
 	switch {
 	case l.Spread != nil || is(r.peek(), "±"):
-		r.failWith(&breakage{message: "two uncertainties of one number", detail: "write one of them"})
+		r.failWith(&breakage{span: span, message: "two uncertainties of one number", detail: "write one of them"})
 	case l.Unit == nil:
 	case unit == nil && l.Unit.Text != "%":
-		r.failWith(&breakage{message: "the limits have a unit, the number has none",
+		r.failWith(&breakage{span: span, message: "the limits have a unit, the number has none",
 			detail: "write the unit behind a parenthesis: `(12.0 ± 0.1) kV`"})
 	case unit != nil && unit.Text == "%" && l.Unit.Text == "%":
-		r.failWith(&breakage{message: "`% ± %` can mean percentage points or a relative limit",
+		r.failWith(&breakage{span: span, message: "`% ± %` can mean percentage points or a relative limit",
 			detail: "write plain numbers: `0.05 ± 0.01` for points, `0.05 ± 1 %` for a relative limit"})
 	}
 }

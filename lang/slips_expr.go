@@ -131,8 +131,11 @@ func powerOfTen(c *clue) *Fault {
 		n--
 		exponent = c.tok(n).Value + exponent
 	}
-	if !is(c.tok(n-1), "^") || c.tok(n-2).Value != "10" {
+	if !is(c.tok(n-1), "^") {
 		return nil
+	}
+	if c.tok(n-2).Value != "10" {
+		return &Fault{Message: "an exponent takes no unit", Detail: "write the unit behind a parenthesis: `(a^2) V`"}
 	}
 	n -= 2
 	number := "1"
@@ -224,14 +227,15 @@ func numbersInRow(c *clue) *Fault {
 	if before.Type != tokNumber || t.Type != tokNumber {
 		return nil
 	}
-	f := &Fault{Span: spanOf(before).to(spanOf(t)), Message: "an operator is missing between " + code(before.Value) + " and " + code(t.Value)}
-	if digits(before.Value) == len(before.Value) && numberEnd(t.Value, 0) >= 3 && digits(t.Value) == 3 {
-		joined := before.Value + t.Value
-		f.Message = "a number has no blanks: " + code(before.Value+" "+t.Value)
-		f.Detail = "write " + code(joined)
-		f.Fix = &Fix{"Write " + code(joined), c.edit(-1, 0, joined)}
+	whole, joined, n := spanOf(before), before.Value, 0
+	for ; c.tok(n).Type == tokNumber && digits(c.tok(n).Value) == 3 && numberEnd(c.tok(n).Value, 0) >= 3; n++ {
+		joined += c.tok(n).Value
 	}
-	return f
+	if n == 0 || digits(before.Value) != len(before.Value) {
+		return &Fault{Span: whole.to(spanOf(t)), Message: "an operator is missing between " + code(before.Value) + " and " + code(t.Value)}
+	}
+	return &Fault{Span: whole.to(spanOf(c.tok(n - 1))), Message: "a number has no blanks", Detail: "write " + code(joined),
+		Fix: &Fix{"Write " + code(joined), c.edit(-1, n-1, joined)}}
 }
 
 // attosecond explains `3 as` and other reserved words where a unit was meant.
@@ -306,7 +310,7 @@ func spreadOfName(c *clue) *Fault {
 
 // strayAt explains an `at` that opens no lookup.
 func strayAt(c *clue) *Fault {
-	if !is(c.tok(0), "at") || !endsOperand(c.tok(-1)) {
+	if !is(c.tok(0), "at") || !endsOperand(c.tok(-1)) || strings.Contains(c.expected, "from") {
 		return nil
 	}
 	return &Fault{Message: "`at` is followed by a column and its value", Detail: "write `table.B at H = 200 A/m`"}

@@ -63,6 +63,9 @@ func kindBeforeMedium(c *clue) *Fault {
 	name, medium := &c.toks[0], c.tok(1).Value
 	for _, t := range c.toks[:c.at] {
 		if is(&t, ",") {
+			if c.seen("in") {
+				return &Fault{Message: "a quantity has one medium, this head names two"}
+			}
 			cut := Span{spanOf(c.tok(-1)).End, spanOf(c.tok(1)).End}
 			at := t.Pos.Offset
 			return &Fault{Span: spanOf(c.tok(0)).to(spanOf(c.tok(1))),
