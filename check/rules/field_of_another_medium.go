@@ -46,7 +46,7 @@ func fieldOfAnother(p *check.Pass) error {
 		if s.Def == nil || s.Stmt == nil || s.Input || len(s.Def.Members) == 0 {
 			continue
 		}
-		for _, t := range terms(p.Note.Form(s, s.Def.Members[0], lang.NamesStay)) {
+		for _, t := range terms(p.Note.Normal(s, lang.NamesStay)) {
 			if field, prop, ok := crossing(t); ok {
 				reportCrossing(p, s, field, prop)
 				break
