@@ -35,17 +35,14 @@ func (Book) HalfMissingStoredEnergy() check.Rule {
     U, static voltage = 400 V
     W, stored energy = 1/2 * C*U^2 = 37.6 J
 `},
-		Run: halfMissing,
+		Run: perClaim(halfMissing),
 	}
 }
 
-func halfMissing(p *check.Pass) error {
-	for _, c := range viewOf(p).claims {
-		if c.isStored() {
-			checkHalf(p, c)
-		}
+func halfMissing(p *check.Pass, c *claim) {
+	if c.isStored() {
+		checkHalf(p, c)
 	}
-	return nil
 }
 
 // isStored reports whether the claim is a stored energy or its density.

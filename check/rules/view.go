@@ -50,3 +50,15 @@ func (v *view) products(s *lang.Symbol) []*product {
 	}
 	return made
 }
+
+// perClaim makes a rule of a look at one claim. What the look tells may depend
+// on the claim, on whatever its value is computed from, and on the view; then
+// an unchanged claim need not be looked at again.
+func perClaim(look func(*check.Pass, *claim)) func(*check.Pass) error {
+	return func(p *check.Pass) error {
+		for _, c := range viewOf(p).claims {
+			look(p, c)
+		}
+		return nil
+	}
+}
