@@ -306,4 +306,6 @@ func (a *analysis) freezeUses(n *Note) {
 	if !slices.IsSortedFunc(n.Uses, byPlace) {
 		slices.SortStableFunc(n.Uses, byPlace)
 	}
+	// A bound of a piece is elaborated with the domain and with the piece.
+	n.Uses = slices.CompactFunc(n.Uses, func(x, y Use) bool { return x.Symbol == y.Symbol && x.Span == y.Span })
 }

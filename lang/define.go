@@ -255,9 +255,7 @@ func (e *elab) validity(d *Definition) {
 		}
 		t := e.bounds(r)
 		key := CanonicalName(n.Text)
-		if e.a.cells[key] != nil {
-			e.use(key, n.Span)
-		}
+		e.use(key, n.Span) // there may be no such quantity now, and one after the next edit
 		if !t.Known {
 			continue
 		}

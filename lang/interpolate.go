@@ -18,8 +18,9 @@ func (e *elab) lookup(l *Lookup) typed {
 			return e.reading(l, m, table)
 		}
 	}
-	x, v := e.expr(l.X), e.expr(l.Value)
-	_ = v // a property under a condition: rules compare it with the range
+	x := e.expr(l.X)
+	e.expr(l.Value) // a property under a condition: rules compare it with the range
+	e.use(CanonicalName(l.Column.Text), l.Column.Span)
 	return x
 }
 
@@ -155,7 +156,7 @@ func (e *elab) alongTable(c *Call, m *Member) typed {
 		e.fault("dimension-mismatch", c.For[0], fmt.Sprintf("column %s is %s, and the range is %s", m.Field.Text, describe(cs.columns[x].Facts), describe(b.Facts)), "")
 		return unknown()
 	}
-	e.use(table.key+"."+cs.names[x], m.Span)
+	e.use(table.key+"."+cs.names[x], m.Field.Span)
 	slot := e.a.newSlot()
 	e.along = &along{up: e.along, table: table, cs: cs, x: x, at: eval.Slot(slot, eval.Type{})}
 	body := e.expr(c.Args[0])
