@@ -36,8 +36,22 @@ type Example struct{ Note string }
 type Pass struct {
 	Rule   *Rule
 	Note   *lang.Note
+	Book   *Catalogue // of the run: the same for every note that one Runner reviews
 	report func(lang.Fault)
 	shared map[any]any
+}
+
+// Finisher is what Once has made and wants to know that every rule has run.
+type Finisher interface{ Finish() }
+
+// Tee is the pass with every report told to also, as it is filed.
+func (p *Pass) Tee(also func(lang.Fault)) *Pass {
+	q := *p
+	q.report = func(f lang.Fault) {
+		p.report(f)
+		also(f)
+	}
+	return &q
 }
 
 // Once gives what the first rule that asks for the key has made for this note,
@@ -126,21 +140,22 @@ func (b *Broken) Error() string {
 func (b *Broken) Unwrap() error { return b.Err }
 
 // apply runs the rule and turns an error or a panic into *Broken.
-func (r *Rule) apply(note *lang.Note, shared map[any]any, report func(lang.Fault)) (broken *Broken) {
+func (r *Rule) apply(pass Pass, report func(lang.Fault)) (broken *Broken) {
+	note := pass.Note
 	defer func() {
 		if p := recover(); p != nil {
 			broken = &Broken{Rule: r.Name, Path: note.Path, Err: fmt.Errorf("%v", p), Stack: debug.Stack()}
 		}
 	}()
 	var unfit error
-	pass := &Pass{Rule: r, Note: note, shared: shared, report: func(f lang.Fault) {
+	pass.Rule, pass.report = r, func(f lang.Fault) {
 		if err := fit(note, f); err != nil {
 			unfit = err
 			return
 		}
 		report(f)
-	}}
-	if err := cmp.Or(r.Run(pass), unfit); err != nil {
+	}
+	if err := cmp.Or(r.Run(&pass), unfit); err != nil {
 		return &Broken{Rule: r.Name, Path: note.Path, Err: err}
 	}
 	return nil

@@ -64,7 +64,7 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 	}
 	found = r.wanted(found)
 	var broken []error
-	shared := map[any]any{}
+	pass := Pass{Note: note, Book: r.catalogue, shared: map[any]any{}}
 	for _, rule := range r.cfg.Rules {
 		if ctx.Err() != nil {
 			return nil, nil
@@ -72,11 +72,23 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 		if rule.Run == nil || r.off(rule.Name) {
 			continue
 		}
-		if b := rule.apply(note, shared, file); b != nil {
+		if b := rule.apply(pass, file); b != nil {
 			broken = append(broken, b)
 		}
 	}
+	if len(broken) == 0 {
+		pass.finish()
+	}
 	return found, errors.Join(broken...)
+}
+
+// finish tells those who asked for it that every rule has run.
+func (p *Pass) finish() {
+	for _, made := range p.shared {
+		if f, ok := made.(Finisher); ok {
+			f.Finish()
+		}
+	}
 }
 
 // wanted leaves the findings that the configuration does not switch off.

@@ -46,6 +46,7 @@ type work struct {
 	pi     int           // power of π in a plain number's value, for 2π·Hz
 	grad   eval.Gradient // of the value with respect to the note's uncertain inputs
 	forms  *keptForms    // normal forms, built when a rule asks
+	memo   *memo         // what rules keep; nil where there is no work of its own
 	from   []kind.ID     // kinds that went in, where the cell has none of its own
 }
 
@@ -54,7 +55,7 @@ var noWork = &work{}
 
 // begin gives the cell work of its own to write into.
 func (c *cell) begin() {
-	c.work = &work{forms: &keptForms{}}
+	c.work = &work{forms: &keptForms{}, memo: &memo{}}
 	if _, whole := c.tree.(*Definition); whole && c.owner == nil && c.stmt != nil {
 		c.facts = make([]Facts, 0, c.stmt.Nodes)
 	}

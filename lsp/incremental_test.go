@@ -3,9 +3,11 @@ package lsp
 import (
 	"context"
 	"fmt"
+	"maps"
 	"math/rand/v2"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 
@@ -101,10 +103,12 @@ func (r *scribbler) edit(src *lang.Source, enc encoding) *lang.Source {
 func TestIncrementalEqualsFull(t *testing.T) {
 	const edits = 10_000
 	notes := corpusNotes(t, "demo")
+	maps.Copy(notes, corpusNotes(t, "rules"))
 	opt := realOptions(t)
 	each := edits / len(notes)
 	seed := uint64(0)
-	for path, text := range notes {
+	for _, path := range slices.Sorted(maps.Keys(notes)) {
+		text := notes[path]
 		seed++
 		r := newScribbler(seed, text)
 		src := lang.NewSource(text)

@@ -9,20 +9,24 @@ import (
 // view is what the rules need to know of a note, made once for all of them.
 type view struct {
 	note   *lang.Note
-	claims []*claim        // in text order
-	used   map[string]bool // names that another definition uses, by key
-	hasRMS bool            // something in the note is an rms value
+	book   *check.Catalogue
+	claims []*claim                // in text order
+	fresh  []*spot                 // statements that no earlier run has looked at
+	kept   map[string][]lang.Fault // what earlier runs found of the others, by rule
+	used   map[string]bool         // names that another definition uses, by key
+	hasRMS bool                    // something in the note is an rms value
 	forms  map[*lang.Symbol][]*product
 }
 
 // viewOf gives the view of the note of a pass.
 func viewOf(p *check.Pass) *view {
 	type key struct{}
-	return p.Once(key{}, func() any { return newView(p.Note) }).(*view)
+	return p.Once(key{}, func() any { return newView(p) }).(*view)
 }
 
-func newView(n *lang.Note) *view {
-	v := &view{note: n, used: map[string]bool{}, forms: map[*lang.Symbol][]*product{}}
+func newView(p *check.Pass) *view {
+	n := p.Note
+	v := &view{note: n, book: p.Book, used: map[string]bool{}, forms: map[*lang.Symbol][]*product{}}
 	for _, s := range n.Symbols {
 		if c := newClaim(v, s); c != nil {
 			v.claims = append(v.claims, c)
@@ -37,6 +41,7 @@ func newView(n *lang.Note) *view {
 			v.used[u.Symbol.Key] = true
 		}
 	}
+	v.sortOut()
 	return v
 }
 
@@ -49,16 +54,4 @@ func (v *view) products(s *lang.Symbol) []*product {
 		v.forms[s] = made
 	}
 	return made
-}
-
-// perClaim makes a rule of a look at one claim. What the look tells may depend
-// on the claim, on whatever its value is computed from, and on the view; then
-// an unchanged claim need not be looked at again.
-func perClaim(look func(*check.Pass, *claim)) func(*check.Pass) error {
-	return func(p *check.Pass) error {
-		for _, c := range viewOf(p).claims {
-			look(p, c)
-		}
-		return nil
-	}
 }
