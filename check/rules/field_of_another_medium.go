@@ -37,23 +37,17 @@ func (Book) FieldOfAnotherMedium() check.Rule {
     E_b in board, static electric field strength = oil.eps*E/board.eps = 3 kV/mm
     w, energy density = 1/2*board.eps*E_b^2 = 175.3 J/m^3
 `},
-		Run: fieldOfAnother,
+		Run: perSymbol(fieldOfAnother),
 	}
 }
 
-func fieldOfAnother(p *check.Pass) error {
-	for _, s := range p.Note.Symbols {
-		if s.Def == nil || s.Stmt == nil || s.Input || len(s.Def.Members) == 0 {
-			continue
-		}
-		for _, t := range terms(p.Note.Normal(s, lang.NamesStay)) {
-			if field, prop, ok := crossing(t); ok {
-				reportCrossing(p, s, field, prop)
-				break
-			}
+func fieldOfAnother(p *check.Pass, s *lang.Symbol) {
+	for _, t := range terms(p.Note.Normal(s, lang.NamesStay)) {
+		if field, prop, ok := crossing(t); ok {
+			reportCrossing(p, s, field, prop)
+			return
 		}
 	}
-	return nil
 }
 
 // crossing finds a field and a property of different media in one product.

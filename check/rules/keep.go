@@ -8,7 +8,7 @@ import (
 // This file keeps what the looks at a statement have found, so that an edit
 // costs only the looks at what it reaches.
 
-// perClaim makes a rule of a look at one claim; see perStatement.
+// perClaim makes a rule of a look at one claim; see perSpot.
 func perClaim(look func(*check.Pass, *claim)) func(*check.Pass) error {
 	return perSpot(func(p *check.Pass, s *spot) {
 		for _, c := range s.claims {
@@ -17,13 +17,19 @@ func perClaim(look func(*check.Pass, *claim)) func(*check.Pass) error {
 	})
 }
 
-// perStatement makes a rule of a look at one statement. What the look tells may
-// depend on the statement, on whatever it is computed from, and on its
-// circumstances; then an unchanged statement need not be looked at again.
-func perStatement(look func(*check.Pass, *lang.Stmt)) func(*check.Pass) error {
-	return perSpot(func(p *check.Pass, s *spot) { look(p, s.stmt) })
+// perSymbol makes a rule of a look at one name that a formula defines: a
+// quantity, a function, a property.
+func perSymbol(look func(*check.Pass, *lang.Symbol)) func(*check.Pass) error {
+	return perSpot(func(p *check.Pass, s *spot) {
+		for _, sym := range s.symbols {
+			look(p, sym)
+		}
+	})
 }
 
+// perSpot makes a rule of a look at one statement. What the look tells may
+// depend on the statement, on whatever it is computed from, and on its
+// circumstances; then an unchanged statement need not be looked at again.
 func perSpot(look func(*check.Pass, *spot)) func(*check.Pass) error {
 	return func(p *check.Pass) error {
 		v := viewOf(p)
@@ -41,9 +47,10 @@ func perSpot(look func(*check.Pass, *spot)) func(*check.Pass) error {
 
 // spot is a statement as the looks see it.
 type spot struct {
-	stmt   *lang.Stmt
-	claims []*claim
-	found  []lang.Fault // by the looks of this run
+	stmt    *lang.Stmt
+	symbols []*lang.Symbol // that formulas in it define
+	claims  []*claim
+	found   []lang.Fault // by the looks of this run
 }
 
 // circumstances are the facts of the whole note on which a look may depend.
@@ -77,12 +84,25 @@ func (v *view) circumstances(s *spot) circumstances {
 // findings are kept, and the fresh.
 func (v *view) sortOut() {
 	v.kept = map[string][]lang.Fault{}
-	claims := map[*lang.Stmt][]*claim{}
+	spots := map[*lang.Stmt]*spot{}
+	at := func(stmt *lang.Stmt) *spot {
+		if spots[stmt] == nil {
+			spots[stmt] = &spot{stmt: stmt}
+		}
+		return spots[stmt]
+	}
+	for _, sym := range v.note.Symbols {
+		if sym.Stmt != nil && sym.Def != nil && !sym.Input && len(sym.Def.Members) > 0 {
+			s := at(sym.Stmt)
+			s.symbols = append(s.symbols, sym)
+		}
+	}
 	for _, c := range v.claims {
-		claims[c.sym.Stmt] = append(claims[c.sym.Stmt], c)
+		s := at(c.sym.Stmt)
+		s.claims = append(s.claims, c)
 	}
 	for _, stmt := range v.note.Script.Stmts {
-		s := &spot{stmt: stmt, claims: claims[stmt]}
+		s := at(stmt)
 		m, ok := v.note.Memo(stmt).(*memo)
 		if !ok || m.under != v.circumstances(s) || !v.restore(stmt, m) {
 			v.fresh = append(v.fresh, s)
