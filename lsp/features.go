@@ -34,6 +34,7 @@ func features() []feature {
 		completions(),
 		signatures(),
 		folding(),
+		formatting(),
 		selection(),
 		links(),
 		semanticTokens(),
