@@ -206,7 +206,26 @@ func (l *tidying) equals() {
 	for _, gap := range rest {
 		l.gap(gap, 1)
 	}
+	l.hold()
 	sortEdits(l.edits)
+}
+
+// hold keeps the clauses of a line where they stand, as far as there is room,
+// when what is before them moves.
+func (l *tidying) hold() {
+	moved := map[int]int{} // columns by line
+	for _, e := range l.edits {
+		moved[l.script.Source.Line(e.Span.Start)] += len(e.New) - width(l.script.Source.Text[e.Span.Start:e.Span.End])
+	}
+	for _, c := range l.clauses() {
+		gap := c.ranged
+		if gap.End == 0 {
+			gap = c.source
+		}
+		if by := moved[c.line]; by != 0 {
+			l.gap(gap, max(2, width(l.script.Source.Text[gap.Start:gap.End])-by))
+		}
+	}
 }
 
 // equal finds the blanks before the first `=` of a definition.

@@ -3,7 +3,6 @@ package main
 import (
 	"context"
 	"fmt"
-	"path/filepath"
 	"runtime"
 	"strings"
 
@@ -66,12 +65,15 @@ func runReview(ctx context.Context, w *world, f *reviewFlags, paths []string) er
 		return err
 	}
 	defer r.abandon()
-	if len(paths) == 0 {
-		paths = []string{"."}
-	}
-	sources, err := r.sources(ctx, paths)
+	g := gathering{world: w, configs: r.configs, as: f.as, obey: f.obey}
+	sources, faults, err := g.sources(ctx, paths)
 	if err != nil {
 		return err
+	}
+	for _, fault := range faults {
+		if err := r.problem(fault); err != nil {
+			return err
+		}
 	}
 	if err := r.write(ctx, sources); err != nil {
 		return err
@@ -117,54 +119,4 @@ func (r *review) problem(err error) error {
 	r.trouble = true
 	r.world.say("%s", err)
 	return r.writer.Problem(err.Error())
-}
-
-// source is a note to review and the way to its text.
-type source struct {
-	path string // shown
-	abs  string // decides the configuration and what the note may refer to
-	read func() (string, error)
-}
-
-// sources resolves the paths of the command line.
-func (r *review) sources(ctx context.Context, paths []string) ([]source, error) {
-	var out []source
-	var files []string
-	for _, p := range paths {
-		if p == "-" {
-			s, err := r.standardInput()
-			if err != nil {
-				return nil, err
-			}
-			out = append(out, s)
-			continue
-		}
-		files = append(files, p)
-	}
-	if r.flags.as != "" && len(out) == 0 {
-		return nil, usage("--as names the note on standard input; write `-` as the path too")
-	}
-	finder := &project.Finder{Configs: r.configs, Obey: r.flags.obey}
-	found, faults := finder.Find(ctx, files)
-	for _, err := range faults {
-		if err := r.problem(err); err != nil {
-			return nil, err
-		}
-	}
-	for _, f := range found {
-		out = append(out, source{f.Path, f.Abs, func() (string, error) { return project.ReadFile(f.Abs) }})
-	}
-	return out, ctx.Err()
-}
-
-func (r *review) standardInput() (source, error) {
-	name := r.flags.as
-	if name == "" {
-		name = "standard-input.joule"
-	}
-	abs, err := filepath.Abs(name)
-	if err != nil {
-		return source{}, err
-	}
-	return source{filepath.ToSlash(name), abs, func() (string, error) { return project.Read(name, r.world.in) }}, nil
 }
