@@ -35,7 +35,7 @@ func standardProperties() map[string]string {
 	return map[string]string{
 		"eps_r": "relative permittivity", "eps": "permittivity", "mu_r": "relative permeability", "mu": "permeability",
 		"sigma": "conductivity", "rho": "resistivity", "tan_delta": "loss factor", "E_bd": "dielectric strength",
-		"B_sat": "magnetic flux density", "density": "density", "c_p": "specific heat capacity", "k_th": "thermal conductivity",
+		"B_sat": "saturation flux density", "density": "density", "c_p": "specific heat capacity", "k_th": "thermal conductivity",
 	}
 }
 

@@ -133,6 +133,23 @@ const (
 	DisplacementCurrentDensity
 	Permeance
 	Speed
+	RatedVoltage
+	IncrementalInductance
+	ReversiblePermeability
+	ComplexPermeability
+	SaturationFluxDensity
+	KneeFluxDensity
+	SaturationCurrent
+	RemanentFluxDensity
+	RemanentPolarization
+	EnergyProduct
+	RecoverableEnergy
+	RecoverableEnergyDensity
+	AirGap
+	OpticAxis
+	PrincipalFrame
+	Impermittivity
+	RelativeImpermittivity
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -155,7 +172,7 @@ var table = [...]Kind{
 	ElectricFluxDensity:         {"electric flux density", "electric displacement", "D", "C/m^2", ClassAmplitude, 0, false},
 	ElectricFlux:                {"electric flux", "", "Ψ", "C", ClassAmplitude, 0, false},
 	Capacitance:                 {"capacitance", "", "C", "F", ClassOther, 0, true},
-	DifferentialCapacitance:     {"differential capacitance", "", "C", "F", ClassOther, Capacitance, false},
+	DifferentialCapacitance:     {"differential capacitance", "small-signal capacitance; incremental capacitance", "C_d", "F", ClassOther, Capacitance, false},
 	EnergyEquivalentCapacitance: {"energy-equivalent capacitance", "", "C", "F", ClassOther, Capacitance, false},
 	ChargeEquivalentCapacitance: {"charge-equivalent capacitance", "", "C", "F", ClassOther, Capacitance, false},
 	LineicCapacitance:           {"lineic capacitance", "capacitance per length", "C′", "F/m", ClassOther, 0, false},
@@ -284,6 +301,30 @@ var table = [...]Kind{
 	DisplacementCurrentDensity: {"displacement current density", "", "J_D", "A/m^2", ClassAmplitude, ElectricCurrentDensity, false},
 	Permeance:                  {"permeance", "", "Λ", "H", ClassOther, 0, false},
 	Speed:                      {"speed", "velocity", "v", "m/s", ClassOther, 0, true},
+
+	// What a medium or a part is good for up to a point: rated values (IEC 60050-151),
+	// saturation, knee and remanence, types of permeability, the air gap
+	// (IEC 60050-221), differential values of curved characteristics.
+	RatedVoltage:             {"rated voltage", "", "U_R", "V", ClassAmplitude, Voltage, false},
+	IncrementalInductance:    {"incremental inductance", "differential inductance; small-signal inductance", "L_Δ", "H", ClassOther, Inductance, false},
+	ReversiblePermeability:   {"reversible permeability", "", "μ_rev", "1", ClassOther, RelativePermeability, false},
+	ComplexPermeability:      {"complex permeability", "", "μ_c", "1", ClassOther, RelativePermeability, false},
+	SaturationFluxDensity:    {"saturation flux density", "saturation magnetic flux density; saturation induction", "B_sat", "T", ClassAmplitude, MagneticFluxDensity, false},
+	KneeFluxDensity:          {"flux density at the knee", "knee of the magnetization curve", "B_k", "T", ClassAmplitude, MagneticFluxDensity, false},
+	SaturationCurrent:        {"saturation current", "", "I_sat", "A", ClassAmplitude, ElectricCurrent, false},
+	RemanentFluxDensity:      {"remanent flux density", "remanence; remanent magnetic flux density", "B_r", "T", ClassAmplitude, MagneticFluxDensity, false},
+	RemanentPolarization:     {"remanent polarization", "remanent polarisation", "P_r", "C/m^2", ClassAmplitude, ElectricPolarization, false},
+	EnergyProduct:            {"energy product", "maximum energy product; BH product; maximum BH product", "(BH)_max", "J/m^3", ClassOther, 0, false},
+	RecoverableEnergy:        {"recoverable energy", "delivered energy; discharge energy", "W_rec", "J", ClassEnergy, Energy, false},
+	RecoverableEnergyDensity: {"recoverable energy density", "delivered energy density; discharge energy density", "w_rec", "J/m^3", ClassEnergy, EnergyDensity, false},
+	AirGap:                   {"air gap", "gap length; length of the air gap", "g", "m", ClassOther, Length, false},
+
+	// Crystals: where the principal axes of a medium lie in the frame of the
+	// note, and the inverse of the permittivity.
+	OpticAxis:              {"optic axis", "direction of the optic axis", "c", "1", ClassOther, 0, false},
+	PrincipalFrame:         {"principal frame", "rotation of the principal frame", "R", "1", ClassOther, 0, false},
+	Impermittivity:         {"impermittivity", "reciprocal permittivity", "β", "m/F", ClassOther, 0, true},
+	RelativeImpermittivity: {"relative impermittivity", "relative dielectric impermeability", "B", "1", ClassOther, 0, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},

@@ -323,7 +323,12 @@ func TestExtraKinds(t *testing.T) {
 		}
 	}
 	if want := []string{
-		"power ratio", "amplitude ratio", "speed", "wave impedance", "reflection coefficient", "transmission coefficient",
+		"power ratio", "amplitude ratio", "speed",
+		"rated voltage", "incremental inductance", "reversible permeability", "complex permeability",
+		"saturation flux density", "flux density at the knee", "saturation current", "remanent flux density", "remanent polarization",
+		"energy product", "recoverable energy", "recoverable energy density", "air gap",
+		"optic axis", "principal frame", "impermittivity", "relative impermittivity",
+		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"demagnetizing factor", "antenna factor", "effective area", "polarizability", "acceleration",
 		"heat flow rate", "coefficient of heat transfer", "heat capacity",
 	}; !slices.Equal(extra, want) {
