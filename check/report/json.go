@@ -1,7 +1,6 @@
 package report
 
 import (
-	"bytes"
 	"encoding/json"
 	"io"
 	"math"
@@ -31,7 +30,7 @@ func (j *jsonWriter) Note(n *Note) error {
 		j.begun = true
 	}
 	j.count.Add(CountOf(n))
-	return j.put(lead, jsonOf(n))
+	return put(j.w, lead, jsonOf(n))
 }
 
 func (j *jsonWriter) Problem(message string) error {
@@ -47,27 +46,13 @@ func (j *jsonWriter) Close() error {
 	if j.problems == nil {
 		j.problems = []string{}
 	}
-	if err := j.put(lead, j.problems); err != nil {
+	if err := put(j.w, lead, j.problems); err != nil {
 		return err
 	}
-	if err := j.put(`, "counts": `, totalOf(j.count)); err != nil {
+	if err := put(j.w, `, "counts": `, totalOf(j.count)); err != nil {
 		return err
 	}
 	_, err := io.WriteString(j.w, "}\n")
-	return err
-}
-
-// put writes a lead and then a value without a line end.
-func (j *jsonWriter) put(lead string, value any) error {
-	var b bytes.Buffer
-	b.WriteString(lead)
-	e := json.NewEncoder(&b)
-	e.SetEscapeHTML(false)
-	if err := e.Encode(value); err != nil {
-		return err
-	}
-	b.Truncate(b.Len() - 1)
-	_, err := j.w.Write(b.Bytes())
 	return err
 }
 

@@ -45,6 +45,9 @@ func makers() []maker {
 	return []maker{
 		{"text", newText},
 		{"json", newJSON},
+		{"sarif", newSARIF},
+		{"junit", newJUnit},
+		{"markdown", newMarkdown},
 	}
 }
 
