@@ -67,6 +67,7 @@ type jsonNote struct {
 	Findings    []jsonFinding   `json:"findings"`
 	Waived      []jsonFinding   `json:"waived"`
 	Counts      jsonCounts      `json:"counts"`
+	Against     *jsonAgainst    `json:"against,omitempty"`
 }
 
 // number is a figure that JSON can hold: null stands for NaN and infinity.
@@ -130,7 +131,7 @@ func jsonOf(n *Note) *jsonNote {
 	out := &jsonNote{
 		Path: n.Path, Values: valuesOf(n), Waivers: waiversOf(n), Safety: safetyOf(n),
 		Criteria: judgedOf(n, "criterion"), Assumptions: judgedOf(n, "assume"), Checks: judgedOf(n, "check"),
-		Findings: []jsonFinding{}, Waived: []jsonFinding{}, Counts: countsOf(CountOf(n)),
+		Findings: []jsonFinding{}, Waived: []jsonFinding{}, Counts: countsOf(CountOf(n)), Against: againstOf(n.Against),
 	}
 	for i := range n.Findings {
 		f := findingOf(n, &n.Findings[i])

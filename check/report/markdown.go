@@ -28,6 +28,7 @@ func (m *markdown) Note(n *Note) error {
 	m.printf("## %s\n\n%s read, %s computed: %s, %s, %s advice.\n", inCode(n.Path),
 		some(c.Statements, "statement"), some(c.Values, "value"), some(c.Errors, "error"), some(c.Cautions, "caution"), amount(c.Advice))
 	m.judged(n)
+	m.against(n)
 	m.assumptions(n)
 	m.waivers(n)
 	m.findings(n)
@@ -52,6 +53,39 @@ func (m *markdown) judged(n *Note) {
 			margin, worst = fmt.Sprintf("%.3g %%", 100*g.Margin), fmt.Sprintf("%.3g %%", 100*g.Worst)
 		}
 		m.printf("%s| %d | %s | %s | %s | %s | %s | %s |\n", head, lineOf(n, g.Stmt.At), g.Word, strings.ReplaceAll(inCode(g.Text), "|", "\\|"), verdict, margin, worst, plain(g.Per))
+		head = ""
+	}
+}
+
+// against is the table of what changed since a revision.
+func (m *markdown) against(n *Note) {
+	c := n.Against
+	switch {
+	case c == nil:
+		return
+	case c.Added:
+		m.printf("\nThe note is new since %s.\n", inCode(c.Revision))
+		return
+	case len(c.Changes)+len(c.Flips) == 0:
+		m.printf("\nNo result changed since %s.\n", inCode(c.Revision))
+		return
+	}
+	if len(c.Flips) > 0 {
+		m.printf("\nVerdicts that changed since %s:\n\n", inCode(c.Revision))
+	}
+	for _, f := range c.Flips {
+		m.printf("- line %d: %s\n", f.Line, plain(f.text()))
+	}
+	head := fmt.Sprintf("\nChanged since %s:\n\n| name | | before | now | factor |\n|---|---|---|---|---:|\n", inCode(c.Revision))
+	for _, ch := range c.Changes {
+		role, factor := "result", ""
+		if ch.Input {
+			role = "input"
+		}
+		if ch.Factor != 0 {
+			factor = fmt.Sprintf("%.4g", ch.Factor)
+		}
+		m.printf("%s| %s | %s | %s | %s | %s |\n", head, inCode(ch.Name), role, plain(ch.Old), plain(ch.New), factor)
 		head = ""
 	}
 }

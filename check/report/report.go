@@ -15,6 +15,7 @@ import (
 type Note struct {
 	*lang.Note
 	Findings []check.Finding // sorted
+	Against  *Comparison     // with an earlier revision; nil: not asked for
 }
 
 // Writer writes a review. Notes come in their final order, from one goroutine;

@@ -27,6 +27,7 @@ func newText(w io.Writer, opt Options) Writer {
 
 func (t *text) Note(n *Note) error {
 	t.count.Add(CountOf(n))
+	t.against(n)
 	for i := range n.Findings {
 		if !n.Findings[i].IsWaived() {
 			t.finding(n, &n.Findings[i])
@@ -36,6 +37,28 @@ func (t *text) Note(n *Note) error {
 		t.waiver(n, w)
 	}
 	return t.w.Flush()
+}
+
+// against writes what became of the results since a revision.
+func (t *text) against(n *Note) {
+	c := n.Against
+	if c == nil {
+		return
+	}
+	if c.Added {
+		t.printf("%s: new since %s\n", clean(n.Path), clean(c.Revision))
+		return
+	}
+	for _, f := range c.Flips {
+		t.printf("%s:%d: since %s: %s\n", clean(n.Path), f.Line, clean(c.Revision), oneLine(f.text()))
+	}
+	for _, ch := range c.Changes {
+		at := clean(n.Path)
+		if ch.Line > 0 {
+			at += fmt.Sprintf(":%d", ch.Line)
+		}
+		t.printf("%s: since %s: %s\n", at, clean(c.Revision), oneLine(ch.text()))
+	}
 }
 
 func (t *text) finding(n *Note, f *check.Finding) {

@@ -83,5 +83,8 @@ func (r *review) one(ctx context.Context, s source) (out outcome) {
 	if err != nil {
 		out.errs = []error{err}
 	}
+	if out.note.Against, err = r.past.compare(ctx, s, note); err != nil {
+		out.errs = append(out.errs, err)
+	}
 	return out
 }

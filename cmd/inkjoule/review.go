@@ -18,6 +18,7 @@ import (
 // reviewFlags are the flags of the verb as given.
 type reviewFlags struct {
 	format, output, as, fail, color string
+	changed, against                string
 	jobs                            int
 	obey                            bool
 }
@@ -39,6 +40,8 @@ func reviewVerb(w *world) *cobra.Command {
 	flags.StringVarP(&f.output, "output", "o", "", "write to this `FILE`, whole or not at all, instead of standard output")
 	flags.StringVar(&f.fail, "fail-level", "", "exit 1 from this `SEVERITY` on: error, caution or advice (default: the configuration's, else caution)")
 	flags.StringVar(&f.as, "as", "", "the `NAME` under which standard input is reviewed; it decides what configuration holds")
+	flags.StringVar(&f.changed, "changed", "", "review only notes that changed since this Git `REVISION`, and those that refer to them")
+	flags.StringVar(&f.against, "against", "", "tell which results changed since this Git `REVISION`")
 	flags.IntVarP(&f.jobs, "jobs", "j", 0, "review this many notes at a time (default: one a processor)")
 	flags.StringVar(&f.color, "color", "auto", "use colour: auto, always or never")
 	flags.BoolVar(&f.obey, "obey-exclude", false, "leave out excluded files even where they are named, as in a hook")
@@ -50,6 +53,7 @@ type review struct {
 	world   *world
 	flags   *reviewFlags
 	rules   []*check.Rule
+	past    *past // of --against; nil without
 	configs *project.Configs
 	fail    lang.Severity // 0: what each note's configuration says
 	writer  report.Writer
@@ -74,6 +78,9 @@ func runReview(ctx context.Context, w *world, f *reviewFlags, paths []string) er
 		if err := r.problem(fault); err != nil {
 			return err
 		}
+	}
+	if sources, err = r.since(ctx, sources); err != nil {
+		return err
 	}
 	if err := r.write(ctx, sources); err != nil {
 		return err
