@@ -63,7 +63,7 @@ func (c *claim) halfInCurve(p *check.Pass, m medium) {
 	}
 	found := numbersOf(c.note, c.sym)
 	for _, q := range squares {
-		if !c.inMedium(q, m) || !found.mayBe(q.coef, big.NewRat(1, 2)) && !found.mayBe(q.coef, big.NewRat(1, 4)) {
+		if !c.inMedium(q, m) || c.energyByDefinition(q) || !found.mayBe(q.coef, big.NewRat(1, 2)) && !found.mayBe(q.coef, big.NewRat(1, 4)) {
 			continue
 		}
 		f := lang.Fault{
@@ -91,6 +91,21 @@ func (c *claim) inMedium(q *square, m medium) bool {
 			}
 		}
 		if f.Symbol != nil && f.Symbol.Owner == m.sym {
+			return true
+		}
+	}
+	return false
+}
+
+// energyByDefinition reports a product with a capacitance that is defined by
+// the energy, or whose verdict is that of bias-point-capacitance-energy: the
+// nominal capacitance of a part with a rated voltage.
+func (c *claim) energyByDefinition(q *square) bool {
+	for _, f := range q.byRole[roleCapacity] {
+		if f.Facts.Kind.Is(kind.EnergyEquivalentCapacitance) {
+			return true
+		}
+		if _, rated := c.ratedPart(f); rated != nil && isOf(f.Facts, kind.Capacitance) && c.view.book.Find("bias-point-capacitance-energy") != nil {
 			return true
 		}
 	}
