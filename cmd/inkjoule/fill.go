@@ -24,7 +24,8 @@ func fillVerb(w *world) *cobra.Command {
 			"stated result that differs from the computed value is replaced too. Everything else is kept byte\n" +
 			"for byte. A blank whose value is not known is told, and left; the others are filled.\n" +
 			"`-` reads a note and writes it filled.",
-		RunE: func(c *cobra.Command, args []string) error { return r.run(c.Context(), args) },
+		RunE:              func(c *cobra.Command, args []string) error { return r.run(c.Context(), args) },
+		ValidArgsFunction: noteFiles,
 	}
 	c.Flags().BoolVar(&stale, "stale", false, "replace stated results that differ from the computed value")
 	r.flags.add(c)

@@ -33,7 +33,8 @@ func reviewVerb(w *world) *cobra.Command {
 			"no path stands for the current folder.\n\n" +
 			"The exit status is 0 if nothing was found at or above the fail level, 1 if something was,\n" +
 			"2 if a file could not be read or the command line or a configuration is wrong.",
-		RunE: func(c *cobra.Command, args []string) error { return runReview(c.Context(), w, &f, args) },
+		RunE:              func(c *cobra.Command, args []string) error { return runReview(c.Context(), w, &f, args) },
+		ValidArgsFunction: noteFiles,
 	}
 	flags := c.Flags()
 	flags.StringVarP(&f.format, "format", "f", "text", "write the review as "+strings.Join(report.Formats(), ", "))
@@ -45,7 +46,17 @@ func reviewVerb(w *world) *cobra.Command {
 	flags.IntVarP(&f.jobs, "jobs", "j", 0, "review this many notes at a time (default: one a processor)")
 	flags.StringVar(&f.color, "color", "auto", "use colour: auto, always or never")
 	flags.BoolVar(&f.obey, "obey-exclude", false, "leave out excluded files even where they are named, as in a hook")
+	for name, words := range map[string][]string{
+		"format": report.Formats(), "fail-level": {"error", "caution", "advice"}, "color": {"auto", "always", "never"},
+	} {
+		_ = c.RegisterFlagCompletionFunc(name, cobra.FixedCompletions(words, cobra.ShellCompDirectiveNoFileComp))
+	}
 	return c
+}
+
+// noteFiles completes the paths of notes.
+func noteFiles(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
+	return []string{"joule", "md"}, cobra.ShellCompDirectiveFilterFileExt
 }
 
 // review is one run of the verb.

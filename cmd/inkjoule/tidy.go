@@ -19,7 +19,8 @@ func tidyVerb(w *world) *cobra.Command {
 			"deeper; one blank stands on either side of `=`; `=`, `for` and `per` on neighbouring lines stand\n" +
 			"below one another. Nothing but blanks is changed, and none inside a formula; prose stays as it is,\n" +
 			"and so does a statement with a fault of syntax. `-` reads a note and writes it tidy.",
-		RunE: func(c *cobra.Command, args []string) error { return r.run(c.Context(), args) },
+		RunE:              func(c *cobra.Command, args []string) error { return r.run(c.Context(), args) },
+		ValidArgsFunction: noteFiles,
 	}
 	r.flags.add(c)
 	return c

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"path/filepath"
 	"strings"
 	"testing"
 
@@ -46,6 +47,46 @@ func TestHelpIsComplete(t *testing.T) {
 		got := inside(t, "", verb.Name(), "--help")
 		if got.status != 0 || !strings.Contains(got.out, "Usage:") {
 			t.Errorf("%s --help: status %d\n%s", verb.Name(), got.status, got.out)
+		}
+	}
+}
+
+func TestManual(t *testing.T) {
+	for _, verb := range verbs(standard()) {
+		got := inside(t, "", "man", verb.Name())
+		if got.status != 0 || !strings.Contains(got.out, "inkjoule-"+verb.Name()+" - ") || !strings.Contains(got.out, ".SH SYNOPSIS") {
+			t.Errorf("man %s: status %d\n%s%s", verb.Name(), got.status, got.out, got.err)
+		}
+	}
+	if got := inside(t, "", "man", "reveiw"); got.status != statusTrouble || !strings.Contains(got.err, "did you mean `inkjoule review`?") {
+		t.Errorf("status %d, %q", got.status, got.err)
+	}
+	dir := filepath.Join(t.TempDir(), "man1")
+	if got := inside(t, "", "man", "--folder", dir); got.status != 0 {
+		t.Errorf("status %d, %q", got.status, got.err)
+	}
+	pages, err := filepath.Glob(filepath.Join(dir, "inkjoule*.1"))
+	if err != nil || len(pages) < len(verbs(standard()))+1 {
+		t.Errorf("%d pages, %v", len(pages), err)
+	}
+}
+
+func TestCompletionKnowsVerbsFormatsAndRules(t *testing.T) {
+	for _, c := range []struct {
+		args []string
+		want string
+	}{
+		{[]string{"__complete", "re"}, "review\t"},
+		{[]string{"__complete", "review", "--format", "s"}, "sarif\n"},
+		{[]string{"__complete", "rules", "half-m"}, "half-missing-stored-energy\n"},
+		{[]string{"__complete", "tidy", ""}, "joule\n"},
+		{[]string{"completion", "bash"}, "complete -o"},
+		{[]string{"completion", "zsh"}, "#compdef inkjoule"},
+		{[]string{"completion", "fish"}, "complete -c inkjoule"},
+		{[]string{"completion", "powershell"}, "Register-ArgumentCompleter"},
+	} {
+		if got := inside(t, "", c.args...); got.status != 0 || !strings.Contains(got.out, c.want) {
+			t.Errorf("%v: status %d, no %q in %.200s", c.args, got.status, c.want, got.out)
 		}
 	}
 }

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"runtime/debug"
+	"time"
 
 	"github.com/spf13/cobra"
 )
@@ -52,6 +53,22 @@ func versionOnly() string {
 		return version(info)
 	}
 	return "unreleased"
+}
+
+// builtAt is the time of the revision that the program was built from, so that
+// what is written of it is the same for every build; the Unix epoch where that
+// is not recorded.
+func builtAt() time.Time {
+	if info, ok := debug.ReadBuildInfo(); ok {
+		for _, s := range info.Settings {
+			if s.Key == "vcs.time" {
+				if at, err := time.Parse(time.RFC3339, s.Value); err == nil {
+					return at
+				}
+			}
+		}
+	}
+	return time.Unix(0, 0).UTC()
 }
 
 // noArguments refuses arguments in the program's own words.
