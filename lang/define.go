@@ -54,11 +54,12 @@ func (e *elab) declared(d *Definition) {
 	if words == "" {
 		return
 	}
-	q, id, bad := kind.Parse(words)
+	w, bad := kind.ParseWords(words)
 	if bad != nil {
 		e.fault("unknown-kind", d.Kind, bad.Message, bad.Detail)
 		return
 	}
+	q, id := w.Qualifier, w.Kind
 	e.want = id
 	f := &e.c.sym.Facts
 	if id != 0 {
@@ -67,6 +68,7 @@ func (e *elab) declared(d *Definition) {
 	if q != kind.Unqualified {
 		f.Qualifier, f.QualBy = q, Declared
 	}
+	f.Waveform, f.Coherence = w.Waveform, w.Coherence
 }
 
 // medium checks the name after `in` and binds the quantity to it.
@@ -112,6 +114,12 @@ func (e *elab) settle(d *Definition, t typed) {
 	}
 	if declared.Qualifier != kind.Unqualified {
 		f.Qualifier, f.QualBy = declared.Qualifier, Declared
+	}
+	if declared.Waveform != 0 {
+		f.Waveform = declared.Waveform
+	}
+	if declared.Coherence != 0 {
+		f.Coherence = declared.Coherence
 	}
 	e.c.pi, e.c.plain, e.c.from = t.pi, t.plain, t.kinds
 }

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"inkjoule/lang/eval"
+	"inkjoule/lang/kind"
 	"inkjoule/lang/unit"
 )
 
@@ -123,6 +124,7 @@ func (e *elab) integrated(body typed, d unit.Dim, v typed) typed {
 		t.addMedium(m)
 	}
 	t.Qualifier, t.QualBy = productQualifier(OpMul, body, v)
+	t.Waveform = kind.AnyWave // the integral of a square wave is a triangle
 	return t
 }
 
@@ -172,6 +174,7 @@ func (e *elab) derivative(c *Call) typed {
 	t.kinds = mergeKinds(body.kinds, at.kinds)
 	t.Kind, t.KindBy = ingredientKind(t.Dim, t.kinds)
 	t.Qualifier, t.QualBy = productQualifier(OpDiv, body, at)
+	t.Waveform = kind.AnyWave
 	return e.built(t, c)(eval.Derivative(c.ID, slot, at.code, body.code))
 }
 

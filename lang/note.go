@@ -47,8 +47,10 @@ type Facts struct {
 	KindBy    Standing
 	Qualifier kind.Qualifier
 	QualBy    Standing
-	Absolute  bool     // an absolute temperature written in °C, or derived from one
-	Media     []string // keys of the media whose properties or fields entered, in order of first use
+	Waveform  kind.Waveform  // as declared; a name that is another name keeps it
+	Coherence kind.Coherence // as declared
+	Absolute  bool           // an absolute temperature written in °C, or derived from one
+	Media     []string       // keys of the media whose properties or fields entered, in order of first use
 }
 
 // Result is the value of a quantity, in coherent SI units.

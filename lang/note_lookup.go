@@ -52,7 +52,18 @@ func (n *Note) StmtAt(offset int) *Stmt {
 // "harmonic", "transient", or "" where none is stated above it. The symbol is
 // the frequency of a harmonic regime, if it has a name.
 func (n *Note) Regime(s *Symbol) (word string, at *Symbol) {
-	c := n.state.cellOf(s)
+	return n.regimeOf(n.state.cellOf(s))
+}
+
+// RegimeAt is Regime for any statement, one that defines no name included.
+func (n *Note) RegimeAt(s *Stmt) (word string, at *Symbol) {
+	if cs := n.state.byStmt[s]; len(cs) > 0 {
+		return n.regimeOf(cs[0])
+	}
+	return "", nil
+}
+
+func (n *Note) regimeOf(c *cell) (word string, at *Symbol) {
 	if c == nil || c.regime == nil {
 		return "", nil
 	}

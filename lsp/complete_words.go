@@ -87,15 +87,18 @@ func (s *spot) kinds(c cursor) (offering, bool) {
 		return offering{}, false
 	}
 	o := offering{typed: words}
-	qualified := false
-	for _, q := range kind.Qualifiers() {
-		if rest, ok := strings.CutPrefix(words, q+" "); ok {
-			o.typed, qualified = strings.TrimLeft(rest, " "), true
-		}
+	before := kind.Words{}
+	for more := true; more; {
+		o.typed, more = before.Cut(o.typed)
 	}
 	for _, q := range kind.Qualifiers() {
-		if !qualified {
+		if before.Qualifier == kind.Unqualified {
 			o.items = append(o.items, item{label: q, detail: "qualifier", kind: protocol.CompletionItemKindKeyword, rank: 1})
+		}
+	}
+	for _, a := range kind.Adjectives() {
+		if before.Takes(a) {
+			o.items = append(o.items, item{label: a, detail: "waveform or coherence", kind: protocol.CompletionItemKindKeyword, rank: 1})
 		}
 	}
 	for _, id := range kind.All() {

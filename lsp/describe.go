@@ -116,6 +116,8 @@ func describeFacts(c *card, sym *lang.Symbol) {
 	if f.Qualifier != kind.Unqualified {
 		c.line("qualifier", f.Qualifier.String()+standing(f.QualBy))
 	}
+	c.line("waveform", f.Waveform.String())
+	c.line("coherence", f.Coherence.String())
 	if f.Known {
 		dim := f.Dim.String()
 		if shape := (eval.Type{Shape: f.Shape, Complex: f.Complex}); !shape.IsReal() {

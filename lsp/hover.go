@@ -194,14 +194,15 @@ func (s *spot) wordsCard(parent lang.Tree, w *lang.Words) *card {
 }
 
 func kindCard(words string) *card {
-	q, k, fault := kind.Parse(words)
+	w, fault := kind.ParseWords(words)
 	if fault != nil {
 		return nil
 	}
+	k := w.Kind
 	c := &card{head: words}
-	if q != kind.Unqualified {
-		c.line("qualifier", q.String())
-	}
+	c.line("waveform", w.Waveform.String())
+	c.line("coherence", w.Coherence.String())
+	c.line("qualifier", w.Qualifier.String())
 	if k != 0 {
 		info := k.Info()
 		c.line("kind", info.Name)

@@ -16,27 +16,64 @@ type Fault struct {
 func (f *Fault) Error() string { return f.Message }
 
 // Parse reads `[QUALIFIER] [KIND]`: "peak electric field strength", "rms",
-// "energy density". The case of letters does not matter. Where the qualifier is
-// readable and the kind is not, it is returned with the fault.
+// "energy density"; see ParseWords.
 func Parse(words string) (Qualifier, ID, *Fault) {
+	w, fault := ParseWords(words)
+	return w.Qualifier, w.Kind, fault
+}
+
+// ParseWords reads `[ADJECTIVE …] [QUALIFIER] [KIND]`: "triangular peak-to-peak
+// current". The case of letters does not matter, nor whether an adjective
+// stands before or after the qualifier. Where words are readable and the kind
+// is not, they are returned with the fault.
+func ParseWords(words string) (w Words, fault *Fault) {
 	if strings.TrimSpace(words) == "" {
-		return Unqualified, 0, &Fault{End: len(words), Message: "no kind follows the comma",
+		return w, &Fault{End: len(words), Message: "no kind follows the comma",
 			Detail: "write a kind, `energy density`, or drop the comma"}
 	}
-	if k, ok := named(words); ok {
-		return Unqualified, k, nil
+	rest, ok := w.read(words)
+	if !ok {
+		return w, unknown(words, len(words)-len(rest))
 	}
-	q, rest := cutQualifier(words)
-	if q == Unqualified {
-		return Unqualified, 0, unknown(words, 0)
+	return w, nil
+}
+
+// read takes words apart up to the end, or up to what is not known.
+func (w *Words) read(words string) (rest string, ok bool) {
+	for rest = words; ; {
+		if k, ok := named(rest); ok {
+			w.Kind = k
+			return "", true
+		}
+		if strings.TrimSpace(rest) == "" {
+			return "", true
+		}
+		left, ok := w.cut(rest)
+		if !ok {
+			return rest, false
+		}
+		rest = left
 	}
-	if strings.TrimSpace(rest) == "" {
-		return q, 0, nil
+}
+
+// cut takes an adjective or the qualifier off the front of words.
+func (w *Words) cut(words string) (rest string, ok bool) {
+	if rest, ok = w.cutAdjective(words); ok || w.Qualifier != Unqualified {
+		return rest, ok
 	}
-	if k, ok := named(rest); ok {
-		return q, k, nil
+	w.Qualifier, rest = cutQualifier(words)
+	return rest, w.Qualifier != Unqualified
+}
+
+// Cut takes an adjective or the qualifier that a blank follows off the front of
+// words; ok is false where there is none, or w has one of its sort already.
+func (w *Words) Cut(words string) (rest string, ok bool) {
+	before := *w
+	if rest, ok = w.cut(words); ok && (rest != "" || strings.HasSuffix(words, " ")) {
+		return rest, true
 	}
-	return q, 0, unknown(words, len(words)-len(rest))
+	*w = before
+	return words, false
 }
 
 // cutQualifier splits a qualifier off the front of words; `peak to peak` counts
@@ -57,11 +94,13 @@ func cutQualifier(words string) (Qualifier, string) {
 	return Unqualified, words
 }
 
-// twins are words that people use for a qualifier.
+// twins are words that people use for a qualifier or an adjective.
 var twins = map[string]string{
 	"dc": "static", "direct": "static", "steady": "static", "mean": "average", "time-average": "average", "avg": "average",
 	"amplitude": "peak", "maximum": "peak", "max": "peak", "crest": "peak", "effective": "rms", "r.m.s.": "rms", "momentary": "instantaneous",
 	"pk-pk": "peak-to-peak", "p-p": "peak-to-peak", "peak-peak": "peak-to-peak",
+	"sine": "sinusoidal", "sinewave": "sinusoidal", "rectangular": "square", "squarewave": "square", "triangle": "triangular", "sawtooth": "triangular",
+	"pulse": "pulsed", "am": "modulated", "noisy": "random", "circular": "elliptical", "surge": "impulse", "uncorrelated": "incoherent", "correlated": "coherent",
 }
 
 // unknown makes the fault for words whose kind begins at from.
@@ -70,6 +109,10 @@ func unknown(words string, from int) *Fault {
 	f := &Fault{Start: from, End: len(words), Message: "`" + short(text) + "` is not a kind of quantity"}
 	if kind, medium, ok := cutMedium(text); ok {
 		f.Detail = "the medium goes before the comma: `NAME in " + medium + ", " + kind + " = …`"
+		return f
+	}
+	if first, second := rivals(words[:from], text); second != "" {
+		f.Message, f.Detail = first+" and "+second+" exclude each other", "keep the one that holds"
 		return f
 	}
 	if s := reordered(words); s != "" {
@@ -128,14 +171,12 @@ func reordered(words string) string {
 	return accepted(last + " " + strings.Join(parts[:len(parts)-1], " "))
 }
 
-// accepted returns words where they begin with a qualifier and parse whole.
+// accepted returns words where they begin with a qualifier or an adjective and
+// parse whole.
 func accepted(words string) string {
 	words = strings.TrimSpace(words)
-	q, rest := cutQualifier(words)
-	if q == Unqualified {
-		return ""
-	}
-	if _, ok := named(rest); !ok && rest != "" {
+	var w Words
+	if _, ok := w.read(words); !ok || w == (Words{Kind: w.Kind}) {
 		return ""
 	}
 	return words

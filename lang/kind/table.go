@@ -150,6 +150,19 @@ const (
 	PrincipalFrame
 	Impermittivity
 	RelativeImpermittivity
+	CrestFactor
+	LineToLineVoltage
+	LineToEarthVoltage
+	EarthFaultFactor
+	WithstandVoltage
+	BreakdownVoltage
+	InceptionVoltage
+	InceptionFieldStrength
+	IncidentFieldStrength
+	PeakEnvelopePower
+	PulseDuration
+	PulseRepetitionFrequency
+	Reaction
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -325,6 +338,25 @@ var table = [...]Kind{
 	PrincipalFrame:         {"principal frame", "rotation of the principal frame", "R", "1", ClassOther, 0, false},
 	Impermittivity:         {"impermittivity", "reciprocal permittivity", "β", "m/F", ClassOther, 0, true},
 	RelativeImpermittivity: {"relative impermittivity", "relative dielectric impermeability", "B", "1", ClassOther, 0, false},
+
+	// What the statistics of alternating and pulsed quantities hang on: crest
+	// factor, three-phase voltages (IEC 60050-601; the earth fault factor,
+	// IEC 60050-614), levels of insulation (IEC 60071-1, IEC 60270), the field
+	// that falls on a body, pulses (IEC 60050-702), the product of two phasors
+	// without a conjugate.
+	CrestFactor:              {"crest factor", "peak factor", "k_c", "1", ClassAmplitude, AmplitudeRatio, false},
+	LineToLineVoltage:        {"line-to-line voltage", "phase-to-phase voltage; system voltage; nominal voltage of a system; highest voltage for equipment", "U_LL", "V", ClassAmplitude, Voltage, false},
+	LineToEarthVoltage:       {"line-to-earth voltage", "phase-to-earth voltage; line-to-ground voltage; line-to-neutral voltage; phase-to-neutral voltage", "U_LE", "V", ClassAmplitude, Voltage, false},
+	EarthFaultFactor:         {"earth fault factor", "earth-fault factor", "k", "1", ClassOther, 0, false},
+	WithstandVoltage:         {"withstand voltage", "rated withstand voltage", "U_w", "V", ClassAmplitude, Voltage, false},
+	BreakdownVoltage:         {"breakdown voltage", "disruptive discharge voltage; flashover voltage; sparkover voltage", "U_bd", "V", ClassAmplitude, Voltage, false},
+	InceptionVoltage:         {"inception voltage", "partial discharge inception voltage", "U_i", "V", ClassAmplitude, Voltage, false},
+	InceptionFieldStrength:   {"inception field strength", "partial discharge inception field strength", "E_i", "V/m", ClassAmplitude, ElectricFieldStrength, false},
+	IncidentFieldStrength:    {"incident electric field strength", "incident field strength; external electric field strength; unperturbed electric field strength", "E_inc", "V/m", ClassAmplitude, ElectricFieldStrength, false},
+	PeakEnvelopePower:        {"peak envelope power", "PEP; pulse power", "P_p", "W", ClassPower, Power, false},
+	PulseDuration:            {"pulse duration", "pulse width; pulse length", "t_p", "s", ClassOther, Time, false},
+	PulseRepetitionFrequency: {"pulse repetition frequency", "pulse repetition rate; repetition frequency; repetition rate", "f_p", "Hz", ClassOther, Frequency, false},
+	Reaction:                 {"reaction", "reaction integral", "⟨a,b⟩", "W", ClassOther, 0, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},
