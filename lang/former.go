@@ -104,7 +104,7 @@ func (b *former) form(x Expr) *Form {
 	case *Unary:
 		f = b.form(x.X)
 		if x.Op == OpSub {
-			f = (&Form{}).add(f, -1)
+			f = f.neg()
 		}
 	case *Binary:
 		f = b.binary(x)
@@ -158,7 +158,7 @@ func (b *former) name(x *Name) *Form {
 	}
 	switch key {
 	case "pi":
-		return &Form{Terms: []Term{{Coef: big.NewRat(1, 1), Pi: 1}}}
+		return &Form{Terms: []Term{{Coef: ratOne, Pi: 1}}}
 	case "j":
 		return atom(Factor{Key: "j", Facts: Facts{Known: true, Complex: true}})
 	}

@@ -1,8 +1,9 @@
 package lang
 
 import (
+	"maps"
 	"math/big"
-	"sort"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -18,7 +19,7 @@ type Form struct{ Terms []Term }
 
 // Term is Coef · π^Pi · Π Factors.
 type Term struct {
-	Coef    *big.Rat
+	Coef    *big.Rat // shared by forms: never changed in place
 	Pi      int
 	Factors []Factor // sorted by key
 	Cross   bool     // a vector product joined two of the factors
@@ -76,6 +77,9 @@ func (t Term) key() string {
 	return b.String()
 }
 
+// ratOne is the coefficient of most terms; never changed.
+var ratOne = big.NewRat(1, 1)
+
 // constant is the form of an exact number.
 func constant(r *big.Rat) *Form {
 	if r.Sign() == 0 {
@@ -89,7 +93,7 @@ func atom(f Factor) *Form {
 	if f.Exp.IsZero() {
 		f.Exp = unit.Whole(1)
 	}
-	return &Form{Terms: []Term{{Coef: big.NewRat(1, 1), Factors: []Factor{f}}}}
+	return &Form{Terms: []Term{{Coef: ratOne, Factors: []Factor{f}}}}
 }
 
 // add is f + k·g.
@@ -98,36 +102,53 @@ func (f *Form) add(g *Form, k int64) *Form {
 		return nil
 	}
 	by := map[string]int{}
-	out := &Form{}
+	out := &Form{Terms: make([]Term, 0, len(f.Terms)+len(g.Terms))}
 	put := func(t Term) {
-		if i, ok := by[t.key()]; ok {
+		key := t.key()
+		if i, ok := by[key]; ok {
 			o := &out.Terms[i]
 			o.Coef = new(big.Rat).Add(o.Coef, t.Coef)
 			return
 		}
-		by[t.key()] = len(out.Terms)
+		by[key] = len(out.Terms)
 		out.Terms = append(out.Terms, t)
 	}
 	for _, t := range f.Terms {
 		put(t)
 	}
 	for _, t := range g.Terms {
-		t.Coef = new(big.Rat).Mul(t.Coef, big.NewRat(k, 1))
+		if k != 1 {
+			t.Coef = new(big.Rat).Mul(t.Coef, big.NewRat(k, 1))
+		}
 		put(t)
 	}
 	return out.tidy()
 }
 
+// neg is −f.
+func (f *Form) neg() *Form {
+	if f == nil {
+		return nil
+	}
+	out := &Form{Terms: slices.Clone(f.Terms)}
+	for i, t := range out.Terms {
+		out.Terms[i].Coef = new(big.Rat).Neg(t.Coef)
+	}
+	return out
+}
+
 // tidy drops terms that cancelled and sorts the rest.
 func (f *Form) tidy() *Form {
-	kept := f.Terms[:0]
-	for _, t := range f.Terms {
-		if t.Coef.Sign() != 0 {
-			kept = append(kept, t)
+	f.Terms = slices.DeleteFunc(f.Terms, func(t Term) bool { return t.Coef.Sign() == 0 })
+	if len(f.Terms) > 1 {
+		keys := make(map[string]Term, len(f.Terms))
+		for _, t := range f.Terms {
+			keys[t.key()] = t
+		}
+		for i, k := range slices.Sorted(maps.Keys(keys)) {
+			f.Terms[i] = keys[k]
 		}
 	}
-	f.Terms = kept
-	sort.SliceStable(kept, func(i, j int) bool { return kept[i].key() < kept[j].key() })
 	return f
 }
 
@@ -135,6 +156,9 @@ func (f *Form) tidy() *Form {
 func (f *Form) mul(g *Form) *Form {
 	if f == nil || g == nil || len(f.Terms)*len(g.Terms) > mostTerms {
 		return nil
+	}
+	if len(f.Terms) == 1 && len(g.Terms) == 1 {
+		return &Form{Terms: []Term{f.Terms[0].mul(g.Terms[0])}}
 	}
 	out := &Form{}
 	for _, a := range f.Terms {
@@ -147,30 +171,37 @@ func (f *Form) mul(g *Form) *Form {
 
 // mul multiplies two terms, adding the exponents of equal factors.
 func (t Term) mul(u Term) Term {
-	out := Term{Coef: new(big.Rat).Mul(t.Coef, u.Coef), Pi: t.Pi + u.Pi, Cross: t.Cross || u.Cross}
-	out.Factors = append(out.Factors, t.Factors...)
-	for _, f := range u.Factors {
-		out.put(f)
+	out := Term{Coef: t.Coef, Pi: t.Pi + u.Pi, Cross: t.Cross || u.Cross}
+	switch {
+	case t.Coef == ratOne:
+		out.Coef = u.Coef
+	case u.Coef != ratOne:
+		out.Coef = new(big.Rat).Mul(t.Coef, u.Coef)
 	}
-	sort.SliceStable(out.Factors, func(i, j int) bool { return out.Factors[i].Key < out.Factors[j].Key })
+	out.Factors = make([]Factor, 0, len(t.Factors)+len(u.Factors))
+	a, b := t.Factors, u.Factors // both sorted by key
+	for len(a) > 0 && len(b) > 0 {
+		switch {
+		case a[0].Key < b[0].Key:
+			out.Factors, a = append(out.Factors, a[0]), a[1:]
+		case a[0].Key > b[0].Key:
+			out.Factors, b = append(out.Factors, b[0]), b[1:]
+		default:
+			if f := a[0].joined(&b[0]); !f.Exp.IsZero() {
+				out.Factors = append(out.Factors, f)
+			}
+			a, b = a[1:], b[1:]
+		}
+	}
+	out.Factors = append(append(out.Factors, a...), b...)
 	return out
 }
 
-// put multiplies a factor in.
-func (t *Term) put(f Factor) {
-	for i := range t.Factors {
-		o := &t.Factors[i]
-		if o.Key != f.Key {
-			continue
-		}
-		o.Exp = o.Exp.Add(f.Exp)
-		o.Bars, o.Conj, o.Applied = o.Bars || f.Bars, o.Conj || f.Conj, o.Applied || f.Applied
-		if o.Exp.IsZero() {
-			t.Factors = append(t.Factors[:i], t.Factors[i+1:]...)
-		}
-		return
-	}
-	t.Factors = append(t.Factors, f)
+// joined is the product of two powers of the same atom.
+func (f Factor) joined(g *Factor) Factor {
+	f.Exp = f.Exp.Add(g.Exp)
+	f.Bars, f.Conj, f.Applied = f.Bars || g.Bars, f.Conj || g.Conj, f.Applied || g.Applied
+	return f
 }
 
 // pow is f ^ n, nil where that is no sum of products.
@@ -186,7 +217,7 @@ func (f *Form) pow(n unit.Rat) *Form {
 	if f == nil || !whole || k < 0 || k > 4 {
 		return nil
 	}
-	out := constant(big.NewRat(1, 1))
+	out := constant(ratOne)
 	for range k {
 		out = out.mul(f)
 	}
@@ -196,16 +227,19 @@ func (f *Form) pow(n unit.Rat) *Form {
 // pow raises a term; a rational coefficient under a root stays exact as a
 // factor "#r".
 func (t Term) pow(n unit.Rat) (Term, bool) {
-	out := Term{Coef: big.NewRat(1, 1), Cross: t.Cross}
+	out := Term{Coef: ratOne, Cross: t.Cross}
 	pi := unit.Whole(t.Pi).Mul(n)
 	p, whole := pi.Int()
 	if !whole {
 		return out, false
 	}
 	out.Pi = p
-	for _, f := range t.Factors {
-		f.Exp = f.Exp.Mul(n)
-		out.Factors = append(out.Factors, f)
+	out.Factors = slices.Clone(t.Factors)
+	for i := range out.Factors {
+		out.Factors[i].Exp = out.Factors[i].Exp.Mul(n)
+	}
+	if t.Coef == ratOne {
+		return out, true
 	}
 	if k, whole := n.Int(); whole {
 		if k > 64 || k < -64 || t.Coef.Sign() == 0 {
@@ -221,9 +255,8 @@ func (t Term) pow(n unit.Rat) (Term, bool) {
 		out.Coef = root
 		return out, true
 	}
-	out.put(Factor{Key: "#" + t.Coef.RatString(), Exp: n, Facts: number()})
-	sort.SliceStable(out.Factors, func(i, j int) bool { return out.Factors[i].Key < out.Factors[j].Key })
-	return out, true
+	root := Factor{Key: "#" + t.Coef.RatString(), Exp: n, Facts: number()}
+	return out.mul(Term{Coef: ratOne, Factors: []Factor{root}}), true
 }
 
 func ratPow(r *big.Rat, k int) *big.Rat {

@@ -3,6 +3,7 @@ package rules
 import (
 	"math/big"
 	"strings"
+	"sync"
 
 	"inkjoule/lang"
 	"inkjoule/lang/kind"
@@ -28,10 +29,20 @@ const (
 	roleGeometry       // lengths, areas, volumes, angles, regions
 	roleFrequency      // f, ω, times
 	roleNumber         // plain numbers, counts
+	roleCount          // how many roles there are
 )
 
-// dimRoles tells roles by dimension, angle and cycle left out; read only.
-var dimRoles = []struct {
+// dimRoles tells roles by dimension, angle and cycle left out.
+var dimRoles = sync.OnceValue(func() map[unit.Dim]role {
+	out := map[unit.Dim]role{}
+	for _, r := range kindRoles {
+		out[r.kind.Dim().Base()] = r.role
+	}
+	return out
+})
+
+// kindRoles tells roles by kinds that have the dimension; read only.
+var kindRoles = []struct {
 	kind kind.ID
 	role role
 }{
@@ -66,10 +77,8 @@ func roleOf(f lang.Facts) role {
 	if base == (unit.Dim{}) {
 		return roleOfOne(f)
 	}
-	for _, r := range dimRoles {
-		if r.kind.Dim().Base() == base {
-			return r.role
-		}
+	if r, ok := dimRoles()[base]; ok {
+		return r
 	}
 	base[unit.Length] = unit.Rat{}
 	if base == (unit.Dim{}) {
@@ -107,12 +116,12 @@ type product struct {
 	pi      int      // power of π that is left
 	root2   unit.Rat // power of 2 under a root: 1/2 for √2
 	all     []lang.Factor
-	byRole  map[role][]lang.Factor
-	degree  map[role]unit.Rat // sum of the exponents
-	calls   []string          // functions in it that could hide a number
-	region  bool              // it is integrated over a region
-	crossed bool              // a vector product joins two factors
-	folded  bool              // a frequency stands with its 2π
+	byRole  [roleCount][]lang.Factor
+	degree  [roleCount]unit.Rat // sum of the exponents
+	calls   []string            // functions in it that could hide a number
+	region  bool                // it is integrated over a region
+	crossed bool                // a vector product joins two factors
+	folded  bool                // a frequency stands with its 2π
 }
 
 // products takes a form apart; nil where it is unknown or empty.
@@ -128,10 +137,7 @@ func products(f *lang.Form) []*product {
 }
 
 func newProduct(t lang.Term) *product {
-	p := &product{
-		coef: new(big.Rat).Set(t.Coef), pi: t.Pi, crossed: t.Cross,
-		byRole: map[role][]lang.Factor{}, degree: map[role]unit.Rat{},
-	}
+	p := &product{coef: new(big.Rat).Set(t.Coef), pi: t.Pi, crossed: t.Cross}
 	for _, f := range t.Factors {
 		p.add(f)
 	}

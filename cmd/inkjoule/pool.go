@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"path/filepath"
 	"runtime/debug"
+	"sync"
 
 	"inkjoule/check"
 	"inkjoule/check/project"
@@ -55,6 +56,27 @@ func inOrder[T, R any](ctx context.Context, jobs int, items []T, do func(T) R, h
 	return ctx.Err()
 }
 
+// runners keeps the runner of each configuration.
+type runners struct {
+	mu sync.Mutex
+	by map[*project.Config]check.Runner
+}
+
+func (r *review) runner(c *project.Config) check.Runner {
+	r.runners.mu.Lock()
+	defer r.runners.mu.Unlock()
+	runner, ok := r.runners.by[c]
+	if !ok {
+		// what is wrong with a rule was said at start
+		runner, _ = check.NewRunner(check.Config{Rules: r.rules, Severity: c.Severity})
+		if r.runners.by == nil {
+			r.runners.by = map[*project.Config]check.Runner{}
+		}
+		r.runners.by[c] = runner
+	}
+	return runner
+}
+
 // one reviews one source. A panic is an error of the program that costs this
 // note and no other.
 func (r *review) one(ctx context.Context, s source) (out outcome) {
@@ -75,7 +97,7 @@ func (r *review) one(ctx context.Context, s source) (out outcome) {
 	if err != nil {
 		return outcome{errs: []error{err}}
 	}
-	found, err := check.Run(ctx, note, check.Config{Rules: r.rules, Severity: config.Severity})
+	found, err := r.runner(config).Run(ctx, note)
 	if ctx.Err() != nil {
 		return outcome{errs: []error{ctx.Err()}}
 	}

@@ -64,6 +64,7 @@ type review struct {
 	world   *world
 	flags   *reviewFlags
 	rules   []*check.Rule
+	runners runners
 	past    *past // of --against; nil without
 	configs *project.Configs
 	fail    lang.Severity // 0: what each note's configuration says
