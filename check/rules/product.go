@@ -145,10 +145,15 @@ func newProduct(t lang.Term) *product {
 }
 
 func (p *product) add(f lang.Factor) {
+	if r, is := rootOf(f); is {
+		twos, odd := splitTwos(r)
+		p.root2 = p.root2.Add(unit.Whole(twos).Mul(f.Exp))
+		if odd.Cmp(big.NewRat(1, 1)) == 0 {
+			return
+		}
+		f.Key = "#" + odd.RatString()
+	}
 	switch {
-	case f.Key == "#2":
-		p.root2 = p.root2.Add(f.Exp)
-		return
 	case strings.HasPrefix(f.Key, "along "):
 		return // a direction of length one
 	case f.Over != nil:

@@ -137,19 +137,40 @@ func statOfForm(n *lang.Note, form *lang.Form, inferred kind.Qualifier) kind.Qua
 		return inferred
 	}
 	p := newProduct(t)
-	half := unit.NewRat(1, 2)
 	stat := inferred
 	for _, f := range p.all {
 		if f.Symbol != nil && f.Facts.QualBy == lang.Declared && f.Facts.Qualifier != kind.Unqualified && f.Exp == unit.Whole(1) {
 			stat = f.Facts.Qualifier
 		}
 	}
+	half := unit.NewRat(1, 2)
 	switch {
 	case p.root2 == half && stat == kind.RMS:
 		return kind.Peak
 	case p.root2 == half.Neg() && stat == kind.Peak:
 		return kind.RMS
 	case p.root2 != unit.Rat{}:
+		return kind.Unqualified
+	}
+	return statInDigits(t, stat)
+}
+
+// statInDigits counts a √2 that is written as 1.414; where a number may be a
+// conversion or a scaling, the statistic is not known.
+func statInDigits(t lang.Term, stat kind.Qualifier) kind.Qualifier {
+	other := kind.Peak
+	if stat == kind.Peak {
+		other = kind.RMS
+	}
+	s, ok := scaleOf(t)
+	switch {
+	case !ok:
+		return kind.Unqualified
+	case s.value == 1 || !crest(stat, other) && stat != kind.PeakToPeak:
+		return stat
+	case stat == kind.Peak && s.fits(stat, kind.PeakToPeak), stat != kind.PeakToPeak && s.fits(stat, other):
+		return kind.Unqualified
+	case stat == kind.PeakToPeak && (s.fits(stat, kind.Peak) || s.fits(stat, kind.RMS)):
 		return kind.Unqualified
 	}
 	return stat

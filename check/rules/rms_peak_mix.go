@@ -2,7 +2,7 @@ package rules
 
 import (
 	"fmt"
-	"math/big"
+	"math"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -17,9 +17,11 @@ func (Book) RMSPeakMix() check.Rule {
 		Severity: lang.Error,
 		Title:    "Values of unlike statistics (peak, rms, peak-to-peak, static, average) meet without conversion",
 		Sees: "A sum, difference, comparison or product of two quantities whose statistics are known and do not go together, a quotient of a peak and an rms value, " +
-			"and a quantity declared with one statistic whose formula gives another without √2 or 2 between them.",
+			"and a quantity declared with one statistic whose formula gives another with no √2 or 2 between them, whatever other numbers stand there (U/√3, 1.1·U, U/(r·ln(b/a))). " +
+			"In a harmonic note a caution where a peak, an rms value or a swing is compared with, added to or subtracted from a quantity whose statistic is not stated.",
 		Silent: "For a static value plus a peak; for √(U_dc² + U_rms²); for instantaneous against peak; for the quotient of a peak and an rms value of which one follows from the other " +
-			"(a crest factor); for a scaling such as E·U_m/U_n, for ripple ratios; for powers and energies of a cycle that are compared with crests; where either statistic is not known.",
+			"(a crest factor); where a √2, its digits, a crest factor, a ratio or the root of a duty ratio stands between the two; for a quantity that is declared square, triangular or of another waveform; " +
+			"for a scaling such as E·U_m/U_n, for ripple ratios; for powers and energies of a cycle that are compared with crests; outside a harmonic note where either statistic is not known.",
 		Formula: "One sinusoid: X_pp = 2 X̂ = 2√2 X_rms. A square made with the wrong one is off by 2 or 8, a margin by 1.41 or 2.83.",
 		Remedy:  "Convert where the quantity is defined: `U_p, peak voltage = sqrt(2)*U`.",
 		Source:  "IEC 60050-103:2009, 103-02-03 (rms value), 103-06-12 (peak value) (from memory)",
@@ -32,20 +34,17 @@ func (Book) RMSPeakMix() check.Rule {
     E_s, peak electric field strength = 3.6 kV/mm
     criterion E_p < E_s
 `},
-		Run: rmsPeakMix,
+		Run: perSpot(rmsPeakMix),
 	}
 }
 
-func rmsPeakMix(p *check.Pass) error {
-	for _, s := range p.Note.Script.Stmts {
-		m := mixer{p: p, stmt: s}
-		lang.Walk(s.Tree, m.node)
-	}
-	for _, c := range viewOf(p).claims {
+func rmsPeakMix(p *check.Pass, s *spot) {
+	m := mixer{p: p, stmt: s.stmt}
+	lang.Walk(s.stmt.Tree, m.node)
+	for _, c := range s.claims {
 		c.unlikeDeclared(p)
 		c.unlikeFactors(p)
 	}
-	return nil
 }
 
 // mixer looks for unlike statistics in one statement.
@@ -66,14 +65,14 @@ func (m mixer) stat(x lang.Expr) kind.Qualifier {
 	return f.Qualifier
 }
 
-// bothKnown is a quick test before forms are built.
-func (m mixer) bothKnown(x, y lang.Expr) bool {
+// someKnown is a quick test before forms are built.
+func (m mixer) someKnown(x, y lang.Expr) bool {
 	for _, z := range []lang.Expr{x, y} {
-		if f, ok := m.p.Note.FactsOf(m.stmt, z); !ok || f.Qualifier == kind.Unqualified {
-			return false
+		if f, ok := m.p.Note.FactsOf(m.stmt, z); ok && f.Qualifier != kind.Unqualified {
+			return true
 		}
 	}
-	return true
+	return false
 }
 
 func (m mixer) node(t lang.Tree) bool {
@@ -82,12 +81,16 @@ func (m mixer) node(t lang.Tree) bool {
 		m.binary(t)
 	case *lang.Relation:
 		for i := range t.Ops {
-			if !m.bothKnown(t.Terms[i], t.Terms[i+1]) {
+			x, y := t.Terms[i], t.Terms[i+1]
+			if !m.someKnown(x, y) || !m.amplitudes(x, y) {
 				continue
 			}
-			a, b := m.stat(t.Terms[i]), m.stat(t.Terms[i+1])
-			if known(a, b) && !kind.Like(a, b) && m.amplitudes(t.Terms[i], t.Terms[i+1]) {
-				m.report(t, t.Terms[i], t.Terms[i+1], "compared with", a, b)
+			a, b := m.stat(x), m.stat(y)
+			switch {
+			case !known(a, b):
+				m.unstated(t, x, y, "compared with")
+			case !kind.Like(a, b):
+				m.report(t, x, y, "compared with", a, b)
 			}
 		}
 	}
@@ -97,27 +100,76 @@ func (m mixer) node(t lang.Tree) bool {
 func known(a, b kind.Qualifier) bool { return a != kind.Unqualified && b != kind.Unqualified }
 
 func (m mixer) binary(b *lang.Binary) {
-	if b.Op != lang.OpAdd && b.Op != lang.OpSub && b.Op != lang.OpDiv || !m.bothKnown(b.X, b.Y) {
+	if b.Op != lang.OpAdd && b.Op != lang.OpSub && b.Op != lang.OpDiv || !m.someKnown(b.X, b.Y) {
 		return
 	}
 	x, y := m.stat(b.X), m.stat(b.Y)
-	if !known(x, y) {
-		return
-	}
-	switch b.Op {
-	case lang.OpAdd:
-		if _, ok := kind.Add(x, y); !ok {
-			m.report(b, b.X, b.Y, "added to", x, y)
-		}
-	case lang.OpSub:
-		if _, ok := kind.Add(x, y); !ok {
-			m.report(b, b.X, b.Y, "subtracted from or less", x, y)
-		}
-	case lang.OpDiv:
+	if b.Op == lang.OpDiv {
 		if crest(x, y) && m.amplitudes(b.X, b.Y) && !m.related(b.X, b.Y) {
 			m.report(b, b.X, b.Y, "divided by", x, y)
 		}
+		return
 	}
+	verb := "added to"
+	if b.Op == lang.OpSub {
+		verb = "subtracted from or less"
+	}
+	if !known(x, y) {
+		if m.amplitudes(b.X, b.Y) {
+			m.unstated(b, b.X, b.Y, verb)
+		}
+	} else if _, ok := kind.Add(x, y); !ok {
+		m.report(b, b.X, b.Y, verb, x, y)
+	}
+}
+
+// unstated cautions about a quantity of an alternating note whose statistic is
+// not said where it meets a peak, an rms value or a swing.
+func (m mixer) unstated(at lang.Tree, x, y lang.Expr, verb string) {
+	if word, _ := m.p.Note.RegimeAt(m.stmt); word != "harmonic" {
+		return
+	}
+	said, open := m.stat(x), m.open(y)
+	if open == nil {
+		said, open = m.stat(y), m.open(x)
+	}
+	if open == nil || said != kind.Peak && said != kind.RMS && said != kind.PeakToPeak {
+		return
+	}
+	m.p.Report(lang.Fault{
+		Span: m.stmt.Abs(at), Severity: m.p.Lowered(),
+		Message: fmt.Sprintf("%s value is %s %s, whose statistic is not stated", article(said), verb, open.Name),
+		Detail:  fmt.Sprintf("Say at its definition what it is: `%s, rms …` or `%s, peak …`. Between the two lies a factor of 1.41.", open.Name, open.Name),
+		Related: []lang.Related{{Path: open.Path, Span: open.Span, Message: "its statistic is not stated here"}},
+	})
+}
+
+// open gives the alternating quantity in an expression whose statistic is not
+// stated: the only amplitude of a product of known make.
+func (m mixer) open(x lang.Expr) *lang.Symbol {
+	t, single := m.p.Note.StatementForm(m.stmt, x, lang.UpToDeclared).Single()
+	if !single {
+		return nil
+	}
+	var found *lang.Symbol
+	for _, f := range t.Factors {
+		switch {
+		case f.Facts.Qualifier != kind.Unqualified || f.Facts.Complex || f.Call != "":
+			return nil
+		case !isAmplitude(f.Facts):
+		case found != nil || f.Symbol == nil || f.Exp != unit.Whole(1) || f.Facts.KindBy != lang.Declared:
+			return nil
+		default:
+			found = f.Symbol
+		}
+	}
+	return found
+}
+
+// isAmplitude reports a quantity that has a peak and an rms value: a field, a
+// voltage, a current, no ratio of such.
+func isAmplitude(f lang.Facts) bool {
+	return f.Kind.Info().Class == kind.ClassAmplitude && f.Dim != unit.Dim{}
 }
 
 // crest reports a peak and an rms value, in either order. Quotients of other
@@ -130,7 +182,7 @@ func crest(x, y kind.Qualifier) bool {
 func (m mixer) amplitudes(xs ...lang.Expr) bool {
 	for _, x := range xs {
 		f, _ := m.p.Note.FactsOf(m.stmt, x)
-		if f.Kind.Info().Class != kind.ClassAmplitude {
+		if !isAmplitude(f) {
 			return false
 		}
 	}
@@ -184,7 +236,7 @@ func (c *claim) unlikeFactors(p *check.Pass) {
 	for _, t := range products(c.note.Normal(c.sym, lang.NamesStay)) {
 		var above []lang.Factor
 		for _, f := range t.all {
-			if f.Facts.Kind.Info().Class != kind.ClassAmplitude {
+			if !isAmplitude(f.Facts) {
 				continue
 			}
 			if f.Exp != unit.Whole(1) {
@@ -212,34 +264,120 @@ func (c *claim) unlikeFactors(p *check.Pass) {
 }
 
 // unlikeDeclared finds a quantity declared with one statistic whose formula is
-// an amplitude of another, with no number between them.
+// an amplitude of another, with no number that could convert it.
 func (c *claim) unlikeDeclared(p *check.Pass) {
-	if !c.stated || c.sym.Facts.Kind.Info().Class != kind.ClassAmplitude {
+	if !c.stated || !isAmplitude(c.sym.Facts) {
 		return
 	}
-	t, single := c.note.Normal(c.sym, lang.UpToDeclared).Single()
-	if !single || t.Coef.Cmp(big.NewRat(1, 1)) != 0 || t.Pi != 0 {
+	form := c.note.Normal(c.sym, unnamed)
+	if form == nil || len(form.Terms) == 0 || shaped(c.sym.Facts.Waveform) {
 		return
 	}
+	var first *lang.Factor
+	for _, t := range form.Terms {
+		a := unconverted(t, c.stat)
+		if a == nil || first != nil && a.Facts.Qualifier != first.Facts.Qualifier {
+			return
+		}
+		if first == nil {
+			first = a
+		}
+	}
+	from := first.Facts.Qualifier
+	severity, unless := c.ifShaped(p, form, from)
+	f := lang.Fault{
+		Severity: severity,
+		Message:  fmt.Sprintf("%s is declared as %s value, and its formula gives %s value", c.sym.Name, article(c.stat), article(from)),
+		Detail:   "Convert, or declare it as what it is." + conversionHint(from, c.stat) + unless,
+		Related:  c.because([]lang.Factor{*first}, func(s *lang.Symbol) string { return fmt.Sprintf("%s is %s value", s.Name, article(from)) }),
+	}
+	if crest(from, c.stat) && c.isProduct() {
+		f.Fix = &lang.Fix{Title: "Multiply by sqrt(2)", Edits: []lang.Edit{insert(c.span().Start, "sqrt(2)*")}}
+		if c.stat == kind.RMS {
+			f.Fix = &lang.Fix{Title: "Divide by sqrt(2)", Edits: []lang.Edit{insert(c.span().Start, "1/sqrt(2)*")}}
+		}
+	}
+	c.report(p, f)
+}
+
+// shaped reports a waveform for which the factors of a sinusoid do not hold.
+func shaped(w kind.Waveform) bool { return w != kind.AnyWave && w != kind.Sinusoidal }
+
+// ifShaped names the waveform for which a formula without √2 would be right
+// after all: peak and rms value are equal for a square wave, and the one is √3
+// times the other for a triangle. The latter is a formula that people mean.
+func (c *claim) ifShaped(p *check.Pass, form *lang.Form, from kind.Qualifier) (lang.Severity, string) {
+	t, single := form.Single()
+	if !single || !crest(from, c.stat) || c.harmonic() {
+		return p.Rule.Severity, ""
+	}
+	s, _ := scaleOf(t)
+	if c.stat == kind.RMS {
+		s.value = 1 / s.value
+	}
+	switch {
+	case s.value == 1:
+		return p.Rule.Severity, fmt.Sprintf(" If it is a square wave, write `%s, square %s …`.", c.sym.Name, c.stat)
+	case math.Abs(s.value/math.Sqrt(3)-1) < 2e-3:
+		return p.Lowered(), fmt.Sprintf(" If it is a triangular wave, for which the square root of 3 stands between the two, write `%s, triangular %s …`.", c.sym.Name, c.stat)
+	}
+	return p.Rule.Severity, ""
+}
+
+// unnamed looks through names that declare neither a kind nor a statistic.
+func unnamed(s *lang.Symbol) bool {
+	return s.Facts.KindBy != lang.Declared && s.Facts.QualBy != lang.Declared
+}
+
+// unconverted gives the only amplitude of a term where it is of another
+// statistic than the result, and nothing in the term may convert it.
+func unconverted(t lang.Term, to kind.Qualifier) *lang.Factor {
 	var amplitude *lang.Factor
 	for i, f := range t.Factors {
 		switch {
-		case f.Key == "#2" || f.Call != "" || f.Symbol == nil && !f.Literal && f.Over == nil || f.Facts.Dim == (unit.Dim{}) && f.Facts.Kind == 0:
-			return // something may convert
-		case f.Facts.Qualifier == kind.Unqualified:
-		case amplitude != nil || f.Exp != unit.Whole(1):
-			return
+		case mayConvert(f):
+			return nil
+		case !isAmplitude(f.Facts) && f.Facts.Qualifier == kind.Unqualified:
+		case amplitude != nil || f.Exp != unit.Whole(1) || f.Facts.Qualifier == kind.Unqualified:
+			return nil
 		default:
 			amplitude = &t.Factors[i]
 		}
 	}
-	if amplitude == nil || kind.Like(amplitude.Facts.Qualifier, c.stat) {
-		return
+	if amplitude == nil || kind.Like(amplitude.Facts.Qualifier, to) || shaped(amplitude.Facts.Waveform) {
+		return nil
 	}
-	from := amplitude.Facts.Qualifier
-	c.report(p, lang.Fault{
-		Message: fmt.Sprintf("%s is declared as %s value, and its formula gives %s value", c.sym.Name, article(c.stat), article(from)),
-		Detail:  "Convert, or declare it as what it is." + conversionHint(from, c.stat),
-		Related: c.because([]lang.Factor{*amplitude}, func(s *lang.Symbol) string { return fmt.Sprintf("%s is %s value", s.Name, article(from)) }),
-	})
+	if amplitude.Facts.Qualifier == kind.Static && to == kind.RMS {
+		return nil // the rms value of a steady quantity is its value
+	}
+	if s, ok := scaleOf(t); !ok || s.fits(amplitude.Facts.Qualifier, to) {
+		return nil
+	}
+	return amplitude
+}
+
+// mayConvert reports a factor that could hold the √2: text that cannot be taken
+// apart, a cosine, a root (of a duty ratio, of t_on/T), a ratio that may be a
+// crest factor. The logarithm of a geometry does not.
+func mayConvert(f lang.Factor) bool {
+	if _, root := rootOf(f); root || f.Literal || f.Over != nil {
+		return false
+	}
+	switch f.Call {
+	case "":
+	case "ln", "log10", "exp", "sinh", "cosh", "tanh":
+		return false
+	default:
+		return true
+	}
+	k := f.Facts.Kind
+	ratio := k == 0 || k == kind.Ratio || k.Is(kind.AmplitudeRatio) || k.Is(kind.DutyRatio)
+	_, whole := f.Exp.Int()
+	return f.Symbol == nil || !whole || f.Facts.Dim == (unit.Dim{}) && ratio
+}
+
+// isProduct reports an expression before which a factor may be put.
+func (c *claim) isProduct() bool {
+	b, ok := c.x.(*lang.Binary)
+	return !ok || b.Op != lang.OpAdd && b.Op != lang.OpSub
 }
