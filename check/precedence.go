@@ -32,7 +32,7 @@ var overrides = []beats{
 	// The medium decides which form is right at all.
 	{"half-product-nonlinear", []string{"half-missing-stored-energy", "quarter-half-average"}},
 	{"bias-point-capacitance-energy", []string{"half-product-nonlinear", "half-missing-stored-energy", "quarter-half-average", "property-out-of-range"}},
-	{"saturated-core-energy", []string{"half-missing-stored-energy", "quarter-half-average"}},
+	{"saturated-core-energy", []string{"half-product-nonlinear", "half-missing-stored-energy", "quarter-half-average"}},
 	{"dispersive-energy-density", []string{"half-missing-stored-energy", "quarter-half-average"}},
 	{"permittivity-graded-dc", []string{"layer-field-continuity"}},
 	{"energy-coenergy-swap", []string{"constraint-sign-of-force"}},

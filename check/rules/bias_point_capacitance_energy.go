@@ -114,9 +114,9 @@ func (c *claim) slopeFactor(f lang.Factor) *slope {
 }
 
 // voltageOf is the greatest voltage of a term, with its factor.
-func voltageOf(t *product) (u float64, by lang.Factor, known bool) {
+func voltageOf(n *lang.Note, t *product) (u float64, by lang.Factor, known bool) {
 	for _, f := range t.byRole[roleElectric] {
-		if x, ok := sizeOf(f); ok && isOf(f.Facts, kind.Voltage) && x >= u {
+		if x, ok := sizeOf(n, f); ok && isOf(f.Facts, kind.Voltage) && x >= u {
 			u, by, known = x, f, true
 		}
 	}
@@ -126,7 +126,7 @@ func voltageOf(t *product) (u float64, by lang.Factor, known bool) {
 // slopeVerdict files a finding unless the capacitance is constant over the
 // voltages that matter.
 func (c *claim) slopeVerdict(p *check.Pass, t *product, f lang.Factor, s *slope) bool {
-	u, by, known := voltageOf(t)
+	u, by, known := voltageOf(c.note, t)
 	if known && s.holdsFor(u) {
 		return false
 	}
@@ -173,7 +173,7 @@ func (s *slope) holdsFor(u float64) bool {
 // that is no longer small against its rated voltage.
 func (c *claim) ratedVerdict(p *check.Pass, t *product, f lang.Factor) bool {
 	m, rated := c.ratedPart(f)
-	u, _, known := voltageOf(t)
+	u, _, known := voltageOf(c.note, t)
 	if rated == nil || !known {
 		return false
 	}

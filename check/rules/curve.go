@@ -95,3 +95,10 @@ func (k curve) moment(a, b float64) float64 {
 	})
 	return sum
 }
+
+// area is ∫ y dx from a to b.
+func (k curve) area(a, b float64) float64 {
+	sum := 0.0
+	k.pieces(a, b, func(x0, x1, y0, y1 float64) { sum += (x1 - x0) * (y0 + y1) / 2 })
+	return sum
+}

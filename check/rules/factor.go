@@ -8,23 +8,44 @@ import (
 	"inkjoule/lang"
 	"inkjoule/lang/eval"
 	"inkjoule/lang/kind"
+	"inkjoule/lang/unit"
 )
 
 // isOf reports a factor of the dimension of a kind, angle and cycle left out.
 func isOf(f lang.Facts, k kind.ID) bool { return f.Known && f.Dim.Base() == k.Dim().Base() }
 
 // sizeOf is the magnitude of a factor's quantity in SI units, exponent left
-// out: of a name with a value, or of a literal.
-func sizeOf(f lang.Factor) (float64, bool) {
+// out: of a name or a property with a value, or of a literal.
+func sizeOf(n *lang.Note, f lang.Factor) (float64, bool) {
 	switch {
 	case f.Symbol != nil && f.Part == "":
-		return magnitude(f.Symbol)
+		x, ok := magnitude(f.Symbol)
+		return x * derivedBy(n, f), ok
 	case f.Literal:
 		number, _, _ := strings.Cut(f.Key, " ")
 		x, err := strconv.ParseFloat(number, 64)
 		return math.Abs(x), err == nil
 	}
 	return 0, false
+}
+
+// derivedBy is the constant between a property and the one that it rests on:
+// eps_0 or mu_0 between an absolute and a relative constant, else 1.
+func derivedBy(n *lang.Note, f lang.Factor) float64 {
+	ratio := f.Facts.Dim.Div(f.Symbol.Facts.Dim).Base()
+	for _, name := range []string{"eps_0", "mu_0"} {
+		s := n.Lookup(name)
+		if s == nil {
+			continue
+		}
+		switch d := s.Facts.Dim.Base(); ratio {
+		case d:
+			return s.Value.Re()
+		case unit.Dim{}.Div(d):
+			return 1 / s.Value.Re()
+		}
+	}
+	return 1
 }
 
 // magnitude is the magnitude of a known number or real vector.

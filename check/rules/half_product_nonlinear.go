@@ -82,8 +82,12 @@ func (c *claim) halfInCurve(p *check.Pass, m medium) {
 }
 
 // inMedium reports a term of which a property or an amplitude belongs to the
-// medium.
+// medium. A flux density crosses into a gap: with ε0 or µ0 alone it makes the
+// energy there, whatever it passes before.
 func (c *claim) inMedium(q *square, m medium) bool {
+	if inGap(q) {
+		return false
+	}
 	for _, f := range q.all {
 		for _, key := range f.Facts.Media {
 			if key == m.sym.Key {
@@ -110,4 +114,20 @@ func (c *claim) energyByDefinition(q *square) bool {
 		}
 	}
 	return false
+}
+
+// inGap reports B²/2µ0 or D²/2ε0.
+func inGap(q *square) bool {
+	for _, f := range q.amplitudes {
+		if !isOf(f.Facts, kind.MagneticFluxDensity) && !isOf(f.Facts, kind.ElectricFluxDensity) {
+			return false
+		}
+	}
+	links := append(append([]lang.Factor{}, q.byRole[roleInduction]...), q.byRole[roleCapacity]...)
+	for _, f := range links {
+		if f.Symbol == nil || f.Symbol.Role != lang.RoleConstant {
+			return false
+		}
+	}
+	return len(links) > 0
 }
