@@ -58,6 +58,8 @@ func (r *numberReader) node(s *lang.Symbol, t lang.Tree) bool {
 		}
 	case *lang.Name:
 		r.name(t)
+	case *lang.Call:
+		return t.Fn.Text != "sqrt" // what stands under a root counts nothing
 	}
 	return true
 }

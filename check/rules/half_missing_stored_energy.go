@@ -85,7 +85,7 @@ func (c *claim) halfOff(q *square) *big.Rat {
 	if q.stat == kind.Static && !found.raised {
 		by = append(by, big.NewRat(1, 2))
 	}
-	return found.off(q.coef, big.NewRat(1, 2), by...)
+	return q.off(found, big.NewRat(1, 2), by...)
 }
 
 // sameState reports whether both amplitudes belong to one state: a square

@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math/big"
+	"slices"
 	"strings"
 
 	"inkjoule/check"
@@ -20,8 +21,9 @@ func (Book) MeanPowerHalf() check.Rule {
 		Title:    "The half of a mean power is missing for peak values, or stands beside rms values",
 		Sees: "A mean power, power density or power flux (U·I, R·I², U²/R, σ·E², E·J, E²/Z, E×H, ω·C·U²·tan δ) of peak amplitudes with the coefficient 1, " +
 			"or of rms amplitudes with 1/2; apparent, reactive and active power are means by definition. " +
-			"A caution where the note says only `power` and the crest may be meant.",
-		Silent:  "For a peak or instantaneous power, for static values, for amplitudes of unlike or unstated statistics, for a switching power C·U²·f.",
+			"A caution where the note says only `power` and the crest may be meant. A quantity that is declared square or triangular is judged by its own mean square.",
+		Silent: "For a peak, instantaneous or peak envelope power, for static values, for amplitudes of unlike or unstated statistics, for a switching power C·U²·f, " +
+			"with a duty ratio (the amplitude may be the level of a pulse), for waveforms other than sinusoidal, square and triangular.",
 		Formula: "P = ½ Re(Û·Î*) = Re(U·I*) for rms phasors; ⟨p⟩ = ½σÊ² = σE_rms²; ⟨S⟩ = ½ Re(Ê×Ĥ*).",
 		Remedy:  "Keep one statistic in a note, and take the half with peak values only.",
 		Source:  "Jackson, Classical Electrodynamics, 3rd ed., 6.9; IEC 60050-131:2002, 131-11-42 (active power) (from memory)",
@@ -35,36 +37,36 @@ func (Book) MeanPowerHalf() check.Rule {
     phi = 25°
     P, average power = 1/2*U*I*cos(phi) = 231 W
 `},
-		Run: meanPower,
+		Run: perClaim(meanPower),
 	}
 }
 
-func meanPower(p *check.Pass) error {
-	for _, c := range viewOf(p).claims {
-		form, ok := c.form()
-		if !ok || form != kind.Dissipation && form != kind.Flux || c.stat == kind.Peak || c.stat == kind.Instantaneous {
-			continue
-		}
-		if squares, ok := c.squares(form); ok {
-			c.meanHalf(p, squares)
-		}
+func meanPower(p *check.Pass, c *claim) {
+	form, ok := c.form()
+	if !ok || form != kind.Dissipation && form != kind.Flux || c.stat == kind.Peak || c.stat == kind.Instantaneous || c.sym.Facts.Kind.Is(kind.PeakEnvelopePower) {
+		return
 	}
-	return nil
+	if squares, ok := c.squares(form); ok {
+		c.meanHalf(p, form, squares)
+	}
 }
 
 // meanHalf reports the first term whose half is missing or too much.
-func (c *claim) meanHalf(p *check.Pass, squares []*square) {
+func (c *claim) meanHalf(p *check.Pass, form kind.Form, squares []*square) {
 	for _, q := range squares {
 		if !q.known || !c.isMean(q) {
 			continue
 		}
-		found := numbersOf(c.note, c.sym)
+		right, ok := q.coefficient(c.note, form, kind.Average)
+		if !ok {
+			continue
+		}
 		var off *big.Rat
-		switch q.stat {
+		switch found := numbersOf(c.note, c.sym); q.stat {
 		case kind.Peak:
-			off = found.off(q.coef, big.NewRat(1, 2), big.NewRat(2, 1))
+			off = q.off(found, right, new(big.Rat).Inv(right))
 		case kind.RMS:
-			off = found.off(q.coef, big.NewRat(1, 1), big.NewRat(1, 2))
+			off = q.off(found, right, big.NewRat(1, 2))
 		}
 		if off != nil {
 			c.reportMean(p, q, off, len(squares) == 1)
@@ -74,9 +76,13 @@ func (c *claim) meanHalf(p *check.Pass, squares []*square) {
 }
 
 // isMean reports a term that is a power in the mean: products of amplitudes
-// with what dissipates, ω·C·U² with a loss factor or as a reactive power. The
-// switching power C·U²·f is none.
+// with what dissipates, ω·C·U² with a loss factor, an imaginary part, or as an
+// average or a reactive power. The switching power C·U²·f is none, and with a
+// duty ratio the amplitude may be the level of a pulse.
 func (c *claim) isMean(q *square) bool {
+	if slices.ContainsFunc(q.all, func(f lang.Factor) bool { return f.Facts.Kind.Is(kind.DutyRatio) }) {
+		return false
+	}
 	if len(q.byRole[roleFrequency]) == 0 {
 		return true
 	}
@@ -88,7 +94,7 @@ func (c *claim) isMean(q *square) bool {
 			return false
 		}
 	}
-	return len(q.byRole[roleLoss]) > 0 || c.sym.Facts.Kind.Is(kind.ReactivePower)
+	return len(q.byRole[roleLoss]) > 0 || len(q.calls) > 0 || c.stat == kind.Average || c.sym.Facts.Kind.Is(kind.ReactivePower)
 }
 
 // meanByDefinition reports kinds that have no crest.
@@ -101,8 +107,11 @@ func (c *claim) meanByDefinition() bool {
 func (c *claim) reportMean(p *check.Pass, q *square, off *big.Rat, alone bool) {
 	f := lang.Fault{Related: c.because(q.amplitudes, func(s *lang.Symbol) string { return fmt.Sprintf("%s is %s value", s.Name, article(q.stat)) })}
 	if q.stat == kind.Peak {
-		f.Message = fmt.Sprintf("%s is %s times the mean power: the half is missing beside peak values", c.sym.Name, times(off))
+		f.Message = fmt.Sprintf("%s is %s times the mean power: %s", c.sym.Name, times(off), c.missingShare(q, off))
 		f.Detail = fmt.Sprintf("Write `1/2 * %s`. If the crest is meant, write `%s, peak power = …`.", c.text(), c.sym.Name)
+		if wave, _ := q.waves(c.note); shaped(wave) {
+			f.Detail = fmt.Sprintf("Write `%s * %s`.", ratio(new(big.Rat).Inv(off)), c.text())
+		}
 		if !c.meanByDefinition() {
 			f.Severity = p.Lowered()
 		}
@@ -115,4 +124,13 @@ func (c *claim) reportMean(p *check.Pass, q *square, off *big.Rat, alone bool) {
 		f.Fix = &lang.Fix{Title: "Multiply by " + factor, Edits: []lang.Edit{insert(c.span().Start, factor+" * ")}}
 	}
 	c.report(p, f)
+}
+
+// missingShare names what is missing beside peak values: the half, or the share
+// of another waveform.
+func (c *claim) missingShare(q *square, off *big.Rat) string {
+	if wave, _ := q.waves(c.note); shaped(wave) {
+		return fmt.Sprintf("the mean square of %s values is %s of the square of the crest", wave, ratio(new(big.Rat).Inv(off)))
+	}
+	return "the half is missing beside peak values"
 }

@@ -2,6 +2,7 @@ package rules
 
 import (
 	"math/big"
+	"slices"
 	"strings"
 	"sync"
 
@@ -131,9 +132,26 @@ func products(f *lang.Form) []*product {
 	}
 	out := make([]*product, len(f.Terms))
 	for i, t := range f.Terms {
-		out[i] = newProduct(t)
+		out[i] = newProduct(withoutIm(t))
 	}
 	return out
+}
+
+// withoutIm looks through the imaginary part of a product of phasors, as the
+// normal form does through the real part.
+func withoutIm(t lang.Term) lang.Term {
+	for i, f := range t.Factors {
+		inner, single := f.Inside.Single()
+		if f.Call != "Im" || f.Exp != unit.Whole(1) || !single || !slices.ContainsFunc(inner.Factors, func(g lang.Factor) bool { return isAmplitude(g.Facts) }) {
+			continue
+		}
+		out := t
+		out.Coef = new(big.Rat).Mul(t.Coef, inner.Coef)
+		out.Pi += inner.Pi
+		out.Factors = slices.Concat(t.Factors[:i], inner.Factors, t.Factors[i+1:])
+		return out
+	}
+	return t
 }
 
 func newProduct(t lang.Term) *product {

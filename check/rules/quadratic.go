@@ -1,6 +1,7 @@
 package rules
 
 import (
+	"math"
 	"math/big"
 	"slices"
 
@@ -19,8 +20,9 @@ type square struct {
 	form       kind.Form
 	amplitudes []lang.Factor // one with exponent 2, or two with 1
 	stat       kind.Qualifier
-	known      bool // the statistic of both amplitudes is known and the same
-	mixed      bool // they are known and differ
+	known      bool     // the statistic of both amplitudes is known and the same
+	inside     *big.Rat // the coefficient with the numbers that stand in names of elements; nil if there are none
+	mixed      bool     // they are known and differ
 }
 
 // two is the exponent of a square.
@@ -31,12 +33,14 @@ func squareOf(n *lang.Note, p *product, form kind.Form) *square {
 	for _, s := range shapes(form) {
 		if s.fits(p) {
 			own := *p
-			own.coef = new(big.Rat).Set(p.coef)
+			own.coef = new(big.Rat).Abs(p.coef)
 			q := &square{product: &own, form: form}
 			for _, r := range s.amplitudes {
 				q.amplitudes = append(q.amplitudes, p.byRole[r]...)
 			}
 			q.statistics(n)
+			q.roundRoots()
+			q.lookInside(n)
 			return q
 		}
 	}
@@ -58,7 +62,7 @@ var energyShapes = []shape{
 
 var powerShapes = []shape{
 	{amplitudes: []role{roleElectric, roleMagnetic, roleCurrent}, links: []role{roleResistive}, calls: []string{"cos", "sin"}},
-	{amplitudes: []role{roleElectric}, links: []role{roleCapacity, roleLoss}, frequency: true},
+	{amplitudes: []role{roleElectric}, links: []role{roleCapacity, roleLoss}, calls: []string{"Im"}, frequency: true},
 	{amplitudes: []role{roleMagnetic}, links: []role{roleInduction, roleResistive}, frequency: true},
 }
 
@@ -119,6 +123,65 @@ func (q *square) convert() {
 		q.coef.Mul(q.coef, pow2(k))
 		q.root2 = unit.Rat{}
 	}
+}
+
+// roundRoots takes (1.414·U)² for 2·U²: within the digits of 1.414 and 0.707 a
+// coefficient is the power of two that it was meant to be.
+func (q *square) roundRoots() {
+	x, _ := q.coef.Float64()
+	if !q.known || x <= 0 || q.coef.Denom().IsInt64() && q.coef.Denom().Int64() < 1000 {
+		return
+	}
+	n := math.Round(math.Log2(x))
+	if math.Abs(x/math.Exp2(n)-1) < 5e-4 {
+		q.coef = pow2(int(n))
+	}
+}
+
+// lookInside multiplies the numbers of elements that no kind is declared for
+// into a second coefficient: k = L/2 may be half of an inductance, or the half
+// of an energy.
+func (q *square) lookInside(n *lang.Note) {
+	for _, f := range q.all {
+		e, whole := f.Exp.Int()
+		if f.Symbol == nil || !whole || f.Symbol.Input || f.Facts.KindBy == lang.Declared || isAmplitude(f.Facts) {
+			continue
+		}
+		t, single := n.Normal(f.Symbol, lang.NamesStay).Single()
+		if !single || t.Coef.Cmp(big.NewRat(1, 1)) == 0 || t.Coef.Sign() == 0 {
+			continue
+		}
+		if q.inside == nil {
+			q.inside = new(big.Rat).Set(q.coef)
+		}
+		for range e {
+			q.inside.Mul(q.inside, t.Coef)
+		}
+		for range -e {
+			q.inside.Quo(q.inside, t.Coef)
+		}
+	}
+}
+
+// off tells by which of the factors the coefficient is off the right one; nil
+// if by none of them, or if either reading of the numbers is right.
+func (q *square) off(w numbers, right *big.Rat, by ...*big.Rat) *big.Rat {
+	if q.inside == nil {
+		return w.off(q.coef, right, by...)
+	}
+	if w.mayBe(q.coef, right) || w.mayBe(q.inside, right) {
+		return nil
+	}
+	if off := w.off(q.inside, right, by...); off != nil {
+		return off
+	}
+	return w.off(q.coef, right, by...)
+}
+
+// mayBe reports whether the coefficient can be the right one times a count, in
+// either reading.
+func (q *square) mayBe(w numbers, right *big.Rat) bool {
+	return w.mayBe(q.coef, right) || q.inside != nil && w.mayBe(q.inside, right)
 }
 
 // statOf is the statistic of a factor: the declared one, else what follows

@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math/big"
+	"slices"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -20,7 +21,8 @@ func (Book) QuarterHalfAverage() check.Rule {
 			"an average from peak values with 1/2 instead of 1/4, from rms values with 1 or 1/4 instead of 1/2; a peak from rms values with 1/2 instead of 1; " +
 			"and, where no statistic of the result is declared, a coefficient that is right for none.",
 		Silent: "For static and instantaneous amplitudes; for amplitudes of unlike or unstated statistics; for the electric and magnetic energy together " +
-			"(kind volumic electromagnetic energy) with twice the coefficient; in a nonlinear medium; for a crest of peak values without its half, which half-missing-stored-energy reports.",
+			"(kind volumic electromagnetic energy) with twice the coefficient; in a nonlinear or dispersive medium; " +
+			"for waveforms other than sinusoidal, square and triangular, of which the last two are judged by their own mean squares; for a crest of peak values without its half, which half-missing-stored-energy reports.",
 		Formula: "⟨cos²⟩ = 1/2: ⟨½εE²⟩ = ¼εÊ² = ½εE_rms²; at the crest ½εÊ² = εE_rms².",
 		Remedy:  "Take the coefficient of the statistic, and say with the result whether it is a peak or an average.",
 		Source:  "Jackson, Classical Electrodynamics, 3rd ed., 6.9 (time averages of harmonic fields; from memory)",
@@ -32,21 +34,23 @@ func (Book) QuarterHalfAverage() check.Rule {
     E, peak electric field strength = 12 kV/m
     w, average energy density = 1/4*eps*E^2 = 0.670 mJ/m^3
 `},
-		Run: quarterHalf,
+		Run: perClaim(quarterHalf),
 	}
 }
 
-func quarterHalf(p *check.Pass) error {
-	for _, c := range viewOf(p).claims {
-		form, ok := c.form()
-		if _, curved := c.nonlinear(); !ok || curved || form != kind.StoredEnergy && form != kind.FieldForce {
-			continue
-		}
-		if squares, ok := c.squares(form); ok {
-			c.quarter(p, form, squares)
-		}
+func quarterHalf(p *check.Pass, c *claim) {
+	form, ok := c.form()
+	if !ok || form != kind.StoredEnergy && form != kind.FieldForce || c.curvedOrDispersive() {
+		return
 	}
-	return nil
+	if squares, ok := c.squares(form); ok {
+		c.quarter(p, form, squares)
+	}
+}
+
+// curvedOrDispersive reports a medium for which table 1.4 does not hold.
+func (c *claim) curvedOrDispersive() bool {
+	return slices.ContainsFunc(c.mediaOf(), func(m medium) bool { return m.nonlinear() || m.says("dispersive") })
 }
 
 // quarter reports the first term whose coefficient is off.
@@ -76,18 +80,18 @@ func (c *claim) averageOff(q *square, form kind.Form) (right, off *big.Rat) {
 	var rights []*big.Rat
 	for _, to := range c.targets() {
 		for _, f := range c.formsOf(form) {
-			if num, den, ok := kind.Coefficient(f, q.stat, to); ok {
-				rights = append(rights, big.NewRat(int64(num), int64(den)))
+			if right, ok := q.coefficient(c.note, f, to); ok {
+				rights = append(rights, right)
 			}
 		}
 	}
 	for _, r := range rights {
-		if found.mayBe(q.coef, r) {
+		if q.mayBe(found, r) {
 			return nil, nil
 		}
 	}
 	for _, r := range rights {
-		off := found.off(q.coef, r, big.NewRat(2, 1), big.NewRat(1, 2), big.NewRat(4, 1), big.NewRat(1, 4))
+		off := q.off(found, r, big.NewRat(2, 1), big.NewRat(1, 2), big.NewRat(4, 1), big.NewRat(1, 4))
 		if off != nil && !c.halfRuleSpeaks(q, off) {
 			return r, off
 		}
@@ -128,8 +132,7 @@ func (c *claim) reportQuarter(p *check.Pass, q *square, right, off *big.Rat, alo
 	}
 	f := lang.Fault{
 		Message: fmt.Sprintf("%s is %s times %s: the coefficient is %s for %s values", c.sym.Name, times(off), what, ratio(right), q.stat),
-		Detail: fmt.Sprintf("From peak values the average has 1/4 and the peak 1/2; from rms values the average has 1/2 and the peak 1. Here %s stands.%s",
-			ratio(q.coef), c.totalUnless(q, off)),
+		Detail:  c.tableOf(q) + fmt.Sprintf(" Here %s stands.", ratio(q.coef)) + c.totalUnless(q, off),
 		Related: c.because(q.amplitudes, func(s *lang.Symbol) string { return fmt.Sprintf("%s is %s value", s.Name, article(q.stat)) }),
 	}
 	if factor := new(big.Rat).Inv(off); alone {
@@ -139,6 +142,16 @@ func (c *claim) reportQuarter(p *check.Pass, q *square, right, off *big.Rat, alo
 		}
 	}
 	c.report(p, f)
+}
+
+// tableOf tells the coefficients in words.
+func (c *claim) tableOf(q *square) string {
+	wave, _ := q.waves(c.note)
+	if crest, told := wave.Crest(); told && shaped(wave) {
+		return fmt.Sprintf("The crest factor of a %s quantity is the square root of %d: from peak values the average has 1/%d, from rms values the peak has %s.",
+			wave, crest, 2*crest, ratio(big.NewRat(int64(crest), 2)))
+	}
+	return "From peak values the average has 1/4 and the peak 1/2; from rms values the average has 1/2 and the peak 1."
 }
 
 // totalUnless names the fact that would make twice the coefficient right.

@@ -275,7 +275,7 @@ func (c *claim) unlikeDeclared(p *check.Pass) {
 	}
 	var first *lang.Factor
 	for _, t := range form.Terms {
-		a := unconverted(t, c.stat)
+		a := c.unconverted(t)
 		if a == nil || first != nil && a.Facts.Qualifier != first.Facts.Qualifier {
 			return
 		}
@@ -299,9 +299,6 @@ func (c *claim) unlikeDeclared(p *check.Pass) {
 	}
 	c.report(p, f)
 }
-
-// shaped reports a waveform for which the factors of a sinusoid do not hold.
-func shaped(w kind.Waveform) bool { return w != kind.AnyWave && w != kind.Sinusoidal }
 
 // ifShaped names the waveform for which a formula without √2 would be right
 // after all: peak and rms value are equal for a square wave, and the one is √3
@@ -331,7 +328,8 @@ func unnamed(s *lang.Symbol) bool {
 
 // unconverted gives the only amplitude of a term where it is of another
 // statistic than the result, and nothing in the term may convert it.
-func unconverted(t lang.Term, to kind.Qualifier) *lang.Factor {
+func (c *claim) unconverted(t lang.Term) *lang.Factor {
+	to := c.stat
 	var amplitude *lang.Factor
 	for i, f := range t.Factors {
 		switch {
@@ -344,7 +342,7 @@ func unconverted(t lang.Term, to kind.Qualifier) *lang.Factor {
 			amplitude = &t.Factors[i]
 		}
 	}
-	if amplitude == nil || kind.Like(amplitude.Facts.Qualifier, to) || shaped(amplitude.Facts.Waveform) {
+	if amplitude == nil || kind.Like(amplitude.Facts.Qualifier, to) || shaped(waveOf(c.note, *amplitude)) {
 		return nil
 	}
 	if amplitude.Facts.Qualifier == kind.Static && to == kind.RMS {
