@@ -197,6 +197,11 @@ func (b *former) member(m *Member) *Form {
 	if f, ok := b.local[key]; ok {
 		return b.part(m, f)
 	}
+	if b.c.owner != nil && b.n.Lookup(key) == nil {
+		if s := b.n.Lookup(b.c.owner.key + "." + key); s != nil { // a component of a sibling property
+			return b.part(m, atom(Factor{Key: s.Key, Facts: s.Facts, Symbol: s}))
+		}
+	}
 	owner := b.n.Lookup(key)
 	if owner == nil {
 		return nil

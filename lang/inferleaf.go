@@ -211,7 +211,11 @@ func (e *elab) member(m *Member) typed {
 		if s := e.local(key); s != nil {
 			return e.component(m, s.t, field)
 		}
-		if c = e.a.cells[key]; c == nil {
+		c = e.a.cells[key]
+		if c == nil {
+			if t, ok := e.sibling(key, n); ok {
+				return e.component(m, t, field)
+			}
 			e.unknownName(n, n.Text, "unknown-name")
 			return unknown()
 		}
