@@ -147,7 +147,6 @@ const (
 	RecoverableEnergyDensity
 	AirGap
 	OpticAxis
-	PrincipalFrame
 	Impermittivity
 	RelativeImpermittivity
 	CrestFactor
@@ -332,10 +331,9 @@ var table = [...]Kind{
 	RecoverableEnergyDensity: {"recoverable energy density", "delivered energy density; discharge energy density", "w_rec", "J/m^3", ClassEnergy, EnergyDensity, false},
 	AirGap:                   {"air gap", "gap length; length of the air gap", "g", "m", ClassOther, Length, false},
 
-	// Crystals: where the principal axes of a medium lie in the frame of the
-	// note, and the inverse of the permittivity.
+	// Crystals: the direction of the optic axis in the frame in which the note
+	// writes its vectors, and the inverse of the permittivity.
 	OpticAxis:              {"optic axis", "direction of the optic axis", "c", "1", ClassOther, 0, false},
-	PrincipalFrame:         {"principal frame", "rotation of the principal frame", "R", "1", ClassOther, 0, false},
 	Impermittivity:         {"impermittivity", "reciprocal permittivity", "β", "m/F", ClassOther, 0, true},
 	RelativeImpermittivity: {"relative impermittivity", "relative dielectric impermeability", "B", "1", ClassOther, 0, false},
 

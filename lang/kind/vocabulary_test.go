@@ -327,7 +327,7 @@ func TestExtraKinds(t *testing.T) {
 		"rated voltage", "incremental inductance", "reversible permeability", "complex permeability",
 		"saturation flux density", "flux density at the knee", "saturation current", "remanent flux density", "remanent polarization",
 		"energy product", "recoverable energy", "recoverable energy density", "air gap",
-		"optic axis", "principal frame", "impermittivity", "relative impermittivity",
+		"optic axis", "impermittivity", "relative impermittivity",
 		"crest factor", "line-to-line voltage", "line-to-earth voltage", "earth fault factor",
 		"withstand voltage", "breakdown voltage", "inception voltage", "inception field strength", "incident electric field strength",
 		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction",
