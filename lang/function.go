@@ -175,13 +175,10 @@ func (e *elab) domain(c *Call, f *cell, d *Definition, xs []typed) {
 // within cautions about an argument outside the range, where its value is
 // known here: an argument that varies is checked where it varies.
 func (e *elab) within(at Expr, d *Definition, r *Range, x typed, bounds *elab) {
-	last := d.For[len(d.For)-1]
-	lowest, highest := bounds.expr(r.From), bounds.expr(r.To)
-	if r == last && len(d.Pieces) > 0 {
-		if p := d.Pieces[len(d.Pieces)-1]; p.For != nil && p.For.To != nil {
-			highest = bounds.expr(p.For.To)
-		}
+	if len(d.Pieces) > 0 {
+		return // the choice of the piece tells it
 	}
+	lowest, highest := bounds.expr(r.From), bounds.expr(r.To)
 	v, ok := e.value(x)
 	lo, ok1 := e.value(lowest)
 	hi, ok2 := e.value(highest)

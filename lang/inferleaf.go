@@ -3,6 +3,7 @@ package lang
 import (
 	"fmt"
 	"strings"
+	"unicode"
 
 	"inkjoule/lang/eval"
 	"inkjoule/lang/kind"
@@ -45,7 +46,7 @@ func (e *elab) toSI(l *Literal, u unit.Unit) (float64, bool) {
 	root, known := kind.RootPower(e.want)
 	if u.ByKind() && !known {
 		e.fault("unknown-kind", l, fmt.Sprintf("%s: whether %s counts a power or a field is not known", l.Num.Text+" "+l.Unit.Text, l.Unit.Text),
-			"name the kind after a comma: `G, gain = …` or `a, voltage ratio = …`")
+			"name the kind after a comma: `G, power gain = …` or `a, voltage ratio = …`")
 		return 0, false
 	}
 	return u.Level.ToLinear(l.Num.Value, root), true
@@ -62,11 +63,27 @@ func (e *elab) unit(p *UnitPhrase) (unit.Unit, bool) {
 		Rule: r.err.Rule, Severity: Error, Message: r.err.Message, Detail: r.err.Detail,
 		Span: Span{p.Span.Start + r.err.Start, p.Span.Start + r.err.End},
 	}
-	if r.err.Rule == "unknown-unit" && e.a.cells[CanonicalName(r.err.Symbol)] != nil {
-		f.Detail = fmt.Sprintf("%s is a name of this note: put a blank before the operator (`/ %s`), or write * between the number and the name", r.err.Symbol, r.err.Symbol)
+	if name := e.nameFrom(f.Span.Start); r.err.Rule == "unknown-unit" && name != "" {
+		f.Detail = fmt.Sprintf("%s is a name of this note: put a blank before the operator (`/ %s`), or write * between the number and the name", name, name)
 	}
 	e.report(f)
 	return unit.Unit{}, false
+}
+
+// nameFrom is the name of the note that begins at a place in the statement, ""
+// where there is none: `B0_20` in `1.4 T/B0_20`, of which a unit phrase sees `B`.
+func (e *elab) nameFrom(at int) string {
+	if e.c.stmt == nil || at >= len(e.c.stmt.Text) {
+		return ""
+	}
+	name := e.c.stmt.Text[at:]
+	if n := strings.IndexFunc(name, func(r rune) bool { return r != '_' && !unicode.IsLetter(r) && !unicode.IsDigit(r) }); n >= 0 {
+		name = name[:n]
+	}
+	if e.a.cells[CanonicalName(name)] == nil {
+		return ""
+	}
+	return name
 }
 
 // hidesName cautions where a symbol inside a unit phrase is also a name of the
@@ -152,6 +169,9 @@ func (e *elab) cellValue(c *cell, at Tree) typed {
 		e.fault("shape-mix", at, fmt.Sprintf("%s is a function: write its argument in parentheses", c.title()), "")
 		return unknown()
 	}
+	if c.path != "" && (c.cyclic || !c.sym.Result.Known && c.role != RoleConstant && c.owner == nil) {
+		e.faultElsewhere(c, at)
+	}
 	if c.cyclic || !c.sym.Facts.Known {
 		return unknown()
 	}
@@ -162,6 +182,20 @@ func (e *elab) cellValue(c *cell, at Tree) typed {
 	}
 	t.code = eval.Slot(c.slot, eval.Type{Shape: t.Shape, Complex: t.Complex})
 	return t
+}
+
+// faultElsewhere tells at its use that a name of another note has no value: the
+// cause is told there, and nobody may be reading it.
+func (e *elab) faultElsewhere(c *cell, at Tree) {
+	why := c.sym.Why
+	if len(c.faults) > 0 {
+		why = c.faults[0].Message
+	}
+	detail := "review " + c.path
+	if why != "" {
+		detail = "there: " + why
+	}
+	e.fault("unknown-name", at, fmt.Sprintf("%s has no value in %s", c.title(), c.path), detail)
 }
 
 // kinds are what a use of the cell contributes to the kinds of an expression.

@@ -144,18 +144,7 @@ func (r *reader) checkSpread(l *Literal, unit *UnitPhrase, span Span) {
 
 // superscriptLiteral is the exponent that superscripts write.
 func superscriptLiteral(t *lexer.Token) *Literal {
-	var b strings.Builder
-	for _, c := range t.Value {
-		switch c {
-		case '⁻':
-			b.WriteByte('-')
-		case '⁺':
-			b.WriteByte('+')
-		default:
-			b.WriteByte(superscriptDigit(c))
-		}
-	}
-	value, _ := strconv.ParseFloat(b.String(), 64)
+	value, _ := strconv.ParseFloat(asciiNumber(t.Value), 64)
 	return &Literal{Node: Node{Span: spanOf(t)}, Num: Numeral{Span: spanOf(t), Text: t.Value, Value: value}}
 }
 

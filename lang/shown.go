@@ -2,6 +2,7 @@ package lang
 
 import (
 	"math"
+	"math/cmplx"
 	"strconv"
 	"strings"
 
@@ -16,6 +17,10 @@ import (
 
 // shownDigits is the number of significant digits where nothing else decides.
 const shownDigits = 4
+
+// noise is how small a component is, beside the largest, that nothing but
+// rounding has made.
+const noise = 1e-15
 
 // formatter writes values in one unit.
 type formatter struct {
@@ -78,7 +83,7 @@ func (f formatter) scalar(c complex128, isComplex bool) string {
 }
 
 // row writes components from..to of a value, all to the same last digit; a
-// component that is exactly zero is written 0.
+// component that is zero but for rounding is written 0.
 func (f formatter) row(v eval.Value, from, to int) string {
 	largest := 0.0
 	for i := from; i < to; i++ {
@@ -90,7 +95,7 @@ func (f formatter) row(v eval.Value, from, to int) string {
 	for i := from; i < to; i++ {
 		c := v.At(i)
 		switch {
-		case c.C() == 0:
+		case cmplx.Abs(c.C()) <= noise*norm(v):
 			parts = append(parts, "0")
 		case v.IsReal():
 			parts = append(parts, decimal(f.in(c.Re()), p))
@@ -104,7 +109,7 @@ func (f formatter) row(v eval.Value, from, to int) string {
 // tensor writes a diagonal tensor as diag(…), any other as tensor(…).
 func (f formatter) tensor(v eval.Value) string {
 	for i := range 9 {
-		if i%4 != 0 && v.At(i).C() != 0 {
+		if i%4 != 0 && cmplx.Abs(v.At(i).C()) > noise*norm(v) {
 			return "tensor(" + f.row(v, 0, 9) + ")"
 		}
 	}

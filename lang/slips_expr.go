@@ -162,6 +162,12 @@ func missingTimes(c *clue) *Fault {
 	default:
 		return nil
 	}
+	if unit, rest, ok := strings.Cut(before.Value, "/"); ok && before.Type == tokUnit && isUnit(unit) && !isUnit(before.Value) { // 132 kV/sqrt(3)
+		at := before.Pos.Offset + len(unit)
+		return &Fault{Span: spanOf(before), Message: code(before.Value) + " is read as a unit: no blank stands before `/`",
+			Detail: "write " + code(c.tok(-2).Value+" "+unit+" / "+rest+t.Value),
+			Fix:    &Fix{"Put blanks around `/`", []Edit{{Span{at, at + 1}, " / "}}}}
+	}
 	if before.Type == tokUnit && c.tok(-2).Type == tokNumber && !isUnit(before.Value) { // 2 sin(x): read as a unit
 		return &Fault{Span: spanOf(c.tok(-2)).to(spanOf(before)), Message: "`*` is missing between " + code(c.tok(-2).Value) + " and " + code(before.Value),
 			Detail: "write " + code(c.tok(-2).Value+"*"+before.Value+t.Value),

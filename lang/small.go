@@ -37,7 +37,22 @@ func distance(v, w eval.Value) float64 {
 }
 
 // asciiNumber writes a numeral with ASCII signs only.
-func asciiNumber(s string) string { return strings.ReplaceAll(s, "−", "-") }
+func asciiNumber(s string) string {
+	if !strings.ContainsFunc(s, func(r rune) bool { return r > 127 }) {
+		return s
+	}
+	return strings.Map(func(r rune) rune {
+		switch {
+		case r == '−' || r == '⁻':
+			return '-'
+		case r == '⁺':
+			return '+'
+		case isSuperscript(r):
+			return rune(superscriptDigit(r))
+		}
+		return r
+	}, s)
+}
 
 func sorted(xs []string) []string {
 	sort.Strings(xs)

@@ -160,6 +160,9 @@ func (a *analysis) unused(n *Note) {
 		return
 	}
 	for _, c := range a.all {
+		if _, waives := c.tree.(*Waive); waives {
+			continue // it speaks of a name and uses nothing
+		}
 		for _, u := range c.uses {
 			if d := a.cells[u.key]; d != nil && d.role != RoleConstant {
 				d.used = true

@@ -306,7 +306,7 @@ var table = [...]Kind{
 
 	// Further kinds of ISO/IEC 80000 that notes use; the two ratios decide
 	// between 10 and 20 lg where `ratio` leaves it open.
-	PowerRatio:                 {"power ratio", "power gain", "G", "1", ClassPower, Ratio, false},
+	PowerRatio:                 {"power ratio", "power gain; antenna gain; directivity", "G", "1", ClassPower, Ratio, false},
 	AmplitudeRatio:             {"amplitude ratio", "voltage ratio; current ratio; field ratio; voltage gain", "A", "1", ClassAmplitude, Ratio, false},
 	MagneticSusceptibility:     {"magnetic susceptibility", "", "χ_m", "1", ClassOther, 0, false},
 	DisplacementCurrent:        {"displacement current", "", "I_D", "A", ClassAmplitude, ElectricCurrent, false},
