@@ -162,7 +162,7 @@ func (a applied) offAxis(t frame) bool {
 	n := a.p.Note
 	v, s, ok := opticAxis(n, t.medium)
 	value, known := tensorBehind(n, t.medium, fieldOf(t))
-	if !ok || !known || along(value, v) {
+	if !ok || !known || symmetricAbout(value, v) {
 		return false
 	}
 	own := n.Lookup(t.medium)
@@ -209,7 +209,7 @@ func framesAdded(p *check.Pass, s *lang.Symbol, b *lang.Binary) {
 func onAxis(n *lang.Note, f frame) bool {
 	v, _, ok := opticAxis(n, f.medium)
 	t, known := tensorBehind(n, f.medium, fieldOf(f))
-	return ok && known && along(t, v)
+	return ok && known && symmetricAbout(t, v)
 }
 
 // onceTurned reports a tensor that is defined as a rotation times a tensor.

@@ -225,8 +225,8 @@ func opticAxis(n *lang.Note, key string) (v [3]float64, s *lang.Symbol, ok bool)
 	return v, s, ok
 }
 
-// along reports a tensor that has the axis as an axis of symmetry.
-func along(t [9]float64, v [3]float64) bool {
+// symmetricAbout reports a tensor that has the axis as an axis of symmetry.
+func symmetricAbout(t [9]float64, v [3]float64) bool {
 	c := contraction(t, v)
 	a := (t[0] + t[4] + t[8] - c) / 2
 	norm := v[0]*v[0] + v[1]*v[1] + v[2]*v[2]
