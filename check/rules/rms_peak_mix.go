@@ -266,8 +266,8 @@ func (c *claim) unlikeFactors(p *check.Pass) {
 // unlikeDeclared finds a quantity declared with one statistic whose formula is
 // an amplitude of another, with no number that could convert it.
 func (c *claim) unlikeDeclared(p *check.Pass) {
-	if !c.stated || !isAmplitude(c.sym.Facts) {
-		return
+	if !c.stated || !isAmplitude(c.sym.Facts) || c.emfOf() != nil {
+		return // the law of induction has a number of its own: emf-crest-twice speaks
 	}
 	form := c.note.Normal(c.sym, unnamed)
 	if form == nil || len(form.Terms) == 0 || shaped(c.sym.Facts.Waveform) {
@@ -348,7 +348,7 @@ func (c *claim) unconverted(t lang.Term) *lang.Factor {
 	if amplitude.Facts.Qualifier == kind.Static && to == kind.RMS {
 		return nil // the rms value of a steady quantity is its value
 	}
-	if s, ok := scaleOf(t); !ok || s.fits(amplitude.Facts.Qualifier, to) {
+	if s, ok := withoutCycles(t); !ok || s.fits(amplitude.Facts.Qualifier, to) {
 		return nil
 	}
 	return amplitude

@@ -39,6 +39,18 @@ func scaleOf(t lang.Term) (scale, bool) {
 	return s, true
 }
 
+// withoutCycles is the scale of a term with each 2π·f counted as one ω.
+func withoutCycles(t lang.Term) (scale, bool) {
+	s, ok := scaleOf(t)
+	for _, f := range t.Factors {
+		n, whole := f.Exp.Int()
+		if isCycles(f) && whole && t.Pi != 0 && (t.Pi > 0) == (n > 0) {
+			s.value /= math.Pow(2*math.Pi, float64(n))
+		}
+	}
+	return s, ok
+}
+
 // rootOf reads a factor that is a number under a root, "#2/3".
 func rootOf(f lang.Factor) (*big.Rat, bool) {
 	text, is := strings.CutPrefix(f.Key, "#")
