@@ -21,6 +21,7 @@ type state struct {
 	symbols map[string]*Symbol
 	imports map[string]*Note
 	inputs  int
+	budget  eval.Budget // what was over it is not known to be over another
 	spreads map[int]eval.Spread
 
 	foreignIn map[foreignInput]int
@@ -37,7 +38,7 @@ func (s *state) cellOf(sym *Symbol) *cell {
 func analyze(ctx context.Context, text string, opt Options) (*Note, error) {
 	a := &analysis{opt: opt, ctx: ctx, cells: make(map[string]*cell, 64), units: map[string]unitReading{}, spreads: map[int]eval.Spread{}}
 	var previous *Script
-	if p := opt.Previous; p != nil && p.state != nil {
+	if p := opt.Previous; p != nil && p.state != nil && p.state.budget == opt.Budget {
 		previous = p.Script
 		a.takeOver(p.state)
 	}
@@ -138,9 +139,6 @@ func (a *analysis) analyse(c *cell) {
 	}
 }
 
-// budget is what one evaluation may take.
-func (a *analysis) budget() eval.Budget { return a.opt.Budget }
-
 // readUnit reads a unit phrase once for the note.
 func (a *analysis) readUnit(text string) unitReading {
 	r, ok := a.units[text]
@@ -155,7 +153,7 @@ func (a *analysis) readUnit(text string) unitReading {
 func (a *analysis) freeze() *Note {
 	n := &Note{Path: a.opt.Path, Script: a.script}
 	st := &state{cells: a.cells, all: a.all, byStmt: make(map[*Stmt][]*cell, len(a.script.Stmts)),
-		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, spreads: a.spreads, foreignIn: a.foreignIn, csv: a.csvRead, imports: a.imported}
+		symbols: make(map[string]*Symbol, len(a.cells)), inputs: a.inputs, budget: a.opt.Budget, spreads: a.spreads, foreignIn: a.foreignIn, csv: a.csvRead, imports: a.imported}
 	n.state = st
 	for _, c := range a.all {
 		st.byStmt[c.stmt] = append(st.byStmt[c.stmt], c)

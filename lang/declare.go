@@ -3,6 +3,7 @@ package lang
 import (
 	"context"
 	"fmt"
+	"time"
 
 	"inkjoule/lang/eval"
 	"inkjoule/lang/unit"
@@ -23,7 +24,8 @@ type analysis struct {
 	ctx        context.Context
 	previous   *state
 	machine    *machine
-	inputs     int // uncertain inputs numbered so far
+	spent      time.Duration // by all evaluations so far
+	inputs     int           // uncertain inputs numbered so far
 	spreads    map[int]eval.Spread
 	foreignIn  map[foreignInput]int // inputs of referred notes, numbered here
 	csvRead    map[*Table]*csvTable

@@ -172,16 +172,16 @@ func cyclesToAngle(d unit.Dim, pi int) (unit.Dim, int) {
 	switch base := d.Base(); {
 	case pi < 0 && base == perTime && d[unit.Angle] == one:
 		d[unit.Angle], d[unit.Cycle], pi = unit.Rat{}, one, pi+1
-	case pi > 0 && base == time && d[unit.Angle] == one.Neg():
+	case pi > 0 && base == seconds && d[unit.Angle] == one.Neg():
 		d[unit.Angle], d[unit.Cycle], pi = unit.Rat{}, one.Neg(), pi-1
 	}
 	return d, pi
 }
 
-// perTime and time are the dimensions 1/s and s.
+// perTime and seconds are the dimensions 1/s and s.
 var (
 	perTime = unit.Dim{unit.Time: unit.Whole(-1)}
-	time    = unit.Dim{unit.Time: unit.Whole(1)}
+	seconds = unit.Dim{unit.Time: unit.Whole(1)}
 )
 
 // cross infers x × y.

@@ -2,6 +2,8 @@ package lang
 
 import (
 	"context"
+	"fmt"
+	"time"
 
 	"inkjoule/lang/eval"
 )
@@ -37,7 +39,13 @@ type outcome struct {
 // every input at the limit that does most harm.
 func (a *analysis) run(c *cell, node int, code eval.Code) outcome {
 	f := a.machine.frame
-	f.Restart(a.budget())
+	b, left := a.allowance()
+	if !left {
+		return outcome{fault: &eval.Fault{Rule: eval.RuleBudget, Node: node, Message: fmt.Sprintf("the note as a whole has used up its %v", a.total()), Detail: "look for the integrals and sums that take longest; `inkjoule.toml` can raise the budget"}}
+	}
+	f.Restart(b)
+	start := time.Now()
+	defer func() { a.spent += time.Since(start) }()
 	v, g, fault := eval.Propagate(f, node, code, a.sources(c))
 	if fault != nil {
 		return outcome{fault: fault}
@@ -53,6 +61,25 @@ func (a *analysis) run(c *cell, node int, code eval.Code) outcome {
 		o.low, o.high = g.WorstCase(v.Re(), s)
 	}
 	return o
+}
+
+// total is what all evaluations of a note may take together.
+func (a *analysis) total() time.Duration {
+	if t := a.opt.Budget.Time; t > 0 {
+		return 5 * t
+	}
+	return 5 * eval.DefaultTime
+}
+
+// allowance is the budget of the next evaluation; false where nothing is left.
+func (a *analysis) allowance() (eval.Budget, bool) {
+	b := a.opt.Budget
+	left := a.total() - a.spent
+	if b.Time <= 0 {
+		b.Time = eval.DefaultTime
+	}
+	b.Time = min(b.Time, left)
+	return b, left > 0
 }
 
 // value runs an expression at once where it reads nothing that varies.

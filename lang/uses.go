@@ -73,7 +73,7 @@ func (a *analysis) nested(target, text string, fault func(string, string) *Fault
 	if n := a.imported[target]; n != nil {
 		return n, nil
 	}
-	opt := Options{Path: target, Files: a.opt.Files, within: append(slices.Clone(a.opt.within), a.opt.Path)}
+	opt := Options{Path: target, Files: a.opt.Files, Budget: a.opt.Budget, within: append(slices.Clone(a.opt.within), a.opt.Path)}
 	if a.previous != nil {
 		opt.Previous = a.previous.imports[target]
 	}

@@ -12,6 +12,7 @@ import (
 	"inkjoule/check"
 	"inkjoule/check/project"
 	"inkjoule/lang"
+	"inkjoule/lang/eval"
 )
 
 // NewAnalyser is the analysis that the command line makes too: the language,
@@ -31,6 +32,7 @@ type engine struct {
 type loaded struct {
 	at     stamp
 	runner check.Runner
+	budget eval.Budget
 	fault  error // what is wrong with the file
 }
 
@@ -39,7 +41,7 @@ func (e *engine) Read(ctx context.Context, in Input) (*lang.Note, error) {
 	if readable(in) != nil {
 		return &lang.Note{Path: in.Path, Script: &lang.Script{Source: lang.NewSource(in.Text)}}, nil
 	}
-	return lang.Analyze(ctx, in.Text, lang.Options{Path: in.Path, Files: in.Files, Previous: in.Previous})
+	return lang.Analyze(ctx, in.Text, lang.Options{Path: in.Path, Files: in.Files, Previous: in.Previous, Budget: e.config(in).budget})
 }
 
 // Check implements Analyser.
@@ -110,5 +112,5 @@ func (e *engine) load(file string) loaded {
 	if err != nil {
 		err = fmt.Errorf("the configuration can't be used as it is: %w", err)
 	}
-	return loaded{runner: runner, fault: err}
+	return loaded{runner: runner, budget: config.Budget, fault: err}
 }

@@ -9,11 +9,13 @@ import (
 	"path/filepath"
 	"slices"
 	"strings"
+	"time"
 
 	"github.com/pelletier/go-toml/v2"
 
 	"inkjoule/check"
 	"inkjoule/lang"
+	"inkjoule/lang/eval"
 )
 
 // ConfigName is the file that configures the notes of its folder and below.
@@ -25,6 +27,7 @@ type Config struct {
 	FailLevel lang.Severity
 	Severity  map[string]lang.Severity // by rule name; 0 switches the rule off
 	Exclude   []string                 // as written
+	Budget    eval.Budget              // of one evaluation; zero fields take the defaults
 	exclude   Patterns
 }
 
@@ -48,6 +51,34 @@ type file struct {
 	FailLevel failLevel        `toml:"fail-level"`
 	Exclude   []string         `toml:"exclude"`
 	Severity  map[string]level `toml:"severity"`
+	Budget    budget           `toml:"budget"`
+}
+
+// budget is what one evaluation may take, as the file writes it.
+type budget struct {
+	Steps   *int64   `toml:"steps"`
+	Seconds *float64 `toml:"seconds"`
+	Memory  *int64   `toml:"memory-mib"`
+}
+
+// read gives the budget; refuse is called with a key whose value is none.
+func (b budget) read(refuse func(key string)) (out eval.Budget) {
+	if b.Steps != nil {
+		if out.Steps = *b.Steps; out.Steps <= 0 {
+			refuse("steps")
+		}
+	}
+	if b.Seconds != nil {
+		if out.Time = time.Duration(*b.Seconds * float64(time.Second)); out.Time <= 0 {
+			refuse("seconds")
+		}
+	}
+	if b.Memory != nil {
+		if out.Memory = *b.Memory << 20; out.Memory <= 0 || *b.Memory > 1<<20 {
+			refuse("memory-mib")
+		}
+	}
+	return out
 }
 
 // level is a severity as the file writes it.
@@ -115,6 +146,9 @@ func parseConfig(path string, data []byte, known *check.Catalogue) (*Config, err
 		}
 		c.Severity[name] = lang.Severity(l)
 	}
+	c.Budget = f.Budget.read(func(key string) {
+		faults = append(faults, fault{path, at.of("budget", key), key + " is a number above zero"})
+	})
 	c.Exclude = f.Exclude
 	c.exclude = ParsePatterns(filepath.ToSlash(filepath.Dir(path)), strings.Join(f.Exclude, "\n"))
 	slices.SortFunc(faults, fault.compare)
@@ -157,7 +191,7 @@ func decode(path string, data []byte, f *file) []fault {
 }
 
 // keys of the file; read only.
-var keys = []string{"fail-level", "exclude", "severity"}
+var keys = []string{"fail-level", "exclude", "severity", "budget.steps", "budget.seconds", "budget.memory-mib"}
 
 func unknownKey(path string, e *toml.DecodeError) fault {
 	row, column := e.Position()

@@ -7,6 +7,7 @@ import (
 	"slices"
 	"strings"
 	"testing"
+	"time"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -217,5 +218,37 @@ func TestDiskStaysWithinTheWork(t *testing.T) {
 	}
 	if _, err := disk.Read(t.Context(), filepath.Join(top, "work/no.joule")); err == nil || errors.Is(err, os.ErrNotExist) && !strings.Contains(err.Error(), "does not exist") {
 		t.Errorf("%v", err)
+	}
+}
+
+func TestBudgetOfAConfiguration(t *testing.T) {
+	path := filepath.Join(t.TempDir(), ConfigName)
+	cases := []struct {
+		text, fault string
+		steps       int64
+	}{
+		{"[budget]\nsteps = 5_000\nseconds = 0.5\nmemory-mib = 16\n", "", 5000},
+		{"", "", 0},
+		{"[budget]\nsteps = 0\n", ":2:1: steps is a number above zero", 0},
+		{"[budget]\nseconds = -1.0\n", ":2:1: seconds is a number above zero", 0},
+		{"[budget]\nstep = 3\n", ":2:1: unknown key \"budget.step\"; did you mean budget.steps?", 0},
+	}
+	for _, c := range cases {
+		if err := os.WriteFile(path, []byte(c.text), 0o644); err != nil {
+			t.Fatal(err)
+		}
+		got, err := LoadConfig(path, catalogue(t))
+		if c.fault == "" && err != nil || c.fault != "" && (err == nil || !strings.Contains(err.Error(), c.fault)) {
+			t.Errorf("%q: %v", c.text, err)
+		}
+		if got.Budget.Steps != c.steps {
+			t.Errorf("%q: %+v", c.text, got.Budget)
+		}
+	}
+	if err := os.WriteFile(path, []byte("[budget]\nseconds = 0.5\nmemory-mib = 16\n"), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	if got, _ := LoadConfig(path, catalogue(t)); got.Budget.Time != 500*time.Millisecond || got.Budget.Memory != 16<<20 {
+		t.Errorf("%+v", got.Budget)
 	}
 }

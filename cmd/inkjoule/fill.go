@@ -14,7 +14,7 @@ import (
 func fillVerb(w *world) *cobra.Command {
 	var stale bool
 	r := &rewriting{world: w, did: "filled"}
-	r.edits = func(ctx context.Context, s source, text string) ([]lang.Edit, []error) {
+	r.edits = func(ctx context.Context, s origin, text string) ([]lang.Edit, []error) {
 		return fillings(ctx, s, text, stale)
 	}
 	c := &cobra.Command{
@@ -34,8 +34,8 @@ func fillVerb(w *world) *cobra.Command {
 
 // fillings gives the edits that write the results of a note, and tells which
 // blanks have none.
-func fillings(ctx context.Context, s source, text string, stale bool) ([]lang.Edit, []error) {
-	note, err := lang.Analyze(ctx, text, lang.Options{Path: s.path, Files: project.DiskFor(s.abs)})
+func fillings(ctx context.Context, s origin, text string, stale bool) ([]lang.Edit, []error) {
+	note, err := lang.Analyze(ctx, text, lang.Options{Path: s.path, Files: project.DiskFor(s.abs), Budget: s.budget})
 	if err != nil {
 		return nil, []error{err}
 	}

@@ -93,7 +93,7 @@ func (r *review) one(ctx context.Context, s source) (out outcome) {
 		return outcome{errs: []error{err}}
 	}
 	config := r.configs.For(filepath.Dir(s.abs))
-	note, err := lang.Analyze(ctx, text, lang.Options{Path: s.path, Files: project.DiskFor(s.abs)})
+	note, err := lang.Analyze(ctx, text, lang.Options{Path: s.path, Files: project.DiskFor(s.abs), Budget: config.Budget})
 	if err != nil {
 		return outcome{errs: []error{err}}
 	}
@@ -105,7 +105,7 @@ func (r *review) one(ctx context.Context, s source) (out outcome) {
 	if err != nil {
 		out.errs = []error{err}
 	}
-	if out.note.Against, err = r.past.compare(ctx, s, note); err != nil {
+	if out.note.Against, err = r.past.compare(ctx, s, note, config.Budget); err != nil {
 		out.errs = append(out.errs, err)
 	}
 	return out

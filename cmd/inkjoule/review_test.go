@@ -290,3 +290,10 @@ func TestSummaryNamesTheSafetyOfAReview(t *testing.T) {
 		t.Errorf("%s", got.out)
 	}
 }
+
+func TestTheBudgetOfTheConfigurationHolds(t *testing.T) {
+	dir := folder(t, map[string]string{"inkjoule.toml": "[budget]\nsteps = 1000\n", "a.joule": "Sum\n\n    x = sum(n for n from 1 to 1e5) = __\n    y = 2*3 = 6\n"})
+	if got := inside(t, "", "review", dir); !strings.Contains(got.out, "[over-budget]") || strings.Count(got.out, "error") != 2 {
+		t.Errorf("status %d\n%s", got.status, got.out)
+	}
+}

@@ -3,6 +3,7 @@ package main
 import (
 	"context"
 	"fmt"
+	"path/filepath"
 	"runtime"
 	"slices"
 	"strings"
@@ -13,6 +14,7 @@ import (
 	"inkjoule/check/project"
 	"inkjoule/check/rules"
 	"inkjoule/lang"
+	"inkjoule/lang/eval"
 )
 
 // rewriting is a verb that changes notes: a few edits in each, everything else
@@ -21,7 +23,13 @@ type rewriting struct {
 	world *world
 	flags rewriteFlags
 	did   string // "tidied", "filled"
-	edits func(context.Context, source, string) ([]lang.Edit, []error)
+	edits func(context.Context, origin, string) ([]lang.Edit, []error)
+}
+
+// origin is where a text comes from, and what holds there.
+type origin struct {
+	source
+	budget eval.Budget
 }
 
 // rewriteFlags are the flags that all such verbs have.
@@ -67,7 +75,9 @@ func (r *rewriting) run(ctx context.Context, paths []string) error {
 	}
 	tell(faults)
 	err = inOrder(ctx, runtime.GOMAXPROCS(0), sources,
-		func(s source) rewritten { return r.one(ctx, s) },
+		func(s source) rewritten {
+			return r.one(ctx, origin{s, configs.For(filepath.Dir(s.abs)).Budget})
+		},
 		func(w rewritten) error {
 			tell(w.errs)
 			if w.unread {
@@ -92,13 +102,13 @@ func (r *rewriting) run(ctx context.Context, paths []string) error {
 }
 
 // one finds the changes of one note.
-func (r *rewriting) one(ctx context.Context, s source) rewritten {
+func (r *rewriting) one(ctx context.Context, s origin) rewritten {
 	text, err := s.read()
 	if err != nil {
-		return rewritten{source: s, errs: []error{err}, unread: true}
+		return rewritten{source: s.source, errs: []error{err}, unread: true}
 	}
 	edits, errs := r.edits(ctx, s, text)
-	return rewritten{source: s, before: text, after: edited(text, edits), errs: errs}
+	return rewritten{source: s.source, before: text, after: edited(text, edits), errs: errs}
 }
 
 // hand shows or writes one note.

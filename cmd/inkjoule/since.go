@@ -9,6 +9,7 @@ import (
 	"inkjoule/check/project"
 	"inkjoule/check/report"
 	"inkjoule/lang"
+	"inkjoule/lang/eval"
 )
 
 // past is an earlier revision of the notes under review, and what differs from it.
@@ -108,7 +109,7 @@ func (r *review) since(ctx context.Context, sources []source) ([]source, error) 
 
 // compare tells what became of a note's results since the revision; nil where
 // nothing was asked for or nothing can have changed.
-func (p *past) compare(ctx context.Context, s source, now *lang.Note) (*report.Comparison, error) {
+func (p *past) compare(ctx context.Context, s source, now *lang.Note, budget eval.Budget) (*report.Comparison, error) {
 	if p == nil || s.in || !p.touched[s.abs] {
 		return nil, nil
 	}
@@ -119,7 +120,7 @@ func (p *past) compare(ctx context.Context, s source, now *lang.Note) (*report.C
 	if err != nil {
 		return nil, err
 	}
-	old, err := lang.Analyze(ctx, text, lang.Options{Path: s.path, Files: p.Revision})
+	old, err := lang.Analyze(ctx, text, lang.Options{Path: s.path, Files: p.Revision, Budget: budget})
 	if err != nil {
 		return nil, err
 	}

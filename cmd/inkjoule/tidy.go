@@ -9,7 +9,7 @@ import (
 )
 
 func tidyVerb(w *world) *cobra.Command {
-	r := &rewriting{world: w, did: "tidied", edits: func(_ context.Context, _ source, text string) ([]lang.Edit, []error) {
+	r := &rewriting{world: w, did: "tidied", edits: func(_ context.Context, _ origin, text string) ([]lang.Edit, []error) {
 		return lang.Tidy(lang.Read(text, nil)), nil
 	}}
 	c := &cobra.Command{

@@ -10,8 +10,11 @@ import (
 type Budget struct {
 	Steps  int64         // operations, counted wherever there is a loop or a call; default 5e8, about a second
 	Memory int64         // bytes of the largest list; default 256 MiB
-	Time   time.Duration // default 2 s
+	Time   time.Duration // default DefaultTime
 }
+
+// DefaultTime is what one evaluation may take where nothing else is said.
+const DefaultTime = 2 * time.Second
 
 // Frame holds what a Code runs on. It belongs to one goroutine.
 type Frame struct {
@@ -56,7 +59,7 @@ func (f *Frame) Restart(b Budget) {
 		b.Memory = 256 << 20
 	}
 	if b.Time <= 0 {
-		b.Time = 2 * time.Second
+		b.Time = DefaultTime
 	}
 	f.budget, f.steps = b, b.Steps
 	f.chunk, f.deadline = 0, time.Now().Add(b.Time)
