@@ -45,7 +45,7 @@ var overrides = []beats{
 // hold; read only.
 var explains = []string{
 	"power-called-energy", "relative-absolute-constant", "vacuum-constant-slip",
-	"gaussian-form-in-si", "dimensioned-argument",
+	"gaussian-form-in-si", "dimensioned-argument", "sar-field-statistic",
 }
 
 // dimensional names the findings of the language that silence rules on their

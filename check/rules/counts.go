@@ -12,7 +12,7 @@ import (
 
 // numbers is what the text of a definition shows about plain numbers.
 type numbers struct {
-	counts []*big.Rat // whole numbers from 2 on that a name stands for, or that are written beside a half
+	counts []*big.Rat // whole numbers from 2 on that a name stands for or that are written beside a half, and decimals that a name stands for
 	half   bool       // a half, or a division by 2 or 4, is written
 	raised bool       // a number stands under a power, where it counts otherwise
 }
@@ -79,11 +79,22 @@ func (r *numberReader) name(t *lang.Name) {
 	case s == nil || s.Role != lang.RoleQuantity || !atoms(s):
 	case s.Input:
 		if l, ok := s.Def.Members[0].(*lang.Literal); ok && l.Unit == nil {
-			r.literal(l)
+			r.named(s, l)
 		}
 	default:
 		r.symbol(s)
 	}
+}
+
+// named looks at a number that a name stands for: a count, or a datum such as
+// the imaginary part of a relative permittivity.
+func (r *numberReader) named(s *lang.Symbol, l *lang.Literal) {
+	t, single := r.note.Normal(s, lang.NamesStay).Single()
+	if !single || t.Coef.Sign() <= 0 || t.Coef.IsInt() || t.Coef.Denom().IsInt64() && t.Coef.Denom().Int64() <= 4 {
+		r.literal(l)
+		return
+	}
+	r.found.counts = append(r.found.counts, t.Coef)
 }
 
 func (r *numberReader) literal(l *lang.Literal) {
@@ -123,13 +134,13 @@ func (w numbers) mayBe(coef, right *big.Rat) bool {
 	if over.Cmp(big.NewRat(1, 1)) == 0 {
 		return true
 	}
-	return w.half && over.IsInt() && w.isCount(over)
+	return w.half && w.isCount(over)
 }
 
 // mostCounts bounds the products of counts that are tried.
 const mostCounts = 6
 
-// isCount reports a whole number that is a product of some of the counts.
+// isCount reports a number that is a product of some of the counts.
 func (w numbers) isCount(x *big.Rat) bool {
 	counts := w.counts[:min(len(w.counts), mostCounts)]
 	for pick := 1; pick < 1<<len(counts); pick++ {
@@ -154,7 +165,7 @@ func (w numbers) off(coef, right *big.Rat, by ...*big.Rat) *big.Rat {
 	}
 	for _, factor := range by {
 		rest := new(big.Rat).Quo(new(big.Rat).Quo(coef, right), factor)
-		if rest.Cmp(big.NewRat(1, 1)) == 0 || !w.raised && rest.IsInt() && w.isCount(rest) {
+		if rest.Cmp(big.NewRat(1, 1)) == 0 || !w.raised && w.isCount(rest) {
 			return factor
 		}
 	}
