@@ -182,6 +182,17 @@ func (a *along) overFlux() bool {
 	return false
 }
 
+// overField reports a flux quantity that is integrated over its field: a
+// coenergy.
+func (a *along) overField() bool {
+	for _, p := range pairs {
+		if isOf(a.y, p.flux) && isOf(a.x, p.field) {
+			return true
+		}
+	}
+	return false
+}
+
 // bounds are the values of the limits.
 func (a *along) bounds(n *lang.Note) (from, to float64, ok bool) {
 	from, ok1 := valueOf(n, a.call.For[0].From)

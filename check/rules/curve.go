@@ -102,3 +102,18 @@ func (k curve) area(a, b float64) float64 {
 	k.pieces(a, b, func(x0, x1, y0, y1 float64) { sum += (x1 - x0) * (y0 + y1) / 2 })
 	return sum
 }
+
+// proportional reports y = k·x within the tolerance of the largest y, up to x.
+func (k curve) proportional(x, tolerance float64) bool {
+	if x == 0 || k.at(x) == 0 {
+		return false
+	}
+	slope := k.at(x) / x
+	limit := tolerance * math.Abs(k.at(x))
+	for i, xi := range k.x {
+		if xi <= x && math.Abs(k.y[i]-slope*xi) > limit {
+			return false
+		}
+	}
+	return true
+}
