@@ -192,6 +192,9 @@ func (c *claim) reportSarHalf(p *check.Pass, q *square, off *big.Rat, severity l
 	if c.stat == kind.Peak {
 		f.Detail += " If the crest of the loss within a cycle is meant, it is no specific absorption rate; the largest value in space is not what `peak` says here."
 	}
+	if !c.declared() {
+		f.Detail += fmt.Sprintf(" That is so if it is a specific absorption rate: say `%s, specific absorption rate = …`, or what else it is.", c.sym.Name)
+	}
 	if alone {
 		f.Fix = &lang.Fix{Title: "Multiply by " + factor, Edits: []lang.Edit{insert(c.span().Start, factor+" * ")}}
 	}
