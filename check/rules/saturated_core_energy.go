@@ -138,7 +138,7 @@ func pointTo(s *lang.Symbol, message string) []lang.Related {
 // beyondInitial finds an initial permeability at more than a small signal.
 func (c *claim) beyondInitial(p *check.Pass, k *core) bool {
 	covered, ranged := c.permeabilityCovers(k)
-	if !k.known || !k.mu.Facts.Kind.Is(kind.InitialPermeability) || k.isLinear() || covered {
+	if !k.known || typeOf(k.mu) != kind.InitialPermeability || k.isLinear() || covered {
 		return false
 	}
 	f := lang.Fault{
