@@ -26,6 +26,7 @@ var overrides = []beats{
 	{"rms-peak-mix", []string{"quarter-half-average", "mean-power-half", "half-missing-stored-energy"}},
 	{"emf-crest-twice", []string{"rms-peak-mix"}},
 	{"swing-used-as-amplitude", []string{"rms-peak-mix"}},
+	{"strength-statistic-mismatch", []string{"rms-peak-mix"}},
 	{"conjugate-missing", []string{"mean-power-half", "quarter-half-average", "half-missing-stored-energy"}},
 	{"sar-field-statistic", []string{"mean-power-half"}},
 	{"wave-impedance-misuse", []string{"mean-power-half"}},
