@@ -31,7 +31,7 @@ var overrides = []beats{
 	{"sar-field-statistic", []string{"mean-power-half"}},
 	{"wave-impedance-misuse", []string{"mean-power-half"}},
 	// The medium decides which form is right at all.
-	{"half-product-nonlinear", []string{"half-missing-stored-energy", "quarter-half-average"}},
+	{"half-product-nonlinear", []string{"energy-product-as-stored", "half-missing-stored-energy", "quarter-half-average"}},
 	{"bias-point-capacitance-energy", []string{"half-product-nonlinear", "half-missing-stored-energy", "quarter-half-average", "property-out-of-range"}},
 	{"saturated-core-energy", []string{"half-product-nonlinear", "half-missing-stored-energy", "quarter-half-average"}},
 	{"dispersive-energy-density", []string{"half-missing-stored-energy", "quarter-half-average"}},

@@ -85,7 +85,7 @@ func (c *claim) halfInCurve(p *check.Pass, m medium) {
 // medium. A flux density crosses into a gap: with ε0 or µ0 alone it makes the
 // energy there, whatever it passes before.
 func (c *claim) inMedium(q *square, m medium) bool {
-	if inGap(q) {
+	if inGap(q) || c.demagnetized(q) {
 		return false
 	}
 	for _, f := range q.all {

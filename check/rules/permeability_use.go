@@ -24,7 +24,11 @@ func (u *use) acrossGap(p *check.Pass) bool {
 		return false
 	}
 	severity, detail := p.Rule.Severity, fmt.Sprintf("Take the effective permeability, `μ_e, effective permeability = μ/(1 + μ*%s/l)`, or add the reluctance of the gap, `%[1]s/(mu_0*A)`.", gap.Name)
-	if !shared {
+	switch {
+	case shared && u.withGapToo(gap):
+		severity = p.Lowered()
+		detail += " If it is meant for comparison, as if there were no gap, give the whole core a medium of its own and bind the gap to the other."
+	case !shared:
 		severity = p.Lowered()
 		detail += fmt.Sprintf(" If %s belongs to another core, bind both to their media.", gap.Name)
 	}
@@ -53,6 +57,17 @@ func (u *use) gap() (gap *lang.Symbol, shared bool) {
 		}
 	}
 	return gap, false
+}
+
+// withGapToo reports that the note has an inductance with the gap in it: the
+// one without may be meant for comparison.
+func (u *use) withGapToo(gap *lang.Symbol) bool {
+	for _, o := range u.view.claims {
+		if o != u.claim && isOf(o.sym.Facts, kind.Inductance) && dependsOn(u.note, o.sym, gap) {
+			return true
+		}
+	}
+	return false
 }
 
 // sharesMeasure reports another claim that is made with a length, an area or
