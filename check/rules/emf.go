@@ -15,6 +15,7 @@ import (
 type emf struct {
 	voltage, flux lang.Factor // U, and B or Φ; one of them may be the claim itself
 	number        float64     // K, in U = K·f·N·B·A
+	decimals      []float64   // named numbers that could belong to K: a form factor
 }
 
 // emfOf reads a claim as the law of induction; nil for everything else.
@@ -65,13 +66,16 @@ func (e *emf) solved(c *claim, t lang.Term, up, across, cycles, radians unit.Rat
 	if !ok || s.value == 0 {
 		return nil
 	}
-	named, ok := c.namedNumbers()
-	if !ok {
+	w := &numberProduct{note: c.note, product: 1, ok: true}
+	if w.walk(c.x, 1); !w.ok {
 		return nil
 	}
-	e.number = s.value / named
+	e.number, e.decimals = s.value/w.product, w.decimals
 	if up == one {
 		e.number = 1 / e.number
+		for i, x := range e.decimals {
+			e.decimals[i] = 1 / x
+		}
 	}
 	if radians == across {
 		e.number *= 2 * math.Pi // U = K/2π·ω·N·B·A
@@ -79,20 +83,16 @@ func (e *emf) solved(c *claim, t lang.Term, up, across, cycles, radians unit.Rat
 	return e
 }
 
-// namedNumbers multiplies the plain numbers that names stand for in a product,
+// numberProduct multiplies the plain numbers that names stand for in a product,
 // such as a number of turns, and numbers of 5 and more that are written out; ok
 // is false where the expression is no product.
-func (c *claim) namedNumbers() (product float64, ok bool) {
-	w := &numberProduct{note: c.note, product: 1, ok: true}
-	w.walk(c.x, 1)
-	return w.product, w.ok
-}
-
 type numberProduct struct {
 	note    *lang.Note
 	product float64
 	ok      bool
 	depth   int
+
+	decimals []float64 // of the named numbers, those that count nothing
 }
 
 func (w *numberProduct) walk(x lang.Expr, exp float64) {
@@ -146,13 +146,30 @@ func (w *numberProduct) name(x *lang.Name, exp float64) {
 	switch {
 	case s == nil || s.Role != lang.RoleQuantity || !atoms(s):
 	case s.Input && s.Facts.Dim.IsOne():
-		w.product *= math.Pow(s.Value.Re(), exp)
+		x := math.Pow(s.Value.Re(), exp)
+		w.product *= x
+		if s.Value.Re() != math.Trunc(s.Value.Re()) {
+			w.decimals = append(w.decimals, x)
+		}
 	case !s.Input && s.Def != nil && len(s.Def.Members) > 0:
 		w.walk(s.Def.Members[0], exp)
 	}
 }
 
-// right is the number K that belongs to the statistics of a voltage and a flux
+// is reports whether the law has the number, a named form factor counted or not.
+func (e *emf) is(number float64) bool {
+	if near(e.number, number) {
+		return true
+	}
+	for _, x := range e.decimals {
+		if near(e.number*x, number) {
+			return true
+		}
+	}
+	return false
+}
+
+// emfNumber is the number K that belongs to the statistics of a voltage and a flux
 // of the waveform: 2π between two crests of a sinusoid, 4 between the crests of
 // a square voltage and its triangular flux, and 4 for the mean of any voltage.
 func emfNumber(voltage, flux kind.Qualifier, square bool) (float64, bool) {

@@ -168,7 +168,7 @@ func (c *claim) swingInduces(p *check.Pass) bool {
 	}
 	square, ok := c.squareWave(e)
 	crest, told := emfNumber(c.statisticOf(e.voltage), kind.Peak, square)
-	if !ok || !told || !near(e.number, crest) {
+	if !ok || !told || !e.is(crest) {
 		return false
 	}
 	c.report(p, lang.Fault{

@@ -41,6 +41,8 @@ func scaledFrom(form *lang.Form) (found lang.Factor, ok bool) {
 	}
 	for _, f := range t.Factors {
 		switch {
+		case roleOf(f.Facts) == roleFrequency:
+			return found, false // a derivative or an integral has another waveform
 		case !isAmplitude(f.Facts):
 		case ok || f.Exp != unit.Whole(1) || opaqueFactor(f):
 			return found, false
