@@ -54,7 +54,7 @@ func scalarOf(f lang.Factor, t [9]float64) (x float64, ok bool) {
 		i, j := axis(f.Part[0]), axis(f.Part[1])
 		return t[3*i+j], i >= 0 && j >= 0
 	case f.Call == "trace":
-		return t[0] + t[4] + t[8], true
+		return (t[0] + t[4] + t[8]) / 3, true
 	}
 	return 0, false
 }
@@ -79,6 +79,38 @@ func contraction(t [9]float64, v [3]float64) float64 {
 	return sum / norm
 }
 
+// seenBetween is the permittivity that relates the energy to the square of a
+// field or, for a flux density, the reciprocal to its square.
+func seenBetween(t [9]float64, v [3]float64, flux bool) float64 {
+	if !flux {
+		return contraction(t, v)
+	}
+	inv, ok := inverse(t)
+	if !ok {
+		return math.NaN()
+	}
+	return 1 / contraction(inv, v)
+}
+
+// applied3 is T·v.
+func applied3(t [9]float64, v [3]float64) (out [3]float64) {
+	for i := range 3 {
+		for j := range 3 {
+			out[i] += t[3*i+j] * v[j]
+		}
+	}
+	return out
+}
+
+func length(v [3]float64) float64 { return math.Sqrt(v[0]*v[0] + v[1]*v[1] + v[2]*v[2]) }
+
+// parallel reports two directions that are the same or opposite, to the
+// tolerance in the sine of the angle.
+func parallel(a, b [3]float64) bool {
+	x, y, z := a[1]*b[2]-a[2]*b[1], a[2]*b[0]-a[0]*b[2], a[0]*b[1]-a[1]*b[0]
+	return length([3]float64{x, y, z}) <= crystalTolerance*length(a)*length(b)
+}
+
 // direction gives a vector quantity's components; ok is false for a scalar, an
 // unknown or a zero vector.
 func direction(s *lang.Symbol) (v [3]float64, ok bool) {
@@ -98,13 +130,12 @@ func (c *claim) fromTensor(p *product, is func(lang.Factor) bool) (lang.Factor, 
 		if f.Applied || !is(f) {
 			continue
 		}
-		for _, key := range f.Facts.Media {
-			if m, ok := mediumOf(c.note, key); ok && m.anisotropic() {
-				return f, m, true
-			}
-		}
+		keys := f.Facts.Media
 		if f.Symbol != nil && f.Symbol.Owner != nil {
-			if m, ok := mediumOf(c.note, f.Symbol.Owner.Key); ok && m.anisotropic() {
+			keys = append([]string{f.Symbol.Owner.Key}, keys...)
+		}
+		for _, key := range keys {
+			if m, ok := mediumOf(c.note, key); ok && m.anisotropic() {
 				return f, m, true
 			}
 		}

@@ -43,7 +43,11 @@ func (Book) FieldOfAnotherMedium() check.Rule {
 
 func fieldOfAnother(p *check.Pass, s *lang.Symbol) {
 	for _, t := range terms(p.Note.Normal(s, lang.NamesStay)) {
-		if field, prop, ok := crossing(t); ok {
+		field, prop, ok := crossing(t)
+		if ok && sameCrystal(p.Note, field.Symbol.Facts.Media[0], propertyMedium(prop)) {
+			continue // one crystal in two frames: axis-frame-mismatch speaks about tensors
+		}
+		if ok {
 			reportCrossing(p, s, field, prop)
 			return
 		}
