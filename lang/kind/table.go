@@ -162,6 +162,13 @@ const (
 	PulseDuration
 	PulseRepetitionFrequency
 	Reaction
+	PolarizationLossFactor
+	DCConductivity
+	ExternalPotential
+	PermanentElectricDipoleMoment
+	InducedElectricDipoleMoment
+	Polarizability
+	InteractionEnergy
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -356,6 +363,16 @@ var table = [...]Kind{
 	PulseRepetitionFrequency: {"pulse repetition frequency", "pulse repetition rate; repetition frequency; repetition rate", "f_p", "Hz", ClassOther, Frequency, false},
 	Reaction:                 {"reaction", "reaction integral", "⟨a,b⟩", "W", ClassOther, 0, false},
 
+	// What a loss is made of; charges and dipoles in a field that others make
+	// (IEC 60050-121).
+	PolarizationLossFactor:        {"polarization loss factor", "polarization loss tangent; dipolar loss factor", "tan δ_p", "1", ClassOther, LossFactor, false},
+	DCConductivity:                {"direct-current conductivity", "dc conductivity; ionic conductivity", "σ_dc", "S/m", ClassOther, Conductivity, false},
+	ExternalPotential:             {"external electric potential", "external potential; applied potential", "V_ext", "V", ClassAmplitude, ElectricPotential, false},
+	PermanentElectricDipoleMoment: {"permanent electric dipole moment", "permanent dipole moment", "p_0", "C·m", ClassOther, ElectricDipoleMoment, false},
+	InducedElectricDipoleMoment:   {"induced electric dipole moment", "induced dipole moment", "p_i", "C·m", ClassOther, ElectricDipoleMoment, false},
+	Polarizability:                {"polarizability", "electric polarizability", "α", "C·m^2/V", ClassOther, 0, false},
+	InteractionEnergy:             {"interaction energy", "energy in an external field", "W_i", "J", ClassEnergy, Energy, false},
+
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},
 	{"total current density", "", "J_t", "A/m^2", ClassAmplitude, ElectricCurrentDensity, false},
@@ -371,7 +388,6 @@ var table = [...]Kind{
 	{"demagnetizing factor", "demagnetization factor", "N", "1", ClassOther, 0, false},
 	{"antenna factor", "", "AF", "m^-1", ClassAmplitude, 0, false},
 	{"effective area", "", "A_e", "m^2", ClassOther, Area, false},
-	{"polarizability", "", "α", "C·m^2/V", ClassOther, 0, true},
 	{"acceleration", "", "a", "m/s^2", ClassOther, 0, true},
 	{"heat flow rate", "", "Φ", "W", ClassPower, Power, false},
 	{"coefficient of heat transfer", "heat transfer coefficient", "h", "W/(m^2·K)", ClassOther, 0, true},
