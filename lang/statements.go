@@ -58,7 +58,7 @@ var adjectiveGroups = [][]string{
 	{"linear", "nonlinear", "hysteretic"},
 	{"isotropic", "uniaxial", "biaxial", "anisotropic"},
 	{"homogeneous", "inhomogeneous"},
-	{"lossless", "lossy"},
+	{"lossless", "lossy", "active"},
 	{"nondispersive", "dispersive"},
 }
 

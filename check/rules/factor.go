@@ -106,3 +106,6 @@ func (m medium) propertyOf(n *lang.Note, k kind.ID) *lang.Symbol {
 	}
 	return nil
 }
+
+// magnitudeOf is the magnitude of a complex number.
+func magnitudeOf(x complex128) float64 { return math.Hypot(real(x), imag(x)) }
