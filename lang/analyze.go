@@ -180,14 +180,17 @@ func (a *analysis) freezeSymbols(n *Note) {
 		n.Symbols = append(n.Symbols, s)
 		st.symbols[c.key] = s
 	}
-	for key, c := range a.cells {
-		switch {
-		case c.path != "":
-			st.symbols[key] = a.symbol(c, st)
-		case c.stmt == nil:
-			s := c.sym
-			s.Key, s.Role = key, c.role
-			st.symbols[key] = &s
+	for _, owned := range []bool{false, true} { // owners before what they own
+		for key, c := range a.cells {
+			switch {
+			case owned != (c.owner != nil):
+			case c.path != "":
+				st.symbols[key] = a.symbol(c, st)
+			case c.stmt == nil:
+				s := c.sym
+				s.Key, s.Role = key, c.role
+				st.symbols[key] = &s
+			}
 		}
 	}
 }
@@ -196,8 +199,8 @@ func (a *analysis) freezeSymbols(n *Note) {
 // previous analysis where nothing about it has changed, not even its place.
 func (a *analysis) symbol(c *cell, st *state) *Symbol {
 	var owner *Symbol
-	if c.owner != nil {
-		owner = st.symbols[c.owner.key]
+	if at := strings.LastIndexByte(c.key, '.'); c.owner != nil && at > 0 {
+		owner = st.symbols[c.key[:at]] // not that of c.owner, which another note may call otherwise
 	}
 	if p := a.previous; p != nil {
 		old := p.symbols[c.key]
