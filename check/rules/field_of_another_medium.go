@@ -26,15 +26,15 @@ func (Book) FieldOfAnotherMedium() check.Rule {
         eps_r = 2.2
     medium board: linear, isotropic, homogeneous
         eps_r = 4.4
-    E in oil, static electric field strength = 6 kV/mm
+    E in oil, instantaneous electric field strength = 6 kV/mm
     w, energy density = 1/2*board.eps*E^2 = 701 J/m^3
 `},
 		Right: check.Example{Note: `    medium oil: linear, isotropic, homogeneous
         eps_r = 2.2
     medium board: linear, isotropic, homogeneous
         eps_r = 4.4
-    E in oil, static electric field strength = 6 kV/mm
-    E_b in board, static electric field strength = oil.eps*E/board.eps = 3 kV/mm
+    E in oil, instantaneous electric field strength = 6 kV/mm
+    E_b in board, instantaneous electric field strength = oil.eps*E/board.eps = 3 kV/mm
     w, energy density = 1/2*board.eps*E_b^2 = 175.3 J/m^3
 `},
 		Run: perSymbol(fieldOfAnother),
