@@ -37,26 +37,21 @@ func (Book) EnergyCoenergySwap() check.Rule {
     W_c, coenergy = integral(near.Ψ for near.i from 0 A to 4 A) = 0.390 J
     W, energy = 0.166 Wb * 4 A - W_c = 0.274 J
 `},
-		Run: energyCoenergy,
+		Run: perSpot(energyCoenergy),
 	}
 }
 
-func energyCoenergy(p *check.Pass) error {
-	v := viewOf(p)
-	for _, s := range p.Note.Symbols {
-		if s.Def == nil || s.Input || s.Path != "" || s.Facts.KindBy != lang.Declared || len(s.Def.Members) == 0 {
-			continue
-		}
-		if s.Role == lang.RoleQuantity || s.Role == lang.RoleFunction || s.Role == lang.RoleProperty {
-			coenergyCalledEnergy(p, s)
+func energyCoenergy(p *check.Pass, s *spot) {
+	for _, sym := range s.symbols {
+		if sym.Facts.KindBy == lang.Declared {
+			coenergyCalledEnergy(p, sym)
 		}
 	}
-	for _, c := range v.claims {
+	for _, c := range s.claims {
 		if k := c.sym.Facts.Kind; c.declared() && (k.Is(kind.Force) || k.Is(kind.Torque) || k.Is(kind.LineicForce)) {
 			c.forceOfEnergies(p)
 		}
 	}
-	return nil
 }
 
 // isEnergyNoCoenergy reports the kinds of energies that are not coenergies,

@@ -17,8 +17,11 @@ func (Book) HalfProductNonlinear() check.Rule {
 		Severity: lang.Error,
 		Title:    "The energy of a nonlinear medium is taken as half the product of final values",
 		Sees: "An energy or energy density that is 1/2 (for harmonic fields also 1/4) of a square or product of amplitudes — ½E·D, ½εE², ½CU², ½QU, ½B·H, ½µH², ½LI², ½ψI — " +
-			"with a property or a field of a medium declared nonlinear or hysteretic. A caution where the kind follows from the formula alone.",
+			"with a property or a field of a medium declared nonlinear or hysteretic, or where the one amplitude follows from the other by a curve that is not straight: a table, a function, a saturation law. " +
+			"A caution where the kind follows from the formula alone.",
 		Silent: "For an integral along the curve; for a coenergy; for products that no energy is said to be, such as E·D in a check of energy plus coenergy; " +
+			"where the property is stated as constant for a range that reaches from zero to the amplitude, or the curve is straight to 1 % up to there; " +
+			"for an energy-equivalent capacitance; for B²/2µ0 and D²/2ε0, the energy of a gap; for half of B·H with B against H, the field outside a magnet; " +
 			"in linear media, and in media that do not say (undeclared-medium-assumption speaks).",
 		Formula: "w = ∫ E dD. It equals ½E·D only where D is proportional to E from 0 to the end; for a saturating curve it is less. Energy and coenergy: ∫ E dD + ∫ D dE = E·D.",
 		Remedy:  "Integrate the curve: `integral(E(D) for D from 0 to D_m)`, or along the table of a measured loop.",
@@ -35,23 +38,19 @@ func (Book) HalfProductNonlinear() check.Rule {
     D(x), electric flux density = 0.12 C/m^2 * tanh(x/ferro.E_s) for x from 0 MV/m to 20 MV/m
     w, energy density = E*D(E) - integral(D(x) for x from 0 MV/m to E) = 434 kJ/m^3
 `},
-		Run: halfProduct,
+		Run: perClaim(halfProduct),
 	}
 }
 
-func halfProduct(p *check.Pass) error {
-	for _, c := range viewOf(p).claims {
-		form, ok := c.form()
-		m, curved := c.nonlinear()
-		if !ok || !curved || form != kind.StoredEnergy || c.sym.Facts.Kind.Is(kind.Coenergy) || c.sym.Facts.Kind.Is(kind.CoenergyDensity) {
-			continue
-		}
-		if !c.declared() && c.usedElsewhere() {
-			continue
-		}
-		c.halfInCurve(p, m)
+func halfProduct(p *check.Pass, c *claim) {
+	if !c.isEnergy() {
+		return
 	}
-	return nil
+	if m, curved := c.nonlinear(); curved {
+		c.halfInCurve(p, m)
+	} else {
+		c.halfOfLaw(p)
+	}
 }
 
 // halfInCurve reports the first term that is half or a quarter of a product of
@@ -63,7 +62,7 @@ func (c *claim) halfInCurve(p *check.Pass, m medium) {
 	}
 	found := numbersOf(c.note, c.sym)
 	for _, q := range squares {
-		if !c.inMedium(q, m) || c.energyByDefinition(q) || !found.mayBe(q.coef, big.NewRat(1, 2)) && !found.mayBe(q.coef, big.NewRat(1, 4)) {
+		if !c.inMedium(q, m) || c.energyByDefinition(q) || c.inStraightPart(q) || !found.mayBe(q.coef, big.NewRat(1, 2)) && !found.mayBe(q.coef, big.NewRat(1, 4)) {
 			continue
 		}
 		f := lang.Fault{

@@ -36,17 +36,14 @@ func (Book) ScalarEnergyInCrystal() check.Rule {
     E in crystal, static electric field strength = (sin(a), 0, cos(a)) * 2 MV/m
     w, energy density = 1/2 * E·(crystal.eps*E) = 589 J/m^3
 `},
-		Run: scalarInCrystal,
+		Run: perClaim(scalarInCrystal),
 	}
 }
 
-func scalarInCrystal(p *check.Pass) error {
-	for _, c := range viewOf(p).claims {
-		if form, ok := c.form(); ok && form == kind.StoredEnergy {
-			c.scalarEnergy(p)
-		}
+func scalarInCrystal(p *check.Pass, c *claim) {
+	if form, ok := c.form(); ok && form == kind.StoredEnergy {
+		c.scalarEnergy(p)
 	}
-	return nil
 }
 
 // throughFluxes is the expansion of this rule: like atoms, and through flux
