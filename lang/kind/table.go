@@ -162,6 +162,8 @@ const (
 	PulseDuration
 	PulseRepetitionFrequency
 	Reaction
+	TransientThermalImpedance
+	HeatFlowRate
 	PolarizationLossFactor
 	DCConductivity
 	ExternalPotential
@@ -349,19 +351,21 @@ var table = [...]Kind{
 	// IEC 60050-614), levels of insulation (IEC 60071-1, IEC 60270), the field
 	// that falls on a body, pulses (IEC 60050-702), the product of two phasors
 	// without a conjugate.
-	CrestFactor:              {"crest factor", "peak factor", "k_c", "1", ClassAmplitude, AmplitudeRatio, false},
-	LineToLineVoltage:        {"line-to-line voltage", "phase-to-phase voltage; system voltage; nominal voltage of a system; highest voltage for equipment", "U_LL", "V", ClassAmplitude, Voltage, false},
-	LineToEarthVoltage:       {"line-to-earth voltage", "phase-to-earth voltage; line-to-ground voltage; line-to-neutral voltage; phase-to-neutral voltage", "U_LE", "V", ClassAmplitude, Voltage, false},
-	EarthFaultFactor:         {"earth fault factor", "earth-fault factor", "k", "1", ClassOther, 0, false},
-	WithstandVoltage:         {"withstand voltage", "rated withstand voltage", "U_w", "V", ClassAmplitude, Voltage, false},
-	BreakdownVoltage:         {"breakdown voltage", "disruptive discharge voltage; flashover voltage; sparkover voltage", "U_bd", "V", ClassAmplitude, Voltage, false},
-	InceptionVoltage:         {"inception voltage", "partial discharge inception voltage", "U_i", "V", ClassAmplitude, Voltage, false},
-	InceptionFieldStrength:   {"inception field strength", "partial discharge inception field strength", "E_i", "V/m", ClassAmplitude, ElectricFieldStrength, false},
-	IncidentFieldStrength:    {"incident electric field strength", "incident field strength; external electric field strength; unperturbed electric field strength", "E_inc", "V/m", ClassAmplitude, ElectricFieldStrength, false},
-	PeakEnvelopePower:        {"peak envelope power", "PEP; pulse power", "P_p", "W", ClassPower, Power, false},
-	PulseDuration:            {"pulse duration", "pulse width; pulse length", "t_p", "s", ClassOther, Time, false},
-	PulseRepetitionFrequency: {"pulse repetition frequency", "pulse repetition rate; repetition frequency; repetition rate", "f_p", "Hz", ClassOther, Frequency, false},
-	Reaction:                 {"reaction", "reaction integral", "⟨a,b⟩", "W", ClassOther, 0, false},
+	CrestFactor:               {"crest factor", "peak factor", "k_c", "1", ClassAmplitude, AmplitudeRatio, false},
+	LineToLineVoltage:         {"line-to-line voltage", "phase-to-phase voltage; system voltage; nominal voltage of a system; highest voltage for equipment", "U_LL", "V", ClassAmplitude, Voltage, false},
+	LineToEarthVoltage:        {"line-to-earth voltage", "phase-to-earth voltage; line-to-ground voltage; line-to-neutral voltage; phase-to-neutral voltage", "U_LE", "V", ClassAmplitude, Voltage, false},
+	EarthFaultFactor:          {"earth fault factor", "earth-fault factor", "k", "1", ClassOther, 0, false},
+	WithstandVoltage:          {"withstand voltage", "rated withstand voltage", "U_w", "V", ClassAmplitude, Voltage, false},
+	BreakdownVoltage:          {"breakdown voltage", "disruptive discharge voltage; flashover voltage; sparkover voltage", "U_bd", "V", ClassAmplitude, Voltage, false},
+	InceptionVoltage:          {"inception voltage", "partial discharge inception voltage", "U_i", "V", ClassAmplitude, Voltage, false},
+	InceptionFieldStrength:    {"inception field strength", "partial discharge inception field strength", "E_i", "V/m", ClassAmplitude, ElectricFieldStrength, false},
+	IncidentFieldStrength:     {"incident electric field strength", "incident field strength; external electric field strength; unperturbed electric field strength", "E_inc", "V/m", ClassAmplitude, ElectricFieldStrength, false},
+	PeakEnvelopePower:         {"peak envelope power", "PEP; pulse power", "P_p", "W", ClassPower, Power, false},
+	HeatFlowRate:              {"heat flow rate", "", "Φ", "W", ClassPower, Power, false},
+	PulseDuration:             {"pulse duration", "pulse width; pulse length", "t_p", "s", ClassOther, Time, false},
+	PulseRepetitionFrequency:  {"pulse repetition frequency", "pulse repetition rate; repetition frequency; repetition rate", "f_p", "Hz", ClassOther, Frequency, false},
+	TransientThermalImpedance: {"transient thermal impedance", "", "Z_th", "K/W", ClassOther, 0, false},
+	Reaction:                  {"reaction", "reaction integral", "⟨a,b⟩", "W", ClassOther, 0, false},
 
 	// What a loss is made of; charges and dipoles in a field that others make
 	// (IEC 60050-121).
@@ -389,7 +393,6 @@ var table = [...]Kind{
 	{"antenna factor", "", "AF", "m^-1", ClassAmplitude, 0, false},
 	{"effective area", "", "A_e", "m^2", ClassOther, Area, false},
 	{"acceleration", "", "a", "m/s^2", ClassOther, 0, true},
-	{"heat flow rate", "", "Φ", "W", ClassPower, Power, false},
 	{"coefficient of heat transfer", "heat transfer coefficient", "h", "W/(m^2·K)", ClassOther, 0, true},
 	{"heat capacity", "", "C", "J/K", ClassOther, 0, true},
 }

@@ -330,11 +330,11 @@ func TestExtraKinds(t *testing.T) {
 		"optic axis", "impermittivity", "relative impermittivity",
 		"crest factor", "line-to-line voltage", "line-to-earth voltage", "earth fault factor",
 		"withstand voltage", "breakdown voltage", "inception voltage", "inception field strength", "incident electric field strength",
-		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction",
+		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction", "transient thermal impedance", "heat flow rate",
 		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"demagnetizing factor", "antenna factor", "effective area", "acceleration",
-		"heat flow rate", "coefficient of heat transfer", "heat capacity",
+		"coefficient of heat transfer", "heat capacity",
 	}; !slices.Equal(extra, want) {
 		t.Errorf("further kinds: %q, want %q", extra, want)
 	}
