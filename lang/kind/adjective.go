@@ -29,6 +29,7 @@ const (
 	AnyPhase   Coherence = iota
 	Coherent             // one frequency and fixed phases: fields add as phasors
 	Incoherent           // other frequencies or drifting phases: mean squares add
+	WorstCase            // of a result: magnitudes were added, whatever the phases
 )
 
 // adjective is a word that may stand before the kind.
@@ -41,7 +42,7 @@ type adjective struct {
 var adjectives = [...]adjective{
 	{"sinusoidal", Sinusoidal, 0}, {"square", Square, 0}, {"triangular", Triangular, 0}, {"pulsed", Pulsed, 0},
 	{"modulated", Modulated, 0}, {"distorted", Distorted, 0}, {"random", Random, 0}, {"impulse", Impulse, 0}, {"elliptical", Elliptical, 0},
-	{"coherent", 0, Coherent}, {"incoherent", 0, Incoherent},
+	{"coherent", 0, Coherent}, {"incoherent", 0, Incoherent}, {"worst-case", 0, WorstCase},
 }
 
 // Adjectives lists the words for waveform and coherence, for completion.
