@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math/big"
 	"reflect"
+	"slices"
 	"strings"
 
 	"inkjoule/lang/eval"
@@ -34,24 +35,38 @@ func (n *Note) Form(s *Symbol, x Expr, expand Expand) *Form {
 		return nil
 	}
 	b := &former{n: n, c: c, expand: expand}
+	b.bindParams(s)
 	return b.form(x)
 }
 
 // Normal is the normal form of what the symbol's definition says first. It is
 // built once for each way of looking through names, and kept as long as the
 // definition and all that it needs stay the same.
-func (n *Note) Normal(s *Symbol, expand Expand) *Form { return n.normal(s, expand, 0) }
-
-func (n *Note) normal(s *Symbol, expand Expand, depth int) *Form {
-	c := n.state.cellOf(s)
-	if c == nil || s.Def == nil || len(s.Def.Members) == 0 || len(s.Def.Params) > 0 {
+func (n *Note) Normal(s *Symbol, expand Expand) *Form {
+	if s.Def != nil && len(s.Def.Params) > 0 {
 		return nil
 	}
-	key := reflect.ValueOf(expand).Pointer()
+	return n.normal(s, way{expand: expand}, 0)
+}
+
+// way is how a form is built.
+type way struct {
+	expand Expand
+	apart  bool // see Note.Apart
+}
+
+func (n *Note) normal(s *Symbol, w way, depth int) *Form {
+	c := n.state.cellOf(s)
+	if c == nil || s.Def == nil || len(s.Def.Members) == 0 {
+		return nil
+	}
+	key := formKey{expand: reflect.ValueOf(w.expand).Pointer(), apart: w.apart}
 	if f, ok := c.forms.get(n, key); ok {
 		return f
 	}
-	f := (&former{n: n, c: c, expand: expand, depth: depth}).form(s.Def.Members[0])
+	b := &former{n: n, c: c, expand: w.expand, apart: w.apart, depth: depth}
+	b.bindParams(s)
+	f := b.form(s.Def.Members[0])
 	c.forms.put(key, f)
 	return f
 }
@@ -74,7 +89,9 @@ type former struct {
 	n      *Note
 	c      *cell
 	expand Expand
-	local  map[string]*Form // parameters and bound variables
+	local  map[string]*Form // parameters of a function that is looked through
+	bound  []string         // parameters, bound variables and coordinates that stay atoms
+	apart  bool             // see Note.Apart
 	depth  int
 }
 
@@ -156,6 +173,9 @@ func (b *former) name(x *Name) *Form {
 	if f, ok := b.local[key]; ok {
 		return f
 	}
+	if slices.Contains(b.bound, key) {
+		return b.boundName(key, x)
+	}
 	switch key {
 	case "pi":
 		return &Form{Terms: []Term{{Coef: ratOne, Pi: 1}}}
@@ -180,7 +200,7 @@ func (b *former) symbol(s *Symbol) *Form {
 	c := b.n.state.cellOf(s)
 	plain := c != nil && c.plain && s.Facts.KindBy != Declared
 	if (b.expand(s) || plain) && s.Role == RoleQuantity && s.Def != nil && len(s.Def.Members) > 0 && b.depth < maxLookThrough && !c.cyclic && (plain || !s.Input) {
-		if f := b.n.normal(s, b.expand, b.depth+1); f != nil && len(f.Terms) <= mostTerms {
+		if f := b.n.normal(s, way{b.expand, b.apart}, b.depth+1); f != nil && len(f.Terms) <= mostTerms {
 			return f
 		}
 	}
@@ -211,7 +231,7 @@ func (b *former) member(m *Member) *Form {
 		full := key + "." + field
 		return atom(Factor{Key: full, Facts: b.facts(m), Symbol: b.n.propertyBehind(key, field)})
 	case RoleRegion, RoleTable:
-		return atom(Factor{Key: key + "." + field, Facts: b.facts(m), Over: regionOrNil(owner)})
+		return atom(Factor{Key: key + "." + field, Facts: b.facts(m), Symbol: columnOrNil(b.n, owner, field), Over: regionOrNil(owner)})
 	}
 	return b.part(m, b.symbol(owner))
 }
@@ -226,6 +246,14 @@ func (n *Note) propertyBehind(medium, field string) *Symbol {
 		if s := n.Lookup(medium + "." + d.from); s != nil {
 			return s
 		}
+	}
+	return nil
+}
+
+// columnOrNil is the column of a table.
+func columnOrNil(n *Note, owner *Symbol, field string) *Symbol {
+	if owner.Role == RoleTable {
+		return n.Lookup(owner.Key + "." + field)
 	}
 	return nil
 }
@@ -351,6 +379,12 @@ func (b *former) call(c *Call) *Form {
 	switch {
 	case name == "integral" && c.Over != nil && len(args) == 1:
 		return b.overRegion(c)
+	case b.apart && len(c.For) > 0 && (name == "integral" || name == "sum") && len(args) == 1:
+		return b.overVariables(c)
+	case b.apart && name == "sum" && len(c.For) == 0 && len(args) == 1:
+		if f := b.overRows(c); f != nil {
+			return f
+		}
 	case name == "dot" && len(args) == 2:
 		return b.times(&Binary{Node: c.Node, Op: OpDot, X: args[0], Y: args[1]})
 	case name == "abs" && len(args) == 1:
@@ -389,7 +423,10 @@ func (b *former) inline(c *Call, s *Symbol) *Form {
 	if d == nil || len(d.Params) != len(c.Args) || len(d.Pieces) > 0 || b.depth >= maxLookThrough || len(d.Members) == 0 {
 		return nil
 	}
-	inner := &former{n: b.n, c: b.n.state.cellOf(s), expand: b.expand, depth: b.depth + 1, local: map[string]*Form{}}
+	if b.apart && !b.expand(s) {
+		return b.called(c, s)
+	}
+	inner := &former{n: b.n, c: b.n.state.cellOf(s), expand: b.expand, apart: b.apart, depth: b.depth + 1, local: map[string]*Form{}}
 	for i, p := range d.Params {
 		inner.local[CanonicalName(p.Text)] = b.form(c.Args[i])
 	}
@@ -404,8 +441,11 @@ func (b *former) overRegion(c *Call) *Form {
 		return nil
 	}
 	r := b.n.Lookup(CanonicalName(n.Text))
-	f := b.form(c.Args[0])
-	if r == nil || f == nil {
+	if r == nil {
+		return nil
+	}
+	f := b.binding(coordinatesOf(r)).form(c.Args[0])
+	if f == nil {
 		return nil
 	}
 	facts := b.facts(c)

@@ -2,17 +2,23 @@ package lang
 
 import "sync"
 
-// keptForms are the normal forms of one cell's definition, by the function that
-// tells which names they look through. They belong to the cell's work and so
+// keptForms are the normal forms of one cell's definition, by the way in
+// which they were built. They belong to the cell's work and so
 // outlive an edit that does not reach it. Their symbols may be those of an
 // earlier note, so a form is brought up to date before it is handed out.
 type keptForms struct {
 	mu sync.Mutex
-	by map[uintptr]*Form
+	by map[formKey]*Form
+}
+
+// formKey tells forms of one definition apart.
+type formKey struct {
+	expand uintptr // the function that tells which names are looked through
+	apart  bool
 }
 
 // get finds a form, with its symbols looked up anew where they have changed.
-func (k *keptForms) get(n *Note, key uintptr) (*Form, bool) {
+func (k *keptForms) get(n *Note, key formKey) (*Form, bool) {
 	if k == nil {
 		return nil, false
 	}
@@ -26,14 +32,14 @@ func (k *keptForms) get(n *Note, key uintptr) (*Form, bool) {
 	return f, ok
 }
 
-func (k *keptForms) put(key uintptr, f *Form) {
+func (k *keptForms) put(key formKey, f *Form) {
 	if k == nil {
 		return
 	}
 	k.mu.Lock()
 	defer k.mu.Unlock()
 	if k.by == nil {
-		k.by = map[uintptr]*Form{}
+		k.by = map[formKey]*Form{}
 	}
 	k.by[key] = f
 }

@@ -32,6 +32,19 @@ func newClaim(v *view, s *lang.Symbol) *claim {
 	return c
 }
 
+// newFunctionClaim reads a function as a claim of what it gives; nil for
+// everything else.
+func newFunctionClaim(v *view, s *lang.Symbol) *claim {
+	if s.Role != lang.RoleFunction || s.Def == nil || s.Stmt == nil || len(s.Def.Members) == 0 || len(s.Def.Pieces) > 0 {
+		return nil
+	}
+	c := &claim{view: v, note: v.note, sym: s, x: s.Def.Members[0]}
+	if s.Facts.QualBy == lang.Declared {
+		c.stat, c.stated = s.Facts.Qualifier, s.Facts.Qualifier != kind.Unqualified
+	}
+	return c
+}
+
 // span is the place of the defining expression.
 func (c *claim) span() lang.Span { return c.sym.Stmt.Abs(c.x) }
 

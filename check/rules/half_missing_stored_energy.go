@@ -17,7 +17,7 @@ func (Book) HalfMissingStoredEnergy() check.Rule {
 		Severity: lang.Error,
 		Title:    "A stored energy is twice what it should be: its half is missing",
 		Sees: "A stored energy or energy density that is a product of two amplitudes of the same state (C·U², Q·U, Q²/C, ε·E², E·D, D²/ε, L·I², λ·I, λ²/L, µ·H², B·H, B²/µ, " +
-			"also times a volume) with a coefficient that is off 1/2 by exactly 2, for static, instantaneous or peak values. " +
+			"also times a volume, in a function, in a sum, and with fields in an integral over space) with a coefficient that is off 1/2 by exactly 2, for static, instantaneous or peak values. " +
 			"A caution where the statistic is not stated in a note with rms values or a harmonic regime, or where the kind follows from the formula alone.",
 		Silent: "For a source work or work, for heat, for a power such as C·U²·f; for rms values, of which the whole square is the energy at the crest; " +
 			"for the mutual term of two currents, for a product with a coercivity (the area of a loop); " +
@@ -35,13 +35,20 @@ func (Book) HalfMissingStoredEnergy() check.Rule {
     U, static voltage = 400 V
     W, stored energy = 1/2 * C*U^2 = 37.6 J
 `},
-		Run: perClaim(halfMissing),
+		Run: perSpot(halfMissing),
 	}
 }
 
-func halfMissing(p *check.Pass, c *claim) {
-	if c.isStored() {
-		checkHalf(p, c)
+func halfMissing(p *check.Pass, s *spot) {
+	for _, c := range s.claims {
+		if c.isStored() {
+			checkHalf(p, c)
+		}
+	}
+	for _, sym := range s.symbols {
+		if c := newFunctionClaim(viewOf(p), sym); c != nil && c.isStored() {
+			checkHalf(p, c)
+		}
 	}
 }
 
@@ -64,6 +71,9 @@ func checkHalf(p *check.Pass, c *claim) {
 		return
 	}
 	squares, ok := c.squares(kind.StoredEnergy)
+	if !ok {
+		squares, ok = c.squaresWithin(kind.StoredEnergy)
+	}
 	if !ok || c.stated && c.stat != kind.Static && c.stat != kind.Instantaneous && c.stat != kind.Peak {
 		return
 	}

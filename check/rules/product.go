@@ -132,7 +132,7 @@ func products(f *lang.Form) []*product {
 	}
 	out := make([]*product, len(f.Terms))
 	for i, t := range f.Terms {
-		out[i] = newProduct(withoutIm(t))
+		out[i] = newProduct(withoutInverse(withoutIm(t)))
 	}
 	return out
 }
@@ -149,6 +149,23 @@ func withoutIm(t lang.Term) lang.Term {
 		out.Coef = new(big.Rat).Mul(t.Coef, inner.Coef)
 		out.Pi += inner.Pi
 		out.Factors = slices.Concat(t.Factors[:i], inner.Factors, t.Factors[i+1:])
+		return out
+	}
+	return t
+}
+
+// withoutInverse looks through the inverse of a tensor: inv(ε) is ε to the
+// power of minus one.
+func withoutInverse(t lang.Term) lang.Term {
+	for i, f := range t.Factors {
+		inner, single := f.Inside.Single()
+		if f.Call != "inv" || !single || len(inner.Factors) != 1 || inner.Coef.Cmp(big.NewRat(1, 1)) != 0 || inner.Pi != 0 {
+			continue
+		}
+		g := inner.Factors[0]
+		g.Exp, g.Applied = g.Exp.Mul(f.Exp).Neg(), f.Applied
+		out := t
+		out.Factors = slices.Concat(t.Factors[:i], []lang.Factor{g}, t.Factors[i+1:])
 		return out
 	}
 	return t
@@ -195,8 +212,11 @@ func (p *product) add(f lang.Factor) {
 // opaqueFactor reports a factor that could hide a number: a call, or text that
 // the normal form could not take apart.
 func opaqueFactor(f lang.Factor) bool {
-	return f.Call != "" || f.Symbol == nil && !f.Literal && f.Over == nil && f.Key != "j" && !strings.HasPrefix(f.Key, "#")
+	return f.Call != "" || f.Symbol == nil && !f.Literal && f.Over == nil && f.Key != "j" && !strings.HasPrefix(f.Key, "#") && !isBound(f) && !strings.HasPrefix(f.Key, "each ")
 }
+
+// isBound reports a parameter, a bound variable or a coordinate.
+func isBound(f lang.Factor) bool { return strings.HasPrefix(f.Key, "bound ") }
 
 // isCycles reports a factor that counts cycles: a frequency in Hz.
 func isCycles(f lang.Factor) bool {

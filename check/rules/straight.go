@@ -130,7 +130,7 @@ func boolInt(b bool) int {
 // isVariable reports the factor that is the bound variable itself.
 func isVariable(f lang.Factor, variable string) bool {
 	key := lang.CanonicalName(variable)
-	return f.Key == "("+variable+")" || f.Key == key && f.Symbol == nil || f.Key == key && f.Symbol != nil && f.Symbol.Role == lang.RoleQuantity
+	return f.Key == "bound "+key || f.Key == "("+variable+")" || f.Key == key && f.Symbol == nil || f.Key == key && f.Symbol != nil && f.Symbol.Role == lang.RoleQuantity
 }
 
 // mentions reports a word in the text of a part that could not be taken apart.

@@ -16,6 +16,7 @@ type view struct {
 	used   map[string]bool         // names that another definition uses, by key
 	hasRMS bool                    // something in the note is an rms value
 	forms  map[*lang.Symbol][]*product
+	aparts map[*lang.Symbol][]*product
 }
 
 // viewOf gives the view of the note of a pass.
@@ -26,7 +27,7 @@ func viewOf(p *check.Pass) *view {
 
 func newView(p *check.Pass) *view {
 	n := p.Note
-	v := &view{note: n, book: p.Book, used: map[string]bool{}, forms: map[*lang.Symbol][]*product{}}
+	v := &view{note: n, book: p.Book, used: map[string]bool{}, forms: map[*lang.Symbol][]*product{}, aparts: map[*lang.Symbol][]*product{}}
 	for _, s := range n.Symbols {
 		if c := newClaim(v, s); c != nil {
 			v.claims = append(v.claims, c)
@@ -52,6 +53,17 @@ func (v *view) products(s *lang.Symbol) []*product {
 	if !ok {
 		made = products(v.note.Normal(s, atoms))
 		v.forms[s] = made
+	}
+	return made
+}
+
+// apart is products for functions too, with integrals over lengths and sums
+// taken apart.
+func (v *view) apart(s *lang.Symbol) []*product {
+	made, ok := v.aparts[s]
+	if !ok {
+		made = products(v.note.Apart(s, atoms))
+		v.aparts[s] = made
 	}
 	return made
 }
