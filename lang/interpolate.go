@@ -48,16 +48,20 @@ type curves struct {
 	names   []string
 }
 
-// curvesOf compiles the columns of a table for reading.
-func (e *elab) curvesOf(table *cell, at Tree) (curves, bool) {
+// curvesOf compiles the axis of a table, its first column, and the wanted
+// columns for reading. Others are left out: they may depend on what is read.
+func (e *elab) curvesOf(table *cell, at Tree, want map[string]bool) (curves, bool) {
 	t, ok := table.tree.(*Table)
 	if !ok || table.cyclic {
 		return curves{}, false
 	}
 	var cs curves
 	var columns []eval.Column
-	for _, col := range t.Columns {
+	for i, col := range t.Columns {
 		key := CanonicalName(col.Name.Text)
+		if i > 0 && !want[key] {
+			continue
+		}
 		c := e.a.cells[table.key+"."+key]
 		if c == nil || !c.sym.Facts.Known {
 			return curves{}, false
@@ -94,23 +98,21 @@ func (c curves) column(name string) int {
 // reading infers t.y at x = VALUE.
 func (e *elab) reading(l *Lookup, m *Member, table *cell) typed {
 	v := e.expr(l.Value)
-	cs, ok := e.curvesOf(table, l)
-	if !ok || !v.Known {
-		return unknown()
-	}
-	y, x := cs.column(CanonicalName(m.Field.Text)), cs.column(CanonicalName(l.Column.Text))
-	for _, miss := range []struct {
-		at   int
-		name Ident
-	}{{y, m.Field}, {x, l.Column}} {
-		if miss.at < 0 {
+	keyY, keyX := CanonicalName(m.Field.Text), CanonicalName(l.Column.Text)
+	for _, name := range []Ident{m.Field, l.Column} {
+		if e.a.cells[table.key+"."+CanonicalName(name.Text)] == nil {
 			e.report(Fault{
-				Rule: "unknown-property", Severity: Error, Span: miss.name.Span,
-				Message: fmt.Sprintf("table %s has no column %s", table.title(), miss.name.Text), Detail: e.a.owned(table), Related: e.relate(table, "the table"),
+				Rule: "unknown-property", Severity: Error, Span: name.Span,
+				Message: fmt.Sprintf("table %s has no column %s", table.title(), name.Text), Detail: e.a.owned(table), Related: e.relate(table, "the table"),
 			})
 			return unknown()
 		}
 	}
+	cs, ok := e.curvesOf(table, l, map[string]bool{keyY: true, keyX: true})
+	if !ok || !v.Known {
+		return unknown()
+	}
+	y, x := cs.column(keyY), cs.column(keyX)
 	e.use(table.key+"."+cs.names[y], m.Field.Span)
 	e.use(table.key+"."+cs.names[x], l.Column.Span)
 	if !v.Dim.Compatible(cs.columns[x].Dim) {
@@ -142,7 +144,14 @@ func (e *elab) alongTable(c *Call, m *Member) typed {
 		e.fault("shape-mix", m, fmt.Sprintf("%s is no column of a table", sketch(m)), "integrate over a name, or along a column: for t.x from A to B")
 		return unknown()
 	}
-	cs, ok := e.curvesOf(table, m)
+	want := map[string]bool{CanonicalName(m.Field.Text): true}
+	Walk(c.Args[0], func(t Tree) bool {
+		if o, ok := t.(*Member); ok {
+			want[CanonicalName(o.Field.Text)] = true
+		}
+		return true
+	})
+	cs, ok := e.curvesOf(table, m, want)
 	b := e.bounds(c.For[0])
 	from, to := e.again(c.For[0].From), e.again(c.For[0].To)
 	if !ok || !b.Known {

@@ -8,7 +8,7 @@ import (
 // link resolves every cell's needs to cells.
 func (a *analysis) link() {
 	for _, c := range a.all {
-		if old := a.old[c.tree]; old != nil && old.owner == nil {
+		if old := a.old[c.tree]; old != nil && old.owner == nil && a.needsHold(old) {
 			c.needs = old.needs
 		} else {
 			c.needs = a.needsOf(c)
@@ -18,6 +18,19 @@ func (a *analysis) link() {
 			c.deps[i] = a.cells[n.key]
 		}
 	}
+}
+
+// needsHold reports whether the needs of an earlier cell are still what its tree
+// gives: which properties and columns stand behind a medium's or a table's hangs
+// on that medium or table.
+func (a *analysis) needsHold(old *cell) bool {
+	for _, n := range old.needs {
+		d := a.cells[n.key]
+		if d != nil && (d.role == RoleMedium || d.role == RoleTable) && d.path == "" && a.old[d.tree] == nil {
+			return false
+		}
+	}
+	return true
 }
 
 // Colours of the depth-first walk.

@@ -128,6 +128,9 @@ func (k *collector) expr(x Expr) {
 	case *Lookup:
 		k.expr(x.X)
 		k.expr(x.Value)
+		if m, ok := x.X.(*Member); ok {
+			k.curve(m, CanonicalName(x.Column.Text))
+		}
 	default:
 		for _, c := range Children(x) {
 			if e, ok := c.(Expr); ok {
@@ -182,6 +185,29 @@ func (k *collector) member(m *Member) {
 	}
 }
 
+// curve adds what a reading of a table needs beside the column that is read: the
+// column that it is read at, and the table's axis.
+func (k *collector) curve(m *Member, column string) {
+	n, ok := m.X.(*Name)
+	if !ok {
+		return
+	}
+	base := CanonicalName(n.Text)
+	c := k.a.cells[base]
+	if c == nil || c.role != RoleTable || k.hidden[base] > 0 {
+		return
+	}
+	t, ok := c.tree.(*Table)
+	if !ok || len(t.Columns) == 0 {
+		return
+	}
+	for _, name := range []string{column, CanonicalName(t.Columns[0].Name.Text)} {
+		if k.a.cells[base+"."+name] != nil {
+			k.add(base+"."+name, m.Span)
+		}
+	}
+}
+
 // through handles `ref.mica.eps`: a property of a referred note's medium.
 func (k *collector) through(m *Member) {
 	o, ok := m.X.(*Member)
@@ -212,13 +238,9 @@ func (k *collector) call(c *Call) {
 	})
 }
 
-// function adds the function of the note or of the same medium that is called.
-func (k *collector) function(name string, at Span) {
-	sibling := k.owner != "" && len(k.a.propertyCells(k.owner, name)) > 0
-	if sibling || k.a.cells[name] != nil {
-		k.add(name, at)
-	}
-}
+// function adds the function that is called: of the note or of the same medium.
+// There may be none now, and one after the next edit.
+func (k *collector) function(name string, at Span) { k.add(name, at) }
 
 // bound collects the limits of the ranges, then runs body with their
 // variables hidden.
@@ -233,6 +255,9 @@ func (k *collector) bound(ranges []*Range, body func()) {
 			vars = append(vars, CanonicalName(n.Text))
 		} else {
 			k.expr(r.Var)
+			if m, ok := r.Var.(*Member); ok {
+				k.curve(m, CanonicalName(m.Field.Text))
+			}
 		}
 	}
 	k.hide(vars, 1)
