@@ -202,6 +202,9 @@ func statOfForm(n *lang.Note, form *lang.Form, inferred kind.Qualifier) kind.Qua
 	p := newProduct(t)
 	stat := inferred
 	for _, f := range p.all {
+		if f.Facts.Kind.Is(kind.CrestFactor) {
+			return kind.Unqualified
+		}
 		if f.Symbol != nil && f.Facts.QualBy == lang.Declared && f.Facts.Qualifier != kind.Unqualified && f.Exp == unit.Whole(1) {
 			stat = f.Facts.Qualifier
 		}
