@@ -30,6 +30,12 @@ var overrides = []beats{
 	{"conjugate-missing", []string{"mean-power-half", "quarter-half-average", "half-missing-stored-energy"}},
 	{"sar-field-statistic", []string{"mean-power-half"}},
 	{"wave-impedance-misuse", []string{"mean-power-half"}},
+	// Who makes the field decides whether there is a half at all.
+	{"pair-sum-double-count", []string{"half-missing-stored-energy"}},
+	{"external-potential-halved", []string{"half-missing-stored-energy", "quarter-half-average"}},
+	{"induced-dipole-half", []string{"half-missing-stored-energy", "quarter-half-average"}},
+	{"full-field-plate-force", []string{"quarter-half-average"}},
+	{"polarization-energy-count", []string{"half-missing-stored-energy"}},
 	// The medium decides which form is right at all.
 	{"half-product-nonlinear", []string{"energy-product-as-stored", "half-missing-stored-energy", "quarter-half-average"}},
 	{"bias-point-capacitance-energy", []string{"half-product-nonlinear", "half-missing-stored-energy", "quarter-half-average", "property-out-of-range"}},

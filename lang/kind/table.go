@@ -171,6 +171,7 @@ const (
 	InducedElectricDipoleMoment
 	Polarizability
 	InteractionEnergy
+	VacuumEnergyDensity
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -376,6 +377,8 @@ var table = [...]Kind{
 	InducedElectricDipoleMoment:   {"induced electric dipole moment", "induced dipole moment", "p_i", "C·m", ClassOther, ElectricDipoleMoment, false},
 	Polarizability:                {"polarizability", "electric polarizability", "α", "C·m^2/V", ClassOther, 0, false},
 	InteractionEnergy:             {"interaction energy", "energy in an external field", "W_i", "J", ClassEnergy, Energy, false},
+
+	VacuumEnergyDensity: {"vacuum energy density", "energy density of the field alone; vacuum part of the energy density", "w_0", "J/m^3", ClassEnergy, EnergyDensity, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},

@@ -331,7 +331,7 @@ func TestExtraKinds(t *testing.T) {
 		"crest factor", "line-to-line voltage", "line-to-earth voltage", "earth fault factor",
 		"withstand voltage", "breakdown voltage", "inception voltage", "inception field strength", "incident electric field strength",
 		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction", "transient thermal impedance", "heat flow rate",
-		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy",
+		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"demagnetizing factor", "antenna factor", "effective area", "acceleration",
 		"coefficient of heat transfer", "heat capacity",
