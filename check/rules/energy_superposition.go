@@ -54,7 +54,7 @@ func superposition(p *check.Pass) error {
 // pair is two symbols in the order of their keys.
 type pair [2]string
 
-func pairOf(a, b string) pair {
+func inOrder(a, b string) pair {
 	if a > b {
 		a, b = b, a
 	}
@@ -80,7 +80,7 @@ func summedPairs(p *check.Pass) map[pair]*lang.Symbol {
 		}
 		for i := range keys {
 			for j := range i {
-				out[pairOf(keys[i], keys[j])] = c.sym
+				out[inOrder(keys[i], keys[j])] = c.sym
 			}
 		}
 	}
@@ -100,7 +100,7 @@ func (c *claim) superposed(p *check.Pass, sums map[pair]*lang.Symbol) {
 			if a == nil || b == nil || restA != restB || form.Terms[i].Coef.Cmp(form.Terms[j].Coef) != 0 {
 				continue
 			}
-			sum := sums[pairOf(a.Key, b.Key)]
+			sum := sums[inOrder(a.Key, b.Key)]
 			if sum == nil || hasProduct(form, a.Key, b.Key) || c.apart(a, b) {
 				continue
 			}
