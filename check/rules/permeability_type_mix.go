@@ -53,6 +53,9 @@ func throughPermeabilities(s *lang.Symbol) bool {
 
 func permeabilityType(p *check.Pass) error {
 	for _, c := range viewOf(p).claims {
+		if !mayHavePermeability(c.sym.Facts) {
+			continue
+		}
 		t, single := c.note.Normal(c.sym, throughPermeabilities).Single()
 		if !single {
 			continue
@@ -69,6 +72,18 @@ func permeabilityType(p *check.Pass) error {
 		}
 	}
 	return nil
+}
+
+// mayHavePermeability reports what the types of permeability are judged in: flux
+// densities, field strengths, inductances, permeabilities, skin depths, energies.
+func mayHavePermeability(f lang.Facts) bool {
+	for _, k := range []kind.ID{kind.MagneticFluxDensity, kind.MagneticFieldStrength, kind.Inductance, kind.Permeability} {
+		if isOf(f, k) {
+			return true
+		}
+	}
+	form, isForm := kind.FormOf(f.Kind)
+	return f.Kind.Is(kind.SkinDepth) || f.Kind.Is(kind.RelativePermeability) || isForm && form == kind.StoredEnergy
 }
 
 // permeabilityOf finds the permeability of a material in a term.

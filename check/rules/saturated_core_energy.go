@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -54,11 +55,16 @@ const curveTolerance = 0.05
 
 func saturatedCore(p *check.Pass) error {
 	for _, c := range viewOf(p).claims {
-		if c.isEnergy() {
+		if c.isEnergy() && c.isMagnetic() {
 			c.coreEnergy(p)
 		}
 	}
 	return nil
+}
+
+// isMagnetic reports a claim with a current, a flux or a magnetic field in it.
+func (c *claim) isMagnetic() bool {
+	return slices.ContainsFunc(c.view.products(c.sym), func(t *product) bool { return len(t.byRole[roleMagnetic]) > 0 })
 }
 
 // coreEnergy files the first finding about the terms of a claim, seen through
