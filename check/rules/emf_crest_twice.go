@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -50,16 +51,17 @@ func emfCrest(p *check.Pass, c *claim) {
 	}
 	square, ok := c.squareWave(e)
 	u, b := c.statisticOf(e.voltage), c.statisticOf(e.flux)
-	meant := false
-	for _, k := range emfNumbers {
-		meant = meant || near(e.number, k)
-	}
-	if !ok || !meant || b == kind.PeakToPeak || !known(u, u) && !known(b, b) {
+	if !ok || !e.isKnown() || b == kind.PeakToPeak || !known(u, u) && !known(b, b) {
 		return
 	}
 	if right, wrong := c.emfWrong(e, u, b, square); wrong {
 		c.reportEmf(p, e, u, b, right)
 	}
+}
+
+// isKnown reports one of the numbers by which the law is known.
+func (e *emf) isKnown() bool {
+	return slices.ContainsFunc(emfNumbers, func(k float64) bool { return near(e.number, k) })
 }
 
 // emfWrong gives the number that belongs there where the number of the law is

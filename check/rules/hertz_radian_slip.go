@@ -87,6 +87,9 @@ func (c *claim) cycleSlip() (lang.Fault, bool) {
 	if f, ok := c.statedIn(found); ok {
 		return f, true
 	}
+	if e := c.emfOf(); e != nil && e.isKnown() {
+		return lang.Fault{}, false // 4·f·N·B·A and 4.44·f·N·B·A take the frequency
+	}
 	return c.slot(found)
 }
 

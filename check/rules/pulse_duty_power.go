@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -20,7 +21,7 @@ func (Book) PulseDutyPower() check.Rule {
 		Sees: "A heat, a temperature rise, a heating rate, a specific absorption rate or an average that is made with a pulse power (kind peak envelope power, or `pulsed peak power`) without a duty ratio; " +
 			"a peak field or voltage, or the energy of one pulse, that is made with the average power of pulses; a duty ratio above 1, or one that is not pulse duration times repetition frequency. " +
 			"A caution where the power of the pulses says neither peak nor average, and where a time that may be the pulse duration stands beside it.",
-		Silent: "For continuous waves; with a duty ratio, with pulse duration times repetition frequency, or with a pulse duration alone for the heat of one pulse; with a transient thermal impedance; for results that are declared as peak values; " +
+		Silent: "For continuous waves; with a duty ratio or another number below 1, with pulse duration times repetition frequency, or with a pulse duration alone for the heat of one pulse; with a transient thermal impedance; for results that are declared as peak values; " +
 			"for peak fields from pulse powers; for one pulse among several.",
 		Formula: "P_mean = P_pulse·t_p·f_p = P_pulse·D; one pulse has the energy P_pulse·t_p; Ê = √(2·η·S_pulse).",
 		Remedy:  "Give the two powers names of their own: `P_m, average power = P_p*t_p*f_p`.",
@@ -72,7 +73,7 @@ func pulsePowers(p *check.Pass, c *claim) {
 		switch {
 		case u.level == pulseMean:
 			c.meanForPulse(p, u)
-		case !u.shared && !u.steep:
+		case !u.shared && !u.steep && !c.hasShare():
 			c.pulseForMean(p, u)
 		}
 		return
@@ -105,6 +106,23 @@ func pulsedIn(n *lang.Note, t *product) (u pulsed, ok bool) {
 	}
 	u.shared = u.shared || times > 0 && rates > 0
 	return u, ok
+}
+
+// hasShare reports a number below 1 that is written out or that a name stands
+// for: it may be a duty ratio.
+func (c *claim) hasShare() bool {
+	found := false
+	lang.Walk(c.x, func(t lang.Tree) bool {
+		switch t := t.(type) {
+		case *lang.Literal:
+			found = found || t.Unit == nil && t.Num.Value < 0.9
+		case *lang.Name:
+			s := c.note.Lookup(lang.CanonicalName(t.Text))
+			found = found || s != nil && s.Input && s.Facts.Dim.IsOne() && s.Facts.KindBy != lang.Declared && s.Value.Re() < 0.9
+		}
+		return !found
+	})
+	return found
 }
 
 // isPower reports a power, a power flux or a density of one.
@@ -228,15 +246,39 @@ func dutyOfPulses(p *check.Pass) {
 	}
 	want := duration.Value.Re() * rate.Value.Re()
 	if have := ratio.Value.Re(); math.Abs(have/want-1) > 0.05 {
+		severity, unless := p.Lowered(), " If it is the duty ratio of something else, waive this for it."
+		if pulsesWith(p.Note, ratio) {
+			severity, unless = p.Rule.Severity, ""
+		}
 		p.Report(lang.Fault{
-			Span:    ratio.Span,
+			Span: ratio.Span, Severity: severity,
 			Message: fmt.Sprintf("the duty ratio %s is %.3g, and %s times %s is %.3g", ratio.Name, have, duration.Name, rate.Name, want),
-			Detail:  "Correct one of the three, or compute the duty ratio from the other two.",
+			Detail:  "Correct one of the three, or compute the duty ratio from the other two." + unless,
 			Related: []lang.Related{
 				{Path: duration.Path, Span: duration.Span, Message: "the pulse duration"}, {Path: rate.Path, Span: rate.Span, Message: "the repetition frequency"},
 			},
 		})
 	}
+}
+
+// pulsesWith reports a definition in which the duty ratio stands beside the
+// power of pulses: it is theirs.
+func pulsesWith(n *lang.Note, ratio *lang.Symbol) bool {
+	for _, s := range n.Symbols {
+		if s.Role != lang.RoleQuantity || s.Input || !isPower(s.Facts) {
+			continue
+		}
+		t, single := n.Normal(s, lang.NamesStay).Single()
+		if !single {
+			continue
+		}
+		duty := slices.ContainsFunc(t.Factors, func(f lang.Factor) bool { return f.Symbol == ratio })
+		power := slices.ContainsFunc(t.Factors, func(f lang.Factor) bool { return levelOf(n, f, maxScalings) != noPulse })
+		if duty && power {
+			return true
+		}
+	}
+	return false
 }
 
 // onlyOf gives the scalar of a declared kind, and how many the note has.

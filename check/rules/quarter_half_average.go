@@ -159,7 +159,11 @@ func (c *claim) totalUnless(q *square, off *big.Rat) string {
 	if q.form != kind.StoredEnergy || off.Cmp(big.NewRat(2, 1)) != 0 {
 		return ""
 	}
-	return " If the electric and the magnetic energy of a travelling wave or a resonator are meant together, write `volumic electromagnetic energy`."
+	name := "volumic electromagnetic energy"
+	if isOf(c.sym.Facts, kind.Energy) {
+		name = "electromagnetic energy"
+	}
+	return fmt.Sprintf(" If the electric and the magnetic energy of a travelling wave or a resonator are meant together, write `%s`.", name)
 }
 
 // article writes a statistic with its article.

@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -85,7 +86,8 @@ func (c *claim) unlikeDeclared(p *check.Pass) {
 
 // ifShaped names the waveform for which a formula without √2 would be right
 // after all: peak and rms value are equal for a square wave, and the one is √3
-// times the other for a triangle. The latter is a formula that people mean.
+// times the other for a triangle and twice for a half-wave rectified sinusoid.
+// The latter two are formulas that people mean.
 func (c *claim) ifShaped(p *check.Pass, form *lang.Form, from kind.Qualifier) (lang.Severity, string) {
 	t, single := form.Single()
 	if !single || !crest(from, c.stat) || c.harmonic() {
@@ -98,6 +100,8 @@ func (c *claim) ifShaped(p *check.Pass, form *lang.Form, from kind.Qualifier) (l
 	switch {
 	case s.value == 1:
 		return p.Rule.Severity, fmt.Sprintf(" If it is a square wave, write `%s, square %s …`.", c.sym.Name, c.stat)
+	case s.value == 2:
+		return p.Lowered(), fmt.Sprintf(" If it is a half-wave rectified sinusoid, whose peak is twice its rms value, write `%s, distorted %s …`.", c.sym.Name, c.stat)
 	case math.Abs(s.value/math.Sqrt(3)-1) < 2e-3:
 		return p.Lowered(), fmt.Sprintf(" If it is a triangular wave, for which the square root of 3 stands between the two, write `%s, triangular %s …`.", c.sym.Name, c.stat)
 	}
@@ -128,6 +132,9 @@ func (c *claim) unconverted(t lang.Term) *lang.Factor {
 	if amplitude == nil || kind.Like(amplitude.Facts.Qualifier, to) || shaped(waveOf(c.note, *amplitude)) {
 		return nil
 	}
+	if overTime(t) && !crest(amplitude.Facts.Qualifier, to) {
+		return nil // the slope of a swing, or the swing that a steady voltage makes
+	}
 	if amplitude.Facts.Qualifier == kind.Static && to == kind.RMS {
 		return nil // the rms value of a steady quantity is its value
 	}
@@ -135,6 +142,11 @@ func (c *claim) unconverted(t lang.Term) *lang.Factor {
 		return nil
 	}
 	return amplitude
+}
+
+// overTime reports a term with a time or a frequency in it.
+func overTime(t lang.Term) bool {
+	return slices.ContainsFunc(t.Factors, func(f lang.Factor) bool { return roleOf(f.Facts) == roleFrequency })
 }
 
 // mayConvert reports a factor that could hold the √2: text that cannot be taken

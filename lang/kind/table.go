@@ -238,7 +238,7 @@ var table = [...]Kind{
 	SurfaceResistance: {"surface resistance", "", "R_s", "Ω", ClassOther, 0, false},
 
 	// Energy and power.
-	Energy:                  {"energy", "work; stored energy", "W", "J", ClassEnergy, 0, false},
+	Energy:                  {"energy", "work; stored energy; electromagnetic energy", "W", "J", ClassEnergy, 0, false},
 	SourceWork:              {"source work", "energy drawn from a source", "W_s", "J", ClassSourceWork, Energy, false},
 	Coenergy:                {"coenergy", "", "W′", "J", ClassEnergy, 0, false},
 	ActiveEnergy:            {"active energy", "", "W", "J", ClassPower, Energy, false},
