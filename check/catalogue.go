@@ -14,17 +14,29 @@ import (
 type Catalogue struct {
 	all    []*Rule // sorted by name
 	byName map[string]*Rule
+	firm   map[string]bool // findings of the language that are firm, whoever explains them
 }
 
 // NewCatalogue joins the rules with the findings of the language. The error
-// tells every rule that is not complete and every name that is used twice.
+// tells every rule that is not complete and every name that is used twice. A
+// rule that extends a finding of the language stands in its place.
 func NewCatalogue(rules []*Rule) (*Catalogue, error) {
-	c := &Catalogue{all: slices.Concat(Language(), rules), byName: map[string]*Rule{}}
+	c := &Catalogue{byName: map[string]*Rule{}, firm: map[string]bool{}}
+	for _, r := range Language() {
+		c.firm[r.Name] = r.Firm
+		if !slices.ContainsFunc(rules, func(x *Rule) bool { return x.Extends && x.Name == r.Name }) {
+			c.all = append(c.all, r)
+		}
+	}
+	c.all = append(c.all, rules...)
 	var faults []error
 	for i, r := range c.all {
 		faults = append(faults, r.Validate())
 		if i >= len(c.all)-len(rules) && r.Run == nil {
 			faults = append(faults, fmt.Errorf("rule %q: it has no code", r.Name))
+		}
+		if _, language := c.firm[r.Name]; r.Extends && !language {
+			faults = append(faults, fmt.Errorf("rule %q: the language has no finding of this name to extend", r.Name))
 		}
 		if c.byName[r.Name] != nil {
 			faults = append(faults, fmt.Errorf("rule %q: the name is used twice", r.Name))

@@ -19,6 +19,7 @@ import (
 type Finding struct {
 	lang.Fault
 	Path     string
+	Firm     bool      // an error of syntax, dimension or arithmetic: never waived, lowered or switched off
 	Waived   string    // the waiver's reason; "" if not waived. Waived findings do not count.
 	WaivedBy lang.Span // the waive statement, note offsets; empty if not waived
 }

@@ -114,7 +114,7 @@ func (j *judge) within(group []int) {
 	}
 	for _, dim := range dimensional {
 		for rule, weak := range byRule {
-			if r := j.catalogue.Find(rule); r != nil && r.Run != nil && !slices.Contains(explains, rule) {
+			if r := j.catalogue.Find(rule); r != nil && r.Run != nil && !slices.Contains(explains, rule) && !slices.Contains(dimensional, rule) {
 				j.drop(byRule[dim], weak, overlap)
 			}
 		}
@@ -139,8 +139,7 @@ func (j *judge) drop(strong, weak []int, same func(a, b lang.Span) bool) {
 
 // replaces reports whether finding s may hide finding w.
 func (j *judge) replaces(s, w int) bool {
-	r := j.catalogue.Find(j.found[w].Rule)
-	return !j.found[s].IsWaived() || r == nil || !r.Firm
+	return !j.found[s].IsWaived() || !j.found[w].Firm
 }
 
 func anywhere(lang.Span, lang.Span) bool { return true }

@@ -16,6 +16,7 @@ type Rule struct {
 	Name     string // fixed, e.g. "half-missing-stored-energy"
 	Severity lang.Severity
 	Firm     bool   // an error of syntax, dimension or arithmetic: never waived, lowered or switched off
+	Extends  bool   // the language makes findings of this name too: the rule explains them and adds to them
 	Off      bool   // does not fire unless the configuration turns it on
 	Title    string // what is wrong, in one line without a full stop
 	Sees     string // what fires

@@ -3,6 +3,7 @@ package check
 import (
 	"context"
 	"errors"
+	"slices"
 
 	"inkjoule/lang"
 )
@@ -58,11 +59,19 @@ func (r Runner) Run(ctx context.Context, note *lang.Note) ([]Finding, error) {
 // collect gathers the findings of the language and of every rule that is on.
 func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error) {
 	var found []Finding
-	file := func(f lang.Fault) { found = append(found, Finding{Fault: f, Path: note.Path}) }
 	for _, f := range note.Faults {
-		file(f)
+		found = append(found, Finding{Fault: f, Path: note.Path, Firm: r.catalogue.firm[f.Rule]})
 	}
 	found = r.wanted(found)
+	said := len(found)
+	file := func(f lang.Fault) {
+		entry := r.catalogue.Find(f.Rule)
+		if i := sameFinding(found[:said], f); entry.Extends && i >= 0 {
+			found[i].Fault = f // the rule explains what the language has found
+			return
+		}
+		found = append(found, Finding{Fault: f, Path: note.Path, Firm: entry.Firm})
+	}
 	var broken []error
 	pass := Pass{Note: note, Book: r.catalogue, shared: map[any]any{}}
 	for _, rule := range r.cfg.Rules {
@@ -82,6 +91,12 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 	return found, errors.Join(broken...)
 }
 
+// sameFinding gives the index of the finding of the same rule at the same place,
+// or -1.
+func sameFinding(found []Finding, f lang.Fault) int {
+	return slices.IndexFunc(found, func(g Finding) bool { return g.Rule == f.Rule && g.Span == f.Span })
+}
+
 // finish tells those who asked for it that every rule has run.
 func (p *Pass) finish() {
 	for _, made := range p.shared {
@@ -95,7 +110,7 @@ func (p *Pass) finish() {
 func (r Runner) wanted(found []Finding) []Finding {
 	kept := found[:0]
 	for _, f := range found {
-		if !r.off(f.Rule) {
+		if f.Firm || !r.off(f.Rule) {
 			kept = append(kept, f)
 		}
 	}
@@ -120,8 +135,7 @@ func (r Runner) off(name string) bool {
 func (r Runner) grade(found []Finding) {
 	for i := range found {
 		f := &found[i].Fault
-		entry := r.catalogue.Find(f.Rule)
-		if s, set := r.cfg.Severity[f.Rule]; set && s != 0 && (entry == nil || !entry.Firm) {
+		if s, set := r.cfg.Severity[f.Rule]; set && s != 0 && !found[i].Firm {
 			f.Severity = r.catalogue.severity(f, s)
 		}
 	}

@@ -13,6 +13,7 @@ type waive struct {
 	span   lang.Span
 	symbol *lang.Symbol // nil: the whole note
 	broken bool         // it names an unknown rule or name, or one that cannot be waived
+	firm   bool         // it speaks of a finding that cannot be waived
 }
 
 // waiving applies the waivers of a note.
@@ -45,9 +46,7 @@ func (w *waiving) read(s *lang.Stmt, tree *lang.Waive) *waive {
 		w.unknownRule(out)
 	case rule.Firm:
 		out.broken = true
-		w.say("unused-waiver", s.Abs(&tree.Rule),
-			fmt.Sprintf("%s cannot be waived", name),
-			"An error of syntax, dimension or arithmetic has to be put right; take the waiver out.")
+		w.firmly(out)
 	}
 	if tree.For == nil {
 		return out
@@ -57,6 +56,13 @@ func (w *waiving) read(s *lang.Stmt, tree *lang.Waive) *waive {
 		w.unknownName(out)
 	}
 	return out
+}
+
+// firmly tells that an error cannot be waived.
+func (w *waiving) firmly(v *waive) {
+	w.say("unused-waiver", v.stmt.Abs(&v.tree.Rule),
+		fmt.Sprintf("%s cannot be waived", v.tree.Rule.Text),
+		"An error of syntax, dimension or arithmetic has to be put right; take the waiver out.")
 }
 
 func (w *waiving) unknownRule(v *waive) {
@@ -142,7 +148,12 @@ func (w *waiving) apply(found []Finding) {
 func (w *waiving) applyOne(v *waive, found []Finding) {
 	for i := range found {
 		f := &found[i]
-		if f.Rule == v.tree.Rule.Text && !f.IsWaived() && w.speaksOf(v, f) {
+		if f.Rule != v.tree.Rule.Text || f.IsWaived() || !w.speaksOf(v, f) {
+			continue
+		}
+		if f.Firm {
+			v.firm = true
+		} else {
 			f.Waived, f.WaivedBy = v.tree.Reason.Text, v.span
 		}
 	}
@@ -200,7 +211,11 @@ func (w *waiving) unused(found []Finding) {
 		used[found[i].WaivedBy] = true
 	}
 	for _, v := range w.waives {
-		if !v.broken && !used[v.span] {
+		switch {
+		case v.broken || used[v.span]:
+		case v.firm:
+			w.firmly(v)
+		default:
 			w.say("unused-waiver", v.span, fmt.Sprintf("this waiver silences nothing: %s does not fire here", scopeOf(v)),
 				"Take it out, so that it cannot hide a later mistake.")
 		}

@@ -19,7 +19,7 @@ func (s *spot) waivers(within lang.Span) []protocol.CommandOrCodeAction {
 	rep := s.view.reporter(s.doc)
 	for _, f := range s.found {
 		rule := s.view.catalogue.Find(f.Rule)
-		if rule == nil || rule.Firm || f.IsWaived() || f.Rule == "unused-waiver" || !touches(f.Span, within) {
+		if rule == nil || f.Firm || f.IsWaived() || f.Rule == "unused-waiver" || !touches(f.Span, within) {
 			continue
 		}
 		stmt := s.note.StmtAt(f.Span.Start)
