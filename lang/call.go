@@ -266,11 +266,21 @@ func (e *elab) instance(c *Call, f *cell, d *Definition, xs []typed) typed {
 	t := inner.body(d)
 	e.work = inner.work
 	if !t.Known {
+		e.cannotApply(c, f, inner.hushed)
 		return t
 	}
 	t.code = eval.Let(c.ID, slots, codes, t.code)
 	t.blind, t.lit, t.plain = t.blind || blind, nil, false
 	return f.declaredOver(t)
+}
+
+// cannotApply tells at the call why the body of a function has no value with these
+// arguments, unless the function is told to be wrong by itself.
+func (e *elab) cannotApply(c *Call, f *cell, why *Fault) {
+	if why == nil || len(f.faults) > 0 {
+		return
+	}
+	e.fault(why.Rule, c, fmt.Sprintf("with these arguments %s has no value: %s", sketch(c), why.Message), why.Detail)
 }
 
 // declaredOver puts what a function declares over what its body gives.

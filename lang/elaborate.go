@@ -42,7 +42,8 @@ type elab struct {
 	work    int // nodes visited, to bound the inlining of functions
 	solves  []*Call
 	along   *along
-	stating bool // inside a further member: a spread there is a claim, no input
+	stating bool   // inside a further member: a spread there is a claim, no input
+	hushed  *Fault // inside a called function: the first fault, which the call tells
 }
 
 // scope is a chain of local names.
@@ -83,15 +84,18 @@ func (e *elab) local(key string) *scope {
 	return nil
 }
 
-// fault reports a finding of the cell, unless inside a called function, whose
-// body is judged where it stands.
+// fault reports a finding of the cell; inside a called function, whose body is
+// judged where it stands, the first one is left for the call to tell.
 func (e *elab) fault(rule string, at Tree, message, detail string) {
 	e.report(Fault{Rule: rule, Severity: Error, Span: at.Place(), Message: message, Detail: detail})
 }
 
 func (e *elab) report(f Fault) {
-	if e.quiet == 0 {
+	switch {
+	case e.quiet == 0:
 		e.c.fault(f)
+	case e.hushed == nil && f.Severity == Error:
+		e.hushed = &f
 	}
 }
 
