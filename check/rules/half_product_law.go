@@ -55,6 +55,7 @@ func (c *claim) coversAmplitude(s *lang.Symbol, q *square) bool {
 func (c *claim) halfOfLaw(p *check.Pass) {
 	squares, ok := c.squares(kind.StoredEnergy)
 	if !ok {
+		c.halfOfFunction(p)
 		return
 	}
 	found := numbersOf(c.note, c.sym)
@@ -75,6 +76,55 @@ func (c *claim) halfOfLaw(p *check.Pass) {
 			return
 		}
 	}
+}
+
+// halfOfFunction reports half of a field and a bent function of it, written as
+// one product: 1/2*E*D(E).
+func (c *claim) halfOfFunction(p *check.Pass) {
+	if !numbersOf(c.note, c.sym).half {
+		return
+	}
+	factors := productFactors(c.x)
+	for _, x := range factors {
+		call, ok := x.(*lang.Call)
+		if !ok || len(call.Args) != 1 {
+			continue
+		}
+		of, known := c.note.FactsOf(c.sym.Stmt, call)
+		fn := calledFunction(c.note, call)
+		at, ok := unwrapped(call.Args[0]).(*lang.Name)
+		if !known || fn == nil || !ok || len(fn.Def.Params) != 1 || len(fn.Def.Pieces) > 0 {
+			continue
+		}
+		field := c.note.Lookup(lang.CanonicalName(at.Text))
+		if field == nil || !arePair(of, field.Facts) || !hasName(factors, field.Key) {
+			continue
+		}
+		if shape := bendOf(c.note.Form(fn, fn.Def.Members[0], lang.NamesStay), fn.Def.Params[0].Text); shape == curveBent || shape == curveAmbiguous {
+			c.reportLaw(p, &square{product: &product{}}, followed{of: fn, from: field, by: fn})
+			return
+		}
+	}
+}
+
+// arePair reports a flux quantity and its field, in either order.
+func arePair(a, b lang.Facts) bool {
+	for _, k := range pairs {
+		if isOf(a, k.flux) && isOf(b, k.field) || isOf(a, k.field) && isOf(b, k.flux) {
+			return true
+		}
+	}
+	return false
+}
+
+// hasName reports a name among factors.
+func hasName(factors []lang.Expr, key string) bool {
+	for _, x := range factors {
+		if n, ok := x.(*lang.Name); ok && lang.CanonicalName(n.Text) == key {
+			return true
+		}
+	}
+	return false
 }
 
 // pairOf gives the two amplitudes of a product of a flux quantity and its field.

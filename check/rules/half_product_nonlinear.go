@@ -56,7 +56,7 @@ func halfProduct(p *check.Pass, c *claim) {
 // halfInCurve reports the first term that is half or a quarter of a product of
 // amplitudes in the medium.
 func (c *claim) halfInCurve(p *check.Pass, m medium) {
-	squares, ok := c.squares(kind.StoredEnergy)
+	squares, ok := c.curveSquares()
 	if !ok {
 		return
 	}
@@ -78,6 +78,22 @@ func (c *claim) halfInCurve(p *check.Pass, m medium) {
 		c.report(p, f)
 		return
 	}
+}
+
+// curveSquares gives the terms of the claim as squares, functions among the
+// amplitudes allowed: 1/2*B*core.H(B) is half of final values too.
+func (c *claim) curveSquares() ([]*square, bool) {
+	var out []*square
+	for _, t := range c.view.products(c.sym) {
+		plain := *t
+		plain.calls = nil
+		q := squareOf(c.note, &plain, kind.StoredEnergy)
+		if q == nil || q.pi != 0 {
+			return nil, false
+		}
+		out = append(out, q)
+	}
+	return out, len(out) > 0
 }
 
 // inMedium reports a term of which a property or an amplitude belongs to the
