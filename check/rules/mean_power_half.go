@@ -57,7 +57,11 @@ func (c *claim) meanHalf(p *check.Pass, form kind.Form, squares []*square) {
 		if !q.known || !c.isMean(q) {
 			continue
 		}
-		right, ok := q.coefficient(c.note, form, kind.Average)
+		peak := *q
+		if q.stat == kind.PeakToPeak {
+			peak.stat = kind.Peak
+		}
+		right, ok := peak.coefficient(c.note, form, kind.Average)
 		if !ok {
 			continue
 		}
@@ -65,6 +69,8 @@ func (c *claim) meanHalf(p *check.Pass, form kind.Form, squares []*square) {
 		switch found := numbersOf(c.note, c.sym); q.stat {
 		case kind.Peak:
 			off = q.off(found, right, new(big.Rat).Inv(right))
+		case kind.PeakToPeak: // (U_pp/2)²/R; other factors are for swing-used-as-amplitude
+			off = q.off(found, right.Mul(right, big.NewRat(1, 4)), big.NewRat(2, 1))
 		case kind.RMS:
 			off = q.off(found, right, big.NewRat(1, 2))
 		}
@@ -106,7 +112,7 @@ func (c *claim) meanByDefinition() bool {
 
 func (c *claim) reportMean(p *check.Pass, q *square, off *big.Rat, alone bool) {
 	f := lang.Fault{Related: c.because(q.amplitudes, func(s *lang.Symbol) string { return fmt.Sprintf("%s is %s value", s.Name, article(q.stat)) })}
-	if q.stat == kind.Peak {
+	if q.stat != kind.RMS {
 		f.Message = fmt.Sprintf("%s is %s times the mean power: %s", c.sym.Name, times(off), c.missingShare(q, off))
 		f.Detail = fmt.Sprintf("Write `1/2 * %s`. If the crest is meant, write `%s, peak power = …`.", c.text(), c.sym.Name)
 		if wave, _ := q.waves(c.note); shaped(wave) {

@@ -90,10 +90,16 @@ func (c *claim) unlikeDeclared(p *check.Pass) {
 // The latter two are formulas that people mean.
 func (c *claim) ifShaped(p *check.Pass, form *lang.Form, from kind.Qualifier) (lang.Severity, string) {
 	t, single := form.Single()
-	if !single || !crest(from, c.stat) || c.harmonic() {
+	if !single || c.harmonic() {
 		return p.Rule.Severity, ""
 	}
 	s, _ := scaleOf(t)
+	if from == kind.PeakToPeak && c.stat == kind.RMS && s.value == 0.5 {
+		return p.Lowered(), fmt.Sprintf(" If it is a square wave, whose rms value is half of the swing, write `%s, square %s …`.", c.sym.Name, c.stat)
+	}
+	if !crest(from, c.stat) {
+		return p.Rule.Severity, ""
+	}
 	if c.stat == kind.RMS {
 		s.value = 1 / s.value
 	}

@@ -101,6 +101,8 @@ func (s scale) fits(from, to kind.Qualifier) bool {
 	}
 	factor := math.Sqrt(float64(num) / float64(den))
 	switch {
+	case num == 8 && s.value == 2, den == 8 && s.value == 0.5:
+		return false // that is the crest, not the rms value
 	case from == kind.PeakToPeak || to == kind.PeakToPeak:
 		return factor > 1 && s.value > 1.45 || factor < 1 && s.value < 0.7
 	case isUsual(s.value, 1e-3):

@@ -144,8 +144,8 @@ func (c *claim) swingDeclared(p *check.Pass) bool {
 		return false
 	}
 	swing := c.unconverted(t)
-	if swing == nil || swing.Facts.Qualifier != kind.PeakToPeak {
-		return false
+	if s, _ := scaleOf(t); swing == nil || swing.Facts.Qualifier != kind.PeakToPeak || s.value == 0.5 {
+		return false // half of a swing called an rms value is the crest: rms-peak-mix speaks
 	}
 	f := lang.Fault{
 		Message: fmt.Sprintf("%s is declared as %s value and is the whole swing", c.sym.Name, article(c.stat)),
