@@ -54,6 +54,14 @@ func (c *claim) text() string {
 	return c.note.Script.Source.Text[s.Start:s.End]
 }
 
+// halved is half of the defining expression, as text.
+func (c *claim) halved() string {
+	if b, ok := c.x.(*lang.Binary); ok && (b.Op == lang.OpAdd || b.Op == lang.OpSub) || strings.HasPrefix(c.text(), "-") {
+		return "1/2 * (" + c.text() + ")"
+	}
+	return "1/2 * " + c.text()
+}
+
 // words are those between the comma and the sign of equality, in lower case.
 func (c *claim) words() string {
 	if c.sym.Def.Kind == nil {
