@@ -30,6 +30,8 @@ func TestRuleExplainsFindingsOfTheLanguage(t *testing.T) {
 	if found[0].Message != "explained" || !found[0].Firm || found[1].Firm {
 		t.Errorf("%+v", found)
 	}
+	wider := extending(s, "shape-mix", "W = C*U^2")
+	expect(t, s, Config{Rules: []*Rule{wider}}, "shape-mix error W = C*U^2")
 	expect(t, s, Config{Rules: []*Rule{rule}, Severity: map[string]lang.Severity{"shape-mix": lang.Advice}},
 		"shape-mix error C*U^2", "shape-mix advice L*I^2")
 	expect(t, s, Config{Rules: []*Rule{rule}, Severity: map[string]lang.Severity{"shape-mix": 0}}, "shape-mix error C*U^2")

@@ -3,7 +3,6 @@ package check
 import (
 	"context"
 	"errors"
-	"slices"
 
 	"inkjoule/lang"
 )
@@ -66,11 +65,8 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 	said := len(found)
 	file := func(f lang.Fault) {
 		entry := r.catalogue.Find(f.Rule)
-		if i := sameFinding(found[:said], f); entry.Extends && i >= 0 {
-			found[i].Fault = f // the rule explains what the language has found
-			return
-		}
-		found = append(found, Finding{Fault: f, Path: note.Path, Firm: entry.Firm})
+		firm := entry.Extends && explain(found[:said], f)
+		found = append(found, Finding{Fault: f, Path: note.Path, Firm: entry.Firm || firm})
 	}
 	var broken []error
 	pass := Pass{Note: note, Book: r.catalogue, shared: map[any]any{}}
@@ -91,10 +87,18 @@ func (r Runner) collect(ctx context.Context, note *lang.Note) ([]Finding, error)
 	return found, errors.Join(broken...)
 }
 
-// sameFinding gives the index of the finding of the same rule at the same place,
-// or -1.
-func sameFinding(found []Finding, f lang.Fault) int {
-	return slices.IndexFunc(found, func(g Finding) bool { return g.Rule == f.Rule && g.Span == f.Span })
+// explain puts the finding of a rule in the place of those that the language has
+// made under the same name within the same text; it reports whether one of them
+// is firm.
+func explain(found []Finding, f lang.Fault) (firm bool) {
+	for i := range found {
+		g := &found[i]
+		if g.Rule == f.Rule && f.Span.Start <= g.Span.Start && g.Span.End <= f.Span.End {
+			firm = firm || g.Firm
+			g.Fault = f
+		}
+	}
+	return firm
 }
 
 // finish tells those who asked for it that every rule has run.
