@@ -30,6 +30,8 @@ var overrides = []beats{
 	{"conjugate-missing", []string{"mean-power-half", "quarter-half-average", "half-missing-stored-energy"}},
 	{"sar-field-statistic", []string{"mean-power-half"}},
 	{"wave-impedance-misuse", []string{"mean-power-half"}},
+	// A formula of another system lacks no constant.
+	{"gaussian-form-in-si", []string{"relative-absolute-constant", "flux-field-kind"}},
 	// Who makes the field decides whether there is a half at all.
 	{"pair-sum-double-count", []string{"half-missing-stored-energy"}},
 	{"external-potential-halved", []string{"half-missing-stored-energy", "quarter-half-average"}},
@@ -52,7 +54,7 @@ var overrides = []beats{
 // hold; read only.
 var explains = []string{
 	"power-called-energy", "relative-absolute-constant", "vacuum-constant-slip",
-	"gaussian-form-in-si", "dimensioned-argument", "sar-field-statistic",
+	"gaussian-form-in-si", "dimensioned-argument", "areal-volumetric-power", "flux-field-kind", "hidden-unit-coefficient", "sar-field-statistic",
 }
 
 // dimensional names the findings of the language that silence rules on their

@@ -230,13 +230,13 @@ func (t Term) pow(n unit.Rat) (Term, bool) {
 	out := Term{Coef: ratOne, Cross: t.Cross}
 	pi := unit.Whole(t.Pi).Mul(n)
 	p, whole := pi.Int()
-	if !whole {
-		return out, false
-	}
-	out.Pi = p
 	out.Factors = slices.Clone(t.Factors)
 	for i := range out.Factors {
 		out.Factors[i].Exp = out.Factors[i].Exp.Mul(n)
+	}
+	if out.Pi = p; !whole { // √π, as in 1/√(π·f·µ·σ)
+		out.Pi = 0
+		out = out.mul(Term{Coef: ratOne, Factors: []Factor{{Key: "#pi", Exp: pi, Facts: number()}}})
 	}
 	if t.Coef == ratOne {
 		return out, true
