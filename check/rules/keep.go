@@ -58,6 +58,7 @@ type circumstances struct {
 	book   *check.Catalogue // which rules have looked
 	hasRMS bool
 	used   bool // another definition uses what this one defines
+	names  int  // how many of the note's names it defines: none where they are defined twice
 }
 
 // memo is what all looks at a statement have found.
@@ -73,7 +74,7 @@ type loose struct {
 }
 
 func (v *view) circumstances(s *spot) circumstances {
-	out := circumstances{book: v.book, hasRMS: v.hasRMS}
+	out := circumstances{book: v.book, hasRMS: v.hasRMS, names: len(s.symbols)}
 	for _, c := range s.claims {
 		out.used = out.used || v.used[c.sym.Key]
 	}
