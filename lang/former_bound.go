@@ -18,6 +18,21 @@ func (n *Note) Apart(s *Symbol, expand Expand) *Form {
 	return n.normal(s, way{expand: expand, apart: true}, 0)
 }
 
+// Within is Apart of a part of the symbol's definition, under the given bound
+// variables.
+func (n *Note) Within(s *Symbol, x Expr, expand Expand, variables ...string) *Form {
+	c := n.state.cellOf(s)
+	if c == nil {
+		return nil
+	}
+	b := &former{n: n, c: c, expand: expand, apart: true}
+	b.bindParams(s)
+	for _, v := range variables {
+		b.bound = append(b.bound, CanonicalName(v))
+	}
+	return b.form(x)
+}
+
 // bindParams makes the parameters of a function's definition atoms.
 func (b *former) bindParams(s *Symbol) {
 	if s.Def == nil {

@@ -212,11 +212,17 @@ func (p *product) add(f lang.Factor) {
 // opaqueFactor reports a factor that could hide a number: a call, or text that
 // the normal form could not take apart.
 func opaqueFactor(f lang.Factor) bool {
-	return f.Call != "" || f.Symbol == nil && !f.Literal && f.Over == nil && f.Key != "j" && !strings.HasPrefix(f.Key, "#") && !isBound(f) && !strings.HasPrefix(f.Key, "each ")
+	return f.Call != "" || f.Symbol == nil && !f.Literal && f.Over == nil && f.Key != "j" && !strings.HasPrefix(f.Key, "#") && !isBound(f) && !isElement(f)
 }
 
 // isBound reports a parameter, a bound variable or a coordinate.
 func isBound(f lang.Factor) bool { return strings.HasPrefix(f.Key, "bound ") }
+
+// isElement reports what stands for the variable of an integral or a sum that
+// was taken apart.
+func isElement(f lang.Factor) bool {
+	return strings.HasPrefix(f.Key, "d ") || strings.HasPrefix(f.Key, "each ")
+}
 
 // isCycles reports a factor that counts cycles: a frequency in Hz.
 func isCycles(f lang.Factor) bool {
