@@ -172,6 +172,8 @@ const (
 	Polarizability
 	InteractionEnergy
 	VacuumEnergyDensity
+	CapacitanceCoefficient
+	PartialCapacitance
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -379,6 +381,12 @@ var table = [...]Kind{
 	InteractionEnergy:             {"interaction energy", "energy in an external field", "W_i", "J", ClassEnergy, Energy, false},
 
 	VacuumEnergyDensity: {"vacuum energy density", "energy density of the field alone; vacuum part of the energy density", "w_0", "J/m^3", ClassEnergy, EnergyDensity, false},
+
+	// Capacitances of several conductors: Q_i = Σ C_ij·V_j with C_ij ≤ 0 for
+	// i ≠ j, and the capacitors of the equivalent network (names of textbooks on
+	// Maxwell's coefficients).
+	CapacitanceCoefficient: {"capacitance coefficient", "coefficient of electrostatic induction; short-circuit capacitance", "C_ij", "F", ClassOther, Capacitance, false},
+	PartialCapacitance:     {"partial capacitance", "two-terminal capacitance; mutual capacitance", "c_ij", "F", ClassOther, Capacitance, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},

@@ -332,6 +332,7 @@ func TestExtraKinds(t *testing.T) {
 		"withstand voltage", "breakdown voltage", "inception voltage", "inception field strength", "incident electric field strength",
 		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction", "transient thermal impedance", "heat flow rate",
 		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
+		"capacitance coefficient", "partial capacitance",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"demagnetizing factor", "antenna factor", "effective area", "acceleration",
 		"coefficient of heat transfer", "heat capacity",
