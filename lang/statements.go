@@ -60,6 +60,7 @@ var adjectiveGroups = [][]string{
 	{"homogeneous", "inhomogeneous"},
 	{"lossless", "lossy", "active"},
 	{"nondispersive", "dispersive"},
+	{"piezoelectric"},
 }
 
 func adjectiveGroup(word string) int {

@@ -174,6 +174,11 @@ const (
 	VacuumEnergyDensity
 	CapacitanceCoefficient
 	PartialCapacitance
+	InternalEnergy
+	InternalEnergyDensity
+	ConstantStressPermittivity
+	ConstantStrainPermittivity
+	MechanicalResonanceFrequency
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -387,6 +392,14 @@ var table = [...]Kind{
 	// Maxwell's coefficients).
 	CapacitanceCoefficient: {"capacitance coefficient", "coefficient of electrostatic induction; short-circuit capacitance", "C_ij", "F", ClassOther, Capacitance, false},
 	PartialCapacitance:     {"partial capacitance", "two-terminal capacitance; mutual capacitance", "c_ij", "F", ClassOther, Capacitance, false},
+	// What a constant holds for: heat in it or not, mechanically free or clamped
+	// (IEC 60050-121 and IEEE 176-1987, 2.3: constants at constant stress T and
+	// constant strain S; from memory).
+	InternalEnergy:               {"internal energy", "calorimetric energy", "U", "J", ClassEnergy, Energy, false},
+	InternalEnergyDensity:        {"internal energy density", "volumic internal energy", "u", "J/m^3", ClassEnergy, EnergyDensity, false},
+	ConstantStressPermittivity:   {"constant-stress relative permittivity", "free relative permittivity; unclamped relative permittivity", "ε_r^T", "1", ClassOther, RelativePermittivity, false},
+	ConstantStrainPermittivity:   {"constant-strain relative permittivity", "clamped relative permittivity", "ε_r^S", "1", ClassOther, RelativePermittivity, false},
+	MechanicalResonanceFrequency: {"mechanical resonance frequency", "mechanical resonance", "f_m", "Hz", ClassOther, Frequency, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},
