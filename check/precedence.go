@@ -35,6 +35,7 @@ var overrides = []beats{
 	{"point-self-energy", []string{"integral-diverges"}},
 	// Who makes the field decides whether there is a half at all.
 	{"pair-sum-double-count", []string{"half-missing-stored-energy"}},
+	{"source-work-halved", []string{"half-missing-stored-energy"}},
 	{"point-self-energy", []string{"integral-diverges", "division-by-zero", "pair-sum-double-count"}},
 	{"external-potential-halved", []string{"half-missing-stored-energy", "quarter-half-average"}},
 	{"induced-dipole-half", []string{"half-missing-stored-energy", "quarter-half-average"}},

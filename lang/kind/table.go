@@ -179,6 +179,7 @@ const (
 	ConstantStressPermittivity
 	ConstantStrainPermittivity
 	MechanicalResonanceFrequency
+	ChargingHeat
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -400,6 +401,9 @@ var table = [...]Kind{
 	ConstantStressPermittivity:   {"constant-stress relative permittivity", "free relative permittivity; unclamped relative permittivity", "ε_r^T", "1", ClassOther, RelativePermittivity, false},
 	ConstantStrainPermittivity:   {"constant-strain relative permittivity", "clamped relative permittivity", "ε_r^S", "1", ClassOther, RelativePermittivity, false},
 	MechanicalResonanceFrequency: {"mechanical resonance frequency", "mechanical resonance", "f_m", "Hz", ClassOther, Frequency, false},
+
+	// What becomes heat in the circuit while a store is filled.
+	ChargingHeat: {"charging heat", "heat of charging", "Q_ch", "J", ClassOther, Heat, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},
