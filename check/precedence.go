@@ -18,6 +18,8 @@ type beats struct {
 
 // overrides is read only. Order: kind, statistic and convention, medium, value.
 var overrides = []beats{
+	// A whole formula of another system of quantities, before its single factors.
+	{"gaussian-form-in-si", []string{"relative-absolute-constant", "vacuum-constant-slip", "power-called-energy", "flux-field-kind", "half-missing-stored-energy", "quarter-half-average"}},
 	// The wrong kind makes every coefficient meaningless.
 	{"power-called-energy", []string{"half-missing-stored-energy", "quarter-half-average", "mean-power-half"}},
 	{"torque-energy-kind", []string{"half-missing-stored-energy", "quarter-half-average"}},
