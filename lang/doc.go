@@ -124,6 +124,51 @@
 // the author chose for the whole note is kept; a head that is more than 24 columns
 // longer than its neighbours stands out instead.
 //
+// # Words that rules ask for
+//
+// A fact that a rule needs is a word of the definition: a kind, a qualifier, an
+// adjective, a property. All of them are completed in the editor.
+//
+// Words before the kind, in any order with the qualifier: a waveform (sinusoidal,
+// square, triangular, pulsed, modulated, distorted, random, impulse, elliptical)
+// and a coherence (coherent, incoherent, worst-case); on a result the coherence
+// says what was assumed.
+//
+// Alternating and pulsed quantities: crest factor; line-to-line and line-to-earth
+// voltage (without a statistic it is an rms value), earth fault factor;
+// withstand, breakdown and inception voltage, inception field strength; incident
+// electric field strength, which is that before the body is there; peak envelope
+// power, pulse duration, pulse repetition frequency, transient thermal
+// impedance; electromagnetic energy, the electric and the magnetic one together.
+//
+// Curved media: rated voltage; differential (small-signal, incremental),
+// energy-equivalent and charge-equivalent capacitance; incremental inductance;
+// initial, amplitude, incremental, reversible, effective and complex
+// permeability; saturation flux density (the kind of B_sat), flux density at the
+// knee, saturation current, remanent flux density and polarization, energy
+// product, recoverable energy, air gap. Of two tables with one tip, the one with
+// the greater field at the same flux is the increasing branch; with one table,
+// rows with falling field are the decreasing branch. A property that is constant
+// over a range from zero is a linear segment.
+//
+// Crystals: a medium is a frame. A medium whose tensor is `rotate(other.eps_r, …)`
+// is the same crystal in another frame; `E in wafer` puts E into the frame of
+// wafer; a property of the kind optic axis is written in the frame of the note.
+// Impermittivity, absolute and relative, is the inverse of the permittivity.
+// Media may be declared piezoelectric; constant-stress (free) and
+// constant-strain (clamped) relative permittivity, mechanical resonance
+// frequency and coupling factor belong to that.
+//
+// Charges: external electric potential (others make it), interaction energy,
+// permanent and induced electric dipole moment, polarizability; capacitance
+// coefficient and partial capacitance of several conductors; vacuum energy
+// density (of the field alone); internal energy (with the heat that flows at
+// constant temperature) beside stored energy.
+//
+// Losses: polarization loss factor and direct-current conductivity are parts; a
+// loss factor or a conductivity without such a word is the whole at its
+// frequency. A medium may be active instead of lossless or lossy.
+//
 // # Budget
 //
 // One evaluation takes at most the steps, the time and the memory of Options.Budget;
