@@ -23,12 +23,13 @@ const ConfigName = "inkjoule.toml"
 
 // Config is what holds for the notes of a folder.
 type Config struct {
-	Path      string // absolute; "" where no file was found and the defaults hold
-	FailLevel lang.Severity
-	Severity  map[string]lang.Severity // by rule name; 0 switches the rule off
-	Exclude   []string                 // as written
-	Budget    eval.Budget              // of one evaluation; zero fields take the defaults
-	exclude   Patterns
+	Path         string // absolute; "" where no file was found and the defaults hold
+	FailLevel    lang.Severity
+	FailLevelSet bool                     // the file says it
+	Severity     map[string]lang.Severity // by rule name; 0 switches the rule off
+	Exclude      []string                 // as written
+	Budget       eval.Budget              // of one evaluation; zero fields take the defaults
+	exclude      Patterns
 }
 
 // DefaultConfig is what holds where no file says otherwise.
@@ -135,7 +136,7 @@ func parseConfig(path string, data []byte, known *check.Catalogue) (*Config, err
 	var f file
 	faults := decode(path, data, &f)
 	if f.FailLevel != 0 {
-		c.FailLevel = lang.Severity(f.FailLevel)
+		c.FailLevel, c.FailLevelSet = lang.Severity(f.FailLevel), true
 	}
 	c.Severity = map[string]lang.Severity{}
 	at := newPositions(data)

@@ -16,6 +16,20 @@ type Budget struct {
 // DefaultTime is what one evaluation may take where nothing else is said.
 const DefaultTime = 2 * time.Second
 
+// Filled is the budget with the defaults in the place of zero fields.
+func (b Budget) Filled() Budget {
+	if b.Steps <= 0 {
+		b.Steps = 5e8
+	}
+	if b.Memory <= 0 {
+		b.Memory = 256 << 20
+	}
+	if b.Time <= 0 {
+		b.Time = DefaultTime
+	}
+	return b
+}
+
 // Frame holds what a Code runs on. It belongs to one goroutine.
 type Frame struct {
 	slots []Value
@@ -52,15 +66,7 @@ func NewFrame(ctx context.Context, n int, b Budget) *Frame {
 
 // Restart clears the fault and starts a new budget; slots stay.
 func (f *Frame) Restart(b Budget) {
-	if b.Steps <= 0 {
-		b.Steps = 5e8
-	}
-	if b.Memory <= 0 {
-		b.Memory = 256 << 20
-	}
-	if b.Time <= 0 {
-		b.Time = DefaultTime
-	}
+	b = b.Filled()
 	f.budget, f.steps = b, b.Steps
 	f.chunk, f.deadline = 0, time.Now().Add(b.Time)
 	f.fault, f.ok = Fault{}, true
