@@ -128,6 +128,16 @@ func makes(n *lang.Note, a, b lang.Factor) bool {
 // follows from the potential.
 func (g *coupling) self() bool { return linked(g.claim.note, g.field, g.source) }
 
+// shared reports a source and a potential that are computed from one charge (or
+// current): a density that is a charge over a volume, and the potential of this
+// charge.
+func (g *coupling) shared() bool {
+	n, field := g.claim.note, g.field.Symbol
+	return g.source.Symbol != nil && field != nil && restsOn(n, g.source.Symbol, func(s *lang.Symbol) bool {
+		return isSource(lang.Factor{Facts: s.Facts}) && dependsOn(n, field, s)
+	})
+}
+
 // mutual reports two terms each of which stands in the field of the other.
 func (g *coupling) mutual(h *coupling) bool {
 	n := g.claim.note
@@ -144,7 +154,7 @@ func (g *coupling) ofOthers() bool {
 		f := lang.Factor{Facts: s.Facts}
 		return isSource(f) && s.Facts.Kind != 0
 	}
-	return g.field.Symbol != nil && !g.self() && restsOn(g.claim.note, g.field.Symbol, made)
+	return g.field.Symbol != nil && !g.self() && !g.shared() && restsOn(g.claim.note, g.field.Symbol, made)
 }
 
 // offHalf tells whether the term is twice the half that a pair takes, counts

@@ -3,6 +3,8 @@ package rules
 import (
 	"fmt"
 	"math/big"
+	"slices"
+	"strings"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -16,12 +18,14 @@ func (Book) ExternalPotentialHalved() check.Rule {
 		Name:     "external-potential-halved",
 		Severity: lang.Error,
 		Title:    "The energy in the field of others has a half that belongs to systems that make their own field",
-		Sees: "An energy ½·q·φ with φ declared as an external electric potential, or ½·p·E with p declared as a permanent electric dipole moment, of either sign. " +
-			"A caution for an interaction energy whose potential is not declared as external.",
-		Silent:  "Without the half; for a potential that the charge itself makes; for an induced moment, where induced-dipole-half speaks; for a torque.",
-		Formula: "W = q·φ_ext, W = −p·E: nothing builds up with q or p. The half belongs to ½Σqφ, where the charges make φ themselves, and to induced moments.",
+		Sees: "An energy ½·q·φ or an integral of ½·ρ·φ with φ declared as an external electric potential, or computed from charges of which q is none; " +
+			"½·p·E with a permanent electric dipole moment, ½·m·B with a permanent magnetic moment, of either sign. " +
+			"A caution for an interaction energy of which the note does not say who makes the potential, and for a moment that is a datum.",
+		Silent: "Without the half; for a potential that the charge itself makes, alone, by its image or by what it does to the other charges of the same sum; " +
+			"for a share of an energy that another definition sums; for an induced moment, where induced-dipole-half speaks; for a torque; for means and rms values.",
+		Formula: "W = q·φ_ext, W = −p·E, W = −m·B: nothing builds up with q, p or m. The half belongs to ½Σqφ, where the charges make φ themselves, and to induced moments.",
 		Remedy:  "Leave the half out.",
-		Source:  "Jackson, Classical Electrodynamics, 3rd ed., 4.2, eq. 4.24 (from memory)",
+		Source:  "Jackson, Classical Electrodynamics, 3rd ed., 4.2, eq. 4.24, and 5.7, eq. 5.72 (from memory)",
 		Wrong: check.Example{Note: `    q, electric charge = 4 nC
     V_e, external electric potential = 15 kV
     W, energy = 1/2*q*V_e = 30 uJ
@@ -35,51 +39,88 @@ func (Book) ExternalPotentialHalved() check.Rule {
 }
 
 func externalHalved(p *check.Pass, c *claim) {
-	if !isOf(c.sym.Facts, kind.Energy) || c.sym.Facts.Kind.Is(kind.Torque) {
+	if !c.isEnergyOfField() || c.stat == kind.Average {
 		return
 	}
-	for _, t := range c.view.products(c.sym) {
-		if new(big.Rat).Abs(t.coef).Cmp(big.NewRat(1, 2)) != 0 || t.pi != 0 {
-			continue
+	gs := c.couplings()
+	for _, g := range gs {
+		if c.chargeHalved(p, g, gs) {
+			return
 		}
-		what, severity := c.fieldOfOthers(p, t)
-		if what == "" {
-			continue
+	}
+	ms, _ := c.moments()
+	for _, m := range ms {
+		if c.momentHalved(p, m) {
+			return
 		}
-		f := lang.Fault{
-			Message: fmt.Sprintf("%s is half of the energy: %s is in the field of others, which does not build up with it", c.sym.Name, what),
-			Detail:  "Leave the half out.",
-		}
-		if severity != 0 {
-			f.Severity = p.Lowered()
-			f.Detail = "Leave the half out, or, if the charges make this potential themselves, write `energy` and declare an `electric potential`."
-		}
-		c.report(p, f)
-		return
 	}
 }
 
-// fieldOfOthers names what sits in a field that others make; lower is not 0
-// where the note does not say so of the field.
-func (c *claim) fieldOfOthers(p *check.Pass, t *product) (what string, lower int) {
-	for _, f := range t.all {
-		if f.Facts.Kind.Is(kind.PermanentElectricDipoleMoment) && len(t.byRole[roleElectric]) == 1 && f.Exp == t.byRole[roleElectric][0].Exp {
-			return factorName(f), 0
-		}
+// hasHalf reports a term of which the coefficient is the half, counts taken out,
+// and not 1 as well.
+func (c *claim) hasHalf(coef *big.Rat) bool {
+	k, found := new(big.Rat).Abs(coef), numbersOf(c.note, c.sym)
+	return found.mayBe(k, big.NewRat(1, 2)) && !found.mayBe(k, big.NewRat(1, 1))
+}
+
+// chargeHalved judges a charge in a potential.
+func (c *claim) chargeHalved(p *check.Pass, g *coupling, all []*coupling) bool {
+	if g.unsuited() || !isOf(g.field.Facts, kind.Voltage) || !c.hasHalf(g.coef) || g.inSum(all) {
+		return false
 	}
-	if len(t.byRole[roleElectric]) != 2 {
-		return "", 0
-	}
-	a, b := t.byRole[roleElectric][0], t.byRole[roleElectric][1]
-	if isOf(a.Facts, kind.ElectricPotential) {
-		a, b = b, a
+	f := lang.Fault{
+		Message: fmt.Sprintf("%s is half of the energy: %s stands in the potential of others, which does not build up with it", c.sym.Name, factorName(g.source)),
+		Detail:  "Leave the half out.",
+		Related: c.because([]lang.Factor{g.source, g.field}, func(s *lang.Symbol) string { return s.Name }),
 	}
 	switch {
-	case !isCharge(a) || !isOf(b.Facts, kind.ElectricPotential):
-	case b.Facts.Kind.Is(kind.ExternalPotential):
-		return factorName(a), 0
-	case c.sym.Facts.Kind.Is(kind.InteractionEnergy) && b.Symbol != nil && a.Symbol != nil && !originsOf(p).madeFrom(b.Symbol, a.Symbol):
-		return factorName(a), 1
+	case g.isExternal():
+	case g.self():
+		return false
+	case g.ofOthers() && !c.usedElsewhere():
+		f.Detail = fmt.Sprintf("Leave the half out: %s is made by charges of which %s is none.", factorName(g.field), factorName(g.source))
+	case !g.ofOthers() && c.sym.Facts.Kind.Is(kind.InteractionEnergy) && g.field.Facts.Kind.Is(kind.ElectricPotential):
+		f.Severity = p.Lowered()
+		f.Message = fmt.Sprintf("%s is half of the energy if others make %s", c.sym.Name, factorName(g.field))
+		f.Detail = "Leave the half out then, and declare an external electric potential; if the charges make this potential themselves, write `energy`."
+	default:
+		return false
 	}
-	return "", 0
+	if !c.declared() {
+		f.Severity = p.Lowered()
+	}
+	c.report(p, f)
+	return true
+}
+
+// inSum reports a term whose partner in the same sum it acts on in turn.
+func (g *coupling) inSum(all []*coupling) bool {
+	return slices.ContainsFunc(all, g.mutual)
+}
+
+// momentHalved judges a dipole in a field.
+func (c *claim) momentHalved(p *check.Pass, m *moment) bool {
+	switch statOf(c.note, m.field) {
+	case kind.RMS, kind.Average, kind.PeakToPeak:
+		return false
+	}
+	from := m.origin()
+	if m.slope || from == originInduced || from == originMixed || !c.hasHalf(m.coef) {
+		return false
+	}
+	f := lang.Fault{
+		Message: fmt.Sprintf("%s is half of the energy: %s is there without the field, and does not build up with it", c.sym.Name, factorName(m.of)),
+		Detail:  "Leave the half out.",
+		Related: c.because([]lang.Factor{m.of, m.field}, func(s *lang.Symbol) string { return s.Name + " = " + s.Shown }),
+	}
+	if from == originUnknown {
+		f.Severity = p.Lowered()
+		f.Message = fmt.Sprintf("%s is half of the energy if %s is there without the field", c.sym.Name, factorName(m.of))
+		f.Detail = fmt.Sprintf("Say which it is: %s takes no half, %s does.", m.permanentKind(), strings.Replace(m.permanentKind(), "a permanent", "an induced", 1))
+	}
+	if !c.declared() {
+		f.Severity = p.Lowered()
+	}
+	c.report(p, f)
+	return true
 }

@@ -15,10 +15,10 @@ func (Book) InducedDipoleHalf() check.Rule {
 		Name:     "induced-dipole-half",
 		Severity: lang.Error,
 		Title:    "The energy of an induced dipole in the field that induces it lacks its half",
-		Sees: "An energy −p·E (or p·E) with the coefficient 1 of static or instantaneous values, where p is declared as an induced electric dipole moment or is computed as a polarizability times the field; " +
-			"and α·E² with the coefficient 1.",
-		Silent:  "With the half; for a permanent moment; for a torque p×E or a force; for a sum of a permanent and an induced moment; for averages of alternating fields.",
-		Formula: "dW = −p·dE = −αE·dE, so W = −½αE² = −½p·E: the other half went into stretching the dipole. Its mean in a field of amplitude E is −¼αE².",
+		Sees: "An energy −p·E or −m·B (of either sign) where the moment is declared as an induced one or is computed from this field or from a polarizability, and −α·E², " +
+			"with twice the coefficient of table 1.4: 1 of static or instantaneous values, ½ for the mean of peak values, 1 for the mean of rms values.",
+		Silent:  "With the half; for a permanent moment, and for a datum of which nothing is said; for a torque p×E or a force; for a moment that is the sum of a permanent and an induced part, of which only one takes the half.",
+		Formula: "dW = −p·dE = −αE·dE, so W = −½αE² = −½p·E: the other half went into stretching the dipole. Its mean in a field of amplitude E is −¼αE². F = (p·∇)E = ½α∇E² agrees with it.",
 		Remedy:  "Put in the half.",
 		Source:  "Jackson, Classical Electrodynamics, 3rd ed., 4.7 (linear response; from memory)",
 		Wrong: check.Example{Note: `    α, polarizability = 1.1e-26 C·m^2/V
@@ -36,41 +36,43 @@ func (Book) InducedDipoleHalf() check.Rule {
 }
 
 func inducedHalf(p *check.Pass, c *claim) {
-	if !isOf(c.sym.Facts, kind.Energy) || c.sym.Facts.Kind.Is(kind.Torque) || c.stat == kind.Average {
+	if !c.isEnergyOfField() {
 		return
 	}
-	ps := c.view.products(c.sym)
-	if len(ps) != 1 || ps[0].pi != 0 || ps[0].crossed || new(big.Rat).Abs(ps[0].coef).Cmp(pow2(0)) != 0 || !inducedInField(p, ps[0]) {
+	ms, all := c.moments()
+	for _, m := range ms {
+		right := m.right()
+		if right == nil || m.origin() != originInduced || !m.off(right, big.NewRat(2, 1)) {
+			continue
+		}
+		f := lang.Fault{
+			Message: fmt.Sprintf("%s is 2.00 times the energy: %s", c.sym.Name, m.why()),
+			Detail:  fmt.Sprintf("Put in the half: the coefficient is %s here. For a moment that is there without the field, declare %s.", ratio(right), m.permanentKind()),
+			Related: c.because([]lang.Factor{m.of, m.field}, func(s *lang.Symbol) string { return s.Name + " = " + s.Shown }),
+		}
+		if !c.declared() {
+			f.Severity = p.Lowered()
+		}
+		if all && len(ms) == 1 {
+			f.Fix = &lang.Fix{Title: "Put in the half", Edits: []lang.Edit{{Span: c.span(), New: c.halved()}}}
+		}
+		c.report(p, f)
 		return
 	}
-	c.report(p, lang.Fault{
-		Message: fmt.Sprintf("%s is 2.00 times the energy: the moment is induced by the field, and builds up with it", c.sym.Name),
-		Detail:  "Put in the half. For a moment that is there without the field, declare a permanent electric dipole moment.",
-		Fix:     &lang.Fix{Title: "Put in the half", Edits: []lang.Edit{insert(c.span().Start, "1/2*("), insert(c.span().End, ")")}},
-	})
 }
 
-// inducedInField reports the product of an induced moment and a field, or of a
-// polarizability and the square of a field.
-func inducedInField(p *check.Pass, t *product) bool {
-	fields := t.byRole[roleElectric]
-	if len(fields) != 1 || !fields[0].Facts.Kind.Is(kind.ElectricFieldStrength) && !isOf(fields[0].Facts, kind.ElectricFieldStrength) {
-		return false
+// why says how the moment follows the field.
+func (m *moment) why() string {
+	if m.slope {
+		return fmt.Sprintf("a moment %s·%s builds up with the field", factorName(m.of), factorName(m.field))
 	}
-	field := fields[0]
-	for _, f := range t.all {
-		switch {
-		case f.Key == field.Key:
-		case isOf(f.Facts, kind.Polarizability):
-			return field.Exp == two
-		case isOf(f.Facts, kind.ElectricDipoleMoment):
-			if f.Facts.Kind.Is(kind.PermanentElectricDipoleMoment) || f.Exp != field.Exp {
-				return false
-			}
-			return f.Facts.Kind.Is(kind.InducedElectricDipoleMoment) || f.Symbol != nil && originsOf(p).reaches(f.Symbol.Stmt, func(s *lang.Symbol) bool {
-				return isOf(s.Facts, kind.Polarizability)
-			})
-		}
+	return fmt.Sprintf("%s is induced by the field, and builds up with it", factorName(m.of))
+}
+
+// permanentKind is what to declare a moment as that is there without the field.
+func (m *moment) permanentKind() string {
+	if isOf(m.field.Facts, kind.MagneticFluxDensity) {
+		return withArticle(kind.PermanentMagneticMoment.String())
 	}
-	return false
+	return withArticle(kind.PermanentElectricDipoleMoment.String())
 }

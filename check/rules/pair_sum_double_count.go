@@ -72,7 +72,7 @@ func (c *claim) isAssembly() bool {
 
 // twice reports a term of which the note shows that its pairs stand twice.
 func (g *coupling) twice(all []*coupling) bool {
-	if g.many && g.self() {
+	if g.many && (g.self() || g.shared()) {
 		return true
 	}
 	for _, h := range all {

@@ -180,6 +180,8 @@ const (
 	ConstantStrainPermittivity
 	MechanicalResonanceFrequency
 	ChargingHeat
+	PermanentMagneticMoment
+	InducedMagneticMoment
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -404,6 +406,10 @@ var table = [...]Kind{
 
 	// What becomes heat in the circuit while a store is filled.
 	ChargingHeat: {"charging heat", "heat of charging", "Q_ch", "J", ClassOther, Heat, false},
+
+	// Moments in a field that others make, as for electric dipoles.
+	PermanentMagneticMoment: {"permanent magnetic moment", "", "m_0", "A·m^2", ClassOther, MagneticMoment, false},
+	InducedMagneticMoment:   {"induced magnetic moment", "", "m_i", "A·m^2", ClassOther, MagneticMoment, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},

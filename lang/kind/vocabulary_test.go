@@ -334,7 +334,7 @@ func TestExtraKinds(t *testing.T) {
 		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
 		"capacitance coefficient", "partial capacitance",
 		"internal energy", "internal energy density", "constant-stress relative permittivity", "constant-strain relative permittivity", "mechanical resonance frequency",
-		"charging heat",
+		"charging heat", "permanent magnetic moment", "induced magnetic moment",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"demagnetizing factor", "antenna factor", "effective area", "acceleration",
 		"coefficient of heat transfer", "heat capacity",
