@@ -7,10 +7,9 @@ import (
 )
 
 // JCGM 100:2008, H.2: resistance, reactance and impedance from correlated means
-// of voltage, current and phase. Observations (table H.2) and results (table
-// H.4) from memory; that the observations are right shows in the correlation
-// coefficients -0.3553, 0.8576, -0.6451 of table H.3, which were also read in a
-// public data set.
+// of voltage, current and phase. Observations of table H.2, results of table H.3.
+// The table rounds the correlation coefficients of the means to two digits; the
+// four digits here are those of a public data set of the example.
 func TestResistanceAndReactanceOfTheGuide(t *testing.T) {
 	obs := [3][]float64{
 		{5.007, 4.994, 5.005, 4.990, 4.999},                     // V
