@@ -18,7 +18,7 @@ func (Book) EnergySuperposition() check.Rule {
 		Severity: lang.Error,
 		Title:    "Energies of the parts of one field are added, and the term between the parts is missing",
 		Sees: "An energy, a power, a pressure or a density that is a sum of squares of two fields, voltages or currents with the same other factors, where the note adds these two to one field " +
-			"(`E = E_1 + E_2`), and no product of the two stands beside the squares.",
+			"(`E = E_1 + E_2`), and no product of the two stands beside the squares; for currents and voltages where the note has the square of their sum with the same factors, too.",
 		Silent: "With the product; for vectors at right angles; for a static and an alternating part in an average; for averages of parts under regimes of different frequencies; for a root of the sum of squares; " +
 			"for parts in different media or volumes.",
 		Formula: "|E₁ + E₂|² = E₁² + E₂² + 2E₁·E₂: fields superpose, energies do not. For two equal fields in phase the energy is 4 times that of one, not 2 times.",
@@ -101,7 +101,7 @@ func (c *claim) superposed(p *check.Pass, sums map[pair]*lang.Symbol) {
 				continue
 			}
 			sum := sums[inOrder(a.Key, b.Key)]
-			if sum == nil || hasProduct(form, a.Key, b.Key) || c.apart(a, b) {
+			if sum == nil || hasProduct(form, a.Key, b.Key) || c.apart(a, b) || !isLocal(*a) && !c.view.squares(sum, restA) {
 				continue
 			}
 			c.report(p, lang.Fault{
@@ -112,6 +112,29 @@ func (c *claim) superposed(p *check.Pass, sums map[pair]*lang.Symbol) {
 			return
 		}
 	}
+}
+
+// isLocal reports a field, of which the parts are in one place. Currents that add
+// at a node flow through parts of their own, and so do voltages in series.
+func isLocal(f lang.Factor) bool {
+	return !isOf(f.Facts, kind.ElectricCurrent) && !isOf(f.Facts, kind.Voltage)
+}
+
+// squares reports a definition with the square of a sum beside the same other
+// factors: the sum is in the same element as its parts.
+func (v *view) squares(sum *lang.Symbol, rest string) bool {
+	for _, c := range v.claims {
+		form := v.note.Form(c.sym, c.x, atoms)
+		if form == nil {
+			continue
+		}
+		for _, t := range form.Terms {
+			if a, r := squaredIn(t); a != nil && a.Key == sum.Key && r == rest {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // squaredIn is the amplitude whose square stands in a term, and the key of

@@ -17,7 +17,7 @@ func (Book) FullFieldPlateForce() check.Rule {
 		Severity: lang.Error,
 		Title:    "The force on a charged surface is taken in the whole field, half of which the surface makes itself",
 		Sees: "A force Q·E, Q·U/d or ε·E²·A, a pressure σ·E or ε·E², of static values with the coefficient 1, where charge and field belong to one capacitor: " +
-			"one is computed from the other, both from one voltage, or ε·E² itself. A caution where nothing ties the charge to the field.",
+			"one is computed from the other, both from one voltage, or ε·E² itself.",
 		Silent:  "With the half; for a field that is declared as that of others (an external electric field strength); for alternating values, where quarter-half-average speaks; for a magnetic force.",
 		Formula: "A surface charge feels the mean of the fields on its two sides: F = ½QE, p = ½σE = ½ε₀E² = σ²/(2ε₀).",
 		Remedy:  "Put in the half, or take the field of the other plate alone.",
@@ -49,45 +49,39 @@ func fullField(p *check.Pass, c *claim) {
 	if len(ps) != 1 || ps[0].pi != 0 || new(big.Rat).Abs(ps[0].coef).Cmp(pow2(0)) != 0 || !ps[0].only(roleElectric, roleCapacity, roleGeometry, roleNumber) {
 		return
 	}
-	tied, ok := c.ownField(p, ps[0])
-	if !ok {
+	if !c.ownField(p, ps[0]) {
 		return
 	}
-	f := lang.Fault{
+	c.report(p, lang.Fault{
 		Message: fmt.Sprintf("%s is 2.00 times the force on the surface: it makes half of that field itself", c.sym.Name),
 		Detail:  "Put in the half, or take the field of the other plate alone.",
 		Fix:     &lang.Fix{Title: "Put in the half", Edits: []lang.Edit{insert(c.span().Start, "1/2*("), insert(c.span().End, ")")}},
-	}
-	if !tied {
-		f.Severity, f.Fix = p.Lowered(), nil
-		f.Detail = "That holds for the charge of a plate. For a body in the field of others declare an external electric field strength."
-	}
-	c.report(p, f)
+	})
 }
 
-// ownField reports a charge in a field, or the square of a field with a
-// permittivity, of static values; tied where the note ties the two together.
-func (c *claim) ownField(p *check.Pass, t *product) (tied, ok bool) {
+// ownField reports a charge in a field that the note ties to it, or the square of
+// a field with a permittivity, of static values.
+func (c *claim) ownField(p *check.Pass, t *product) bool {
 	for _, f := range t.byRole[roleElectric] {
 		if s := statOf(c.note, f); s != kind.Static && s != kind.Unqualified && s != kind.Instantaneous || f.Exp.Sign() < 0 || f.Facts.Kind.Is(kind.IncidentFieldStrength) {
-			return false, false
+			return false
 		}
 	}
 	switch fields := t.byRole[roleElectric]; len(fields) {
 	case 1:
-		return true, fields[0].Exp == two && len(t.byRole[roleCapacity]) > 0 && !c.harmonic()
+		return fields[0].Exp == two && len(t.byRole[roleCapacity]) > 0 && !c.harmonic()
 	case 2:
 		q, e := fields[0], fields[1]
 		if !isCharge(q) && !isAreicCharge(q) {
 			q, e = e, q
 		}
 		if !isCharge(q) && !isAreicCharge(q) || isCharge(e) || q.Symbol == nil || e.Symbol == nil {
-			return false, false
+			return false
 		}
 		from := originsOf(p)
-		return from.madeFrom(q.Symbol, e.Symbol) || from.madeFrom(e.Symbol, q.Symbol) || sharedVoltage(from, q.Symbol, e.Symbol), true
+		return from.madeFrom(q.Symbol, e.Symbol) || from.madeFrom(e.Symbol, q.Symbol) || sharedVoltage(from, q.Symbol, e.Symbol)
 	}
-	return false, false
+	return false
 }
 
 func isAreicCharge(f lang.Factor) bool { return isOf(f.Facts, kind.AreicElectricCharge) }

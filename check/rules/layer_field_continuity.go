@@ -17,8 +17,8 @@ func (Book) LayerFieldContinuity() check.Rule {
 		Severity: lang.Error,
 		Title:    "Layers of different permittivity are given the same field strength",
 		Sees: "A field strength bound to a medium (`E in void`) that is a voltage over the sum of several thicknesses, in a note with another medium whose permittivity differs by more than 5 % (an error); " +
-			"a field strength bound to one medium that is defined as that of another one of different permittivity (a caution).",
-		Silent: "For a field that is bound to no medium, such as a mean; for one thickness; for equal permittivities; for a field that is made from the flux density or from the permittivities; " +
+			"a field strength bound to one medium that is defined as that of another one of different permittivity (a caution; an error for a normal electric field strength).",
+		Silent: "For a field that is bound to no medium, such as a mean; for one thickness; for equal permittivities; for a tangential electric field strength; for a field that is made from the flux density or from the permittivities; " +
 			"in a static note, where permittivity-graded-dc speaks.",
 		Formula: "E_t and D_n are continuous: across layers in series E_i = U/(ε_i·Σ(d_j/ε_j)), so that the layer of the lowest permittivity takes the highest field.",
 		Remedy:  "Write `E in void, … = U/(d_1 + d_2*void.eps_r/resin.eps_r)`.",
@@ -150,10 +150,19 @@ func (c *claim) copiedField(p *check.Pass, own medium) {
 	if !ok1 || !ok2 || math.Abs(a/b-1) <= differs {
 		return
 	}
-	c.report(p, lang.Fault{
+	if c.sym.Facts.Kind.Is(kind.TangentialFieldStrength) || from.Facts.Kind.Is(kind.TangentialFieldStrength) {
+		return
+	}
+	f := lang.Fault{
 		Severity: p.Lowered(),
 		Message:  fmt.Sprintf("%s takes the field of %s as it is; its normal component is %.3g times that", c.sym.Name, other.sym.Name, b/a),
 		Detail:   fmt.Sprintf("Only the tangential component is the same on both sides. For the normal one write `%s.eps/%s.eps*%s`.", other.sym.Name, own.sym.Name, from.Name),
 		Related:  []lang.Related{{Span: from.Span, Message: from.Name + " in " + other.sym.Name}},
-	})
+	}
+	if c.sym.Facts.Kind.Is(kind.NormalFieldStrength) || from.Facts.Kind.Is(kind.NormalFieldStrength) {
+		f.Severity = p.Rule.Severity
+	} else {
+		f.Detail += " If it is the tangential one, declare a tangential electric field strength."
+	}
+	c.report(p, f)
 }

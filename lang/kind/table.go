@@ -179,6 +179,8 @@ const (
 	ConstantStressPermittivity
 	ConstantStrainPermittivity
 	MechanicalResonanceFrequency
+	TangentialFieldStrength
+	NormalFieldStrength
 	ChargingHeat
 	PermanentMagneticMoment
 	InducedMagneticMoment
@@ -403,6 +405,10 @@ var table = [...]Kind{
 	ConstantStressPermittivity:   {"constant-stress relative permittivity", "free relative permittivity; unclamped relative permittivity", "ε_r^T", "1", ClassOther, RelativePermittivity, false},
 	ConstantStrainPermittivity:   {"constant-strain relative permittivity", "clamped relative permittivity", "ε_r^S", "1", ClassOther, RelativePermittivity, false},
 	MechanicalResonanceFrequency: {"mechanical resonance frequency", "mechanical resonance", "f_m", "Hz", ClassOther, Frequency, false},
+
+	// Components at a boundary: the tangential one of E is continuous.
+	TangentialFieldStrength: {"tangential electric field strength", "tangential component of the electric field strength", "E_t", "V/m", ClassAmplitude, ElectricFieldStrength, false},
+	NormalFieldStrength:     {"normal electric field strength", "normal component of the electric field strength", "E_n", "V/m", ClassAmplitude, ElectricFieldStrength, false},
 
 	// What becomes heat in the circuit while a store is filled.
 	ChargingHeat: {"charging heat", "heat of charging", "Q_ch", "J", ClassOther, Heat, false},

@@ -333,7 +333,7 @@ func TestExtraKinds(t *testing.T) {
 		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction", "transient thermal impedance", "heat flow rate",
 		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
 		"capacitance coefficient", "partial capacitance",
-		"internal energy", "internal energy density", "constant-stress relative permittivity", "constant-strain relative permittivity", "mechanical resonance frequency",
+		"internal energy", "internal energy density", "constant-stress relative permittivity", "constant-strain relative permittivity", "mechanical resonance frequency", "tangential electric field strength", "normal electric field strength",
 		"charging heat", "permanent magnetic moment", "induced magnetic moment",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"demagnetizing factor", "antenna factor", "effective area", "acceleration",
