@@ -2,6 +2,7 @@ package lang
 
 import (
 	"math"
+	"slices"
 	"strings"
 	"testing"
 	"time"
@@ -12,8 +13,15 @@ import (
 // Whatever a note asks for ends within the budget, as one finding, and the
 // other statements keep their values.
 func TestOverBudgetIsOneFinding(t *testing.T) {
+	hard := "integral(integral(integral(sin(1e4*a*b)*abs(sin(1e4*c) - 1/3) for a from 0 to q) for b from 0 to 1) for c from 0 to 1)"
 	cases := map[string]string{
-		"nested integrals of a hard integrand": "x = integral(integral(integral(sin(1e4*a*b)*abs(sin(1e4*c) - 1/3) for a from 0 to 1) for b from 0 to 1) for c from 0 to 1)",
+		"nested integrals of a hard integrand": "q = 1\nx = " + hard,
+		"nested integrals of uncertain bounds": "q = 1.0(0.1)\nx = " + hard,
+		"the worst case of nested integrals":   "q = 1.0(0.1)\nx = 1 + upper(" + hard + ")",
+		"a region of a hard integrand":         "region v: box(1 m, 1 m, 1 m)\nx = integral(abs(sin(1e4*x*y/(1 m^2)) - z/(1 m)) over v)/(1 m^3)",
+		"an equation of a slow sum":            "x = solve(sum(sin(n*s) for n from 1 to 1e7) = s for s from 0 to 1)",
+		"a slope of a slow sum":                "x = derivative(sum(sin(n*s) for n from 1 to 1e8) for s at 1)",
+		"a column of slow sums":                "table t: n [1], s [1] = sum(sin(k*n) for k from 1 to 1e8)\n    1\n    2\nx = t.s[1] + t.s[2]",
 		"a long sum":                           "x = sum(sin(n) for n from 1 to 1e9)",
 		"a tower of powers":                    "x = 9^9^9^9",
 		"functions that call each other":       fibonacci(40),
@@ -29,10 +37,30 @@ func TestOverBudgetIsOneFinding(t *testing.T) {
 			if len(got) != 2 || !strings.HasPrefix(got[0], `over-budget "`) || got[1] != "y = 6.000" {
 				t.Errorf("got %q", got)
 			}
+			if note.Lookup("x").Known || note.Lookup("z").Known {
+				t.Error("what was over the budget, or is built on it, has a value")
+			}
 			if took := time.Since(start); took > 10*time.Second {
 				t.Errorf("it took %v", took)
 			}
 		})
+	}
+}
+
+// A list has to fit into the memory of the budget.
+func TestALargeListIsOverBudget(t *testing.T) {
+	text := indented("table t: a [1], b [1]" + strings.Repeat("\n    1 2", 100) + "\nx = sum(t.a*t.b)\ny = 2*3")
+	for memory, want := range map[int64][]string{
+		1000:    {`over-budget "t.a*t.b"`, "y = 6.000"},
+		1 << 20: {"y = 6.000"},
+	} {
+		note, err := Analyze(t.Context(), text, Options{Budget: eval.Budget{Memory: memory}})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := told(note, []string{"y = "}); !slices.Equal(got, want) {
+			t.Errorf("%d bytes: %q", memory, got)
+		}
 	}
 }
 

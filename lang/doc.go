@@ -173,7 +173,8 @@
 //
 // One evaluation takes at most the steps, the time and the memory of Options.Budget;
 // one that takes more is the finding over-budget, and what is built on it is
-// unknown. All other statements keep their values. References are followed 32
+// unknown. All evaluations of a note together take at most five times that time.
+// All other statements keep their values. References are followed 32
 // deep, expressions are nested 200 deep, and of a note's statements the first
 // 200,000 are read.
 package lang

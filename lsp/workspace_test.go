@@ -264,6 +264,36 @@ func TestConfigurationFile(t *testing.T) {
 	e.quit()
 }
 
+// TestBudgetOfTheConfiguration holds that an editor evaluates within the budget
+// of the configuration, and again where that is raised.
+func TestBudgetOfTheConfiguration(t *testing.T) {
+	dir := t.TempDir()
+	const text = "Note\n\n    x = sum(n for n from 1 to 1e5) = __\n"
+	config := writeNote(t, dir, "inkjoule.toml", "[budget]\nsteps = 1000\n")
+	note := writeNote(t, dir, "a.joule", text)
+	e := launch(t, realOptions(t))
+	e.startIn(watching, dir)
+	e.open(note, text)
+	over := func() bool {
+		for _, d := range e.diagnosed(note, 1).Diagnostics {
+			if d.Code == "over-budget" {
+				return true
+			}
+		}
+		return false
+	}
+	if !over() {
+		t.Error("1000 steps were enough")
+	}
+	e.forget()
+	writeNote(t, dir, "inkjoule.toml", "")
+	e.changedFiles(2, config)
+	if over() {
+		t.Error("the default was not enough")
+	}
+	e.quit()
+}
+
 func TestWorkspaceFolders(t *testing.T) {
 	one, two := t.TempDir(), t.TempDir()
 	a := writeNote(t, one, "a.joule", "!")
