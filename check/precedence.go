@@ -32,9 +32,6 @@ var overrides = []beats{
 	{"conjugate-missing", []string{"mean-power-half", "quarter-half-average", "half-missing-stored-energy"}},
 	{"sar-field-statistic", []string{"mean-power-half"}},
 	{"wave-impedance-misuse", []string{"mean-power-half"}},
-	// A formula of another system lacks no constant.
-	{"gaussian-form-in-si", []string{"relative-absolute-constant", "flux-field-kind"}},
-	{"point-self-energy", []string{"integral-diverges"}},
 	// Who makes the field decides whether there is a half at all.
 	{"pair-sum-double-count", []string{"half-missing-stored-energy"}},
 	{"source-work-halved", []string{"half-missing-stored-energy"}},
