@@ -20,6 +20,7 @@ type beats struct {
 var overrides = []beats{
 	// A whole formula of another system of quantities, before its single factors.
 	{"gaussian-form-in-si", []string{"relative-absolute-constant", "vacuum-constant-slip", "power-called-energy", "flux-field-kind", "half-missing-stored-energy", "quarter-half-average"}},
+	{"vacuum-constant-slip", []string{"relative-absolute-constant", "flux-field-kind", "power-called-energy"}},
 	// The wrong kind makes every coefficient meaningless.
 	{"power-called-energy", []string{"half-missing-stored-energy", "quarter-half-average", "mean-power-half"}},
 	{"torque-energy-kind", []string{"half-missing-stored-energy", "quarter-half-average"}},

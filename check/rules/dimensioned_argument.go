@@ -114,7 +114,7 @@ func (r refusal) beforeCall() (string, bool) {
 	if !ok || b.Op != lang.OpMul || b.Y != r.above(1) {
 		return "", false
 	}
-	l, ok := bare(b.X).(*lang.Literal)
+	l, ok := unparenthesized(b.X).(*lang.Literal)
 	if !ok || l.Unit != nil {
 		return "", false
 	}
@@ -130,7 +130,7 @@ func (r refusal) besideNumber() bool {
 			continue
 		}
 		for _, x := range []lang.Expr{b.X, b.Y} {
-			if l, ok := bare(x).(*lang.Literal); ok && l.Unit == nil {
+			if l, ok := unparenthesized(x).(*lang.Literal); ok && l.Unit == nil {
 				return true
 			}
 		}
@@ -189,10 +189,10 @@ type aLog struct {
 }
 
 func scaledLog(x lang.Expr) aLog {
-	x = bare(x)
+	x = unparenthesized(x)
 	if b, ok := x.(*lang.Binary); ok && b.Op == lang.OpMul {
-		l, number := bare(b.X).(*lang.Literal)
-		c, call := bare(b.Y).(*lang.Call)
+		l, number := unparenthesized(b.X).(*lang.Literal)
+		c, call := unparenthesized(b.Y).(*lang.Call)
 		if number && call && l.Unit == nil && isLogarithm(c) && len(c.Args) == 1 {
 			return aLog{l.Num.Text, c}
 		}

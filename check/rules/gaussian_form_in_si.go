@@ -78,7 +78,7 @@ func gaussianMismatch(n *lang.Note, m mismatch) string {
 
 // gaussianInput explains a literal in gauss or oersted of the wrong quantity.
 func gaussianInput(m mismatch) string {
-	l, ok := bare(m.x).(*lang.Literal)
+	l, ok := unparenthesized(m.x).(*lang.Literal)
 	if !ok || l.Unit == nil || !hasSymbol(l.Unit.Text, "G") && !hasSymbol(l.Unit.Text, "Oe") {
 		return ""
 	}

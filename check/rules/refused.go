@@ -90,14 +90,3 @@ func (r refusal) text(t lang.Tree) string {
 func (r refusal) explained(message, detail string) lang.Fault {
 	return lang.Fault{Span: r.fault.Span, Message: message, Detail: detail, Related: slices.Clone(r.fault.Related)}
 }
-
-// bare takes parentheses without a unit off.
-func bare(x lang.Expr) lang.Expr {
-	for {
-		p, ok := x.(*lang.Paren)
-		if !ok || p.Unit != nil || p.Spread != nil {
-			return x
-		}
-		x = p.X
-	}
-}

@@ -26,7 +26,7 @@ func vectorEnergy(p *check.Pass, c *claim) {
 	if !c.declared() || c.sym.Facts.Shape != eval.Vector || !slices.ContainsFunc(numbersByNature, c.sym.Facts.Kind.Is) {
 		return
 	}
-	if _, list := bare(c.x).(*lang.Triple); list {
+	if _, list := unparenthesized(c.x).(*lang.Triple); list {
 		return // three values in one name
 	}
 	detail := "Take the dot product `·` where two vectors meet, or declare what the vector is."

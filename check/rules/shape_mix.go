@@ -189,7 +189,7 @@ func unsymmetric(p *check.Pass, s *lang.Stmt) {
 			return true
 		}
 		if shape(b) == eval.Scalar {
-			closed[bare(b.X)], closed[bare(b.Y)] = true, true
+			closed[unparenthesized(b.X)], closed[unparenthesized(b.Y)] = true, true
 		}
 		if !closed[b] && shape(b.X) == eval.Vector && shape(b.Y) == eval.Tensor && differsFromTranspose(p.Note, s, b.Y) {
 			order(p, s, b)
@@ -232,7 +232,7 @@ func differsFromTranspose(n *lang.Note, s *lang.Stmt, x lang.Expr) bool {
 // tensorNamed is the name or the property, or the one that a derived property
 // rests on, which is as unsymmetric.
 func tensorNamed(n *lang.Note, x lang.Expr) *lang.Symbol {
-	switch x := bare(x).(type) {
+	switch x := unparenthesized(x).(type) {
 	case *lang.Name:
 		return n.Lookup(lang.CanonicalName(x.Text))
 	case *lang.Member:
