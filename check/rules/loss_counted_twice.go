@@ -6,21 +6,22 @@ import (
 	"inkjoule/check"
 	"inkjoule/lang"
 	"inkjoule/lang/kind"
-	"inkjoule/lang/unit"
 )
 
-// LossCountedTwice finds a dissipation that adds the loss of a conductivity to
-// that of a loss factor which already holds it.
+// LossCountedTwice finds sums of a conduction loss and of a dielectric loss that
+// already holds it.
 func (Book) LossCountedTwice() check.Rule {
 	return check.Rule{
 		Name:     "loss-counted-twice",
 		Severity: lang.Error,
 		Title:    "A loss is counted twice: the conductivity and the loss factor hold the same one",
-		Sees: "A power, a power density or a conductivity that is the sum of σ·E² and ω·ε″·E² (or ω·ε·tan δ·E², ω·Im(ε)·E²), where σ is computed from that loss factor, " +
-			"or where both are properties of one medium and neither is said to be a part only. A caution where they come from different sources.",
-		Silent: "Where the loss factor is declared as a polarization loss factor, or the conductivity as a direct-current conductivity beside it: then each is a part; for one of the two alone; " +
-			"for the losses of two media.",
-		Formula: "J = σE + jω(ε′ − jε″)E: a measurement at one frequency gives σ + ωε″ and no parts, so tan δ = (σ + ωε″)/(ωε′) holds σ already.",
+		Sees: "A sum of a conduction loss and of a dielectric loss of one body, σ beside ω·ε·tan δ, ω·ε₀·ε″ or ω·Im(ε), in a power, a conductivity, a conductance, a loss factor, " +
+			"a permittivity ε − jσ/ω or below the root of a propagation coefficient, and the eps_c of a medium that states both a complex permittivity and a conductivity: " +
+			"where one of the two is computed from the other or has just its value; where the one is declared as a total (total loss factor, effective conductivity); " +
+			"where both come from the same source and neither is said to be a part. A caution where they come from different sources or from none, and where only the conductivity is said to be a part.",
+		Silent: "Where the loss factor is declared as a polarization loss factor (an ε″ as a polarization loss index), beside a conductivity that is no effective one; for one of the two alone; " +
+			"for a difference, which takes the one out of the other; for the losses of two media; for a resistor beside a capacitor.",
+		Formula: "J = σE + jω(ε′ − jε″)E = jωε′E + (σ + ωε″)E: a measurement at one frequency gives σ + ωε″ and no parts, so tan δ = (σ + ωε″)/(ωε′) holds σ already.",
 		Remedy:  "Use one of the two, or declare what each is: `tan_delta, polarization loss factor = …`, `sigma, direct-current conductivity = …`.",
 		Source:  "von Hippel, Dielectrics and Waves, part I (equivalent conductivity, from memory)",
 		Wrong: check.Example{Note: `    regime: harmonic at f = 915 MHz
@@ -41,114 +42,108 @@ func (Book) LossCountedTwice() check.Rule {
     E in resin, rms electric field strength = 8 kV/m
     p, average power density = σ_e*E^2 = 1.88 MW/m^3
 `},
-		Run: perClaim(lossTwice),
+		Run: perSymbol(lossTwice),
 	}
 }
 
-func lossTwice(p *check.Pass, c *claim) {
-	form, ok := c.form()
-	if !(ok && form == kind.Dissipation) && !c.sym.Facts.Kind.Is(kind.Conductivity) {
-		return
+// lossTwice looks at the sums of one definition.
+func lossTwice(p *check.Pass, s *lang.Symbol) {
+	l := lossesOf(p)
+	if x := l.in(s); x != nil && !l.above(s) {
+		x.report(p)
 	}
-	ps := c.view.products(c.sym)
-	for _, a := range ps {
-		sigma, ok := conductionOf(a)
-		if !ok {
-			continue
-		}
-		for _, b := range ps {
-			if loss, ok := polarizationOf(b); ok && a != b && sameAmplitudes(a, b) && c.reportTwice(p, sigma, loss) {
-				return
-			}
-		}
-	}
+	doubledPermittivity(p, s)
 }
 
-// conductionOf is the conductivity of a term that is a conduction loss.
-func conductionOf(t *product) (lang.Factor, bool) {
-	var found []lang.Factor
-	for _, f := range t.byRole[roleResistive] {
-		if isOf(f.Facts, kind.Conductivity) && f.Exp == unit.Whole(1) {
-			found = append(found, f)
-		}
-	}
-	if len(found) != 1 || len(t.byRole[roleResistive]) != 1 || len(t.byRole[roleLoss])+len(t.byRole[roleCapacity])+len(t.byRole[roleFrequency]) > 0 {
-		return lang.Factor{}, false
-	}
-	return found[0], true
-}
-
-// polarizationOf is the factor that makes a term a loss of polarization: tan δ,
-// or a permittivity beside ω.
-func polarizationOf(t *product) (lang.Factor, bool) {
-	if len(t.byRole[roleFrequency]) != 1 || len(t.byRole[roleCapacity]) == 0 || len(t.byRole[roleResistive]) > 0 {
-		return lang.Factor{}, false
-	}
-	for _, f := range append(t.byRole[roleLoss], t.byRole[roleCapacity]...) {
-		if f.Symbol != nil || f.Inside != nil {
-			return f, true
-		}
-	}
-	return lang.Factor{}, false
-}
-
-// sameAmplitudes reports terms with the same fields or voltages in them.
-func sameAmplitudes(a, b *product) bool {
-	x, y := a.byRole[roleElectric], b.byRole[roleElectric]
-	if len(x) != len(y) {
-		return false
-	}
-	for i := range x {
-		if x[i].Key != y[i].Key || x[i].Exp != y[i].Exp {
-			return false
-		}
-	}
-	return true
-}
-
-// reportTwice files the finding, unless the note says that each is a part.
-func (c *claim) reportTwice(p *check.Pass, sigma, loss lang.Factor) bool {
-	of := lossSymbol(loss)
-	if of == nil || sigma.Symbol == nil {
-		return false
-	}
+// report files the finding, with what the note says of the two.
+func (x *lossPair) report(p *check.Pass) {
+	sigma, of := x.conduction, x.dielectric
 	f := lang.Fault{
-		Message: fmt.Sprintf("%s counts the loss twice: %s stands in it beside %s", c.sym.Name, ownedName(sigma.Symbol), ownedName(of)),
-		Related: c.because([]lang.Factor{sigma, {Symbol: of}}, func(s *lang.Symbol) string { return s.Name }),
+		Span:    x.span,
+		Message: fmt.Sprintf("%s counts the loss twice: %s stands in it beside %s", x.in.Name, ownedName(sigma), ownedName(of)),
+		Related: relatedSymbols(p.Note, sigma, of),
 	}
-	made := originsOf(p).madeFrom(sigma.Symbol, of)
-	switch {
-	case made:
-		f.Detail = fmt.Sprintf("%s is computed from %s. Use one of the two.", sigma.Symbol.Name, ownedName(of))
-	case of.Facts.Kind.Is(kind.PolarizationLossFactor), sigma.Facts.Kind.Is(kind.DCConductivity):
-		return false
-	case sigma.Symbol.Owner == nil || of.Owner == nil:
-		f.Severity = p.Lowered()
-		f.Detail = "A loss factor as it is measured holds the conduction too. " + partsRemedy
-	case sigma.Symbol.Owner.Key != of.Owner.Key:
-		return false // two media
-	case sigma.Symbol.Per != of.Per:
-		f.Severity = p.Lowered()
-		f.Detail = "They come from two sources; a loss factor as it is measured holds the conduction too. " + partsRemedy
-	default:
-		f.Detail = "A loss factor as it is measured holds the conduction too: use one of the two. " + partsRemedy
+	if x.ratio > 0 {
+		f.Message += fmt.Sprintf(", and the sum is %.2f times what that gives alone", 1+x.ratio)
 	}
-	c.report(p, f)
-	return true
+	if f.Severity, f.Detail = x.verdict(p); f.Severity != 0 {
+		p.Report(f)
+	}
 }
 
-const partsRemedy = "If each is a part only, say so: `tan_delta, polarization loss factor = …`."
+const partsRemedy = "If each is a part only, say so: `tan_delta, polarization loss factor = …`, `sigma, direct-current conductivity = …`."
 
-// lossSymbol is the property or quantity that a loss rests on.
-func lossSymbol(f lang.Factor) *lang.Symbol {
-	if f.Symbol != nil {
-		return f.Symbol
+// verdict judges the two by what the note says they are; 0: each is a part.
+func (x *lossPair) verdict(p *check.Pass) (lang.Severity, string) {
+	sigma, of := x.conduction, x.dielectric
+	part := of.Facts.Kind.Is(kind.PolarizationLossFactor) || of.Facts.Kind.Is(kind.PolarizationLossIndex)
+	direct := sigma.Facts.Kind.Is(kind.DCConductivity)
+	switch {
+	case sigma == of || dependsOn(p.Note, sigma, of) || dependsOn(p.Note, of, sigma):
+		return p.Rule.Severity, "One of the two is computed from the other: use one of them."
+	case x.guessed:
+		return p.Lowered(), fmt.Sprintf("A dissipation has room for the imaginary part of %s alone, and as it is measured that holds the conduction too. Declare it as a loss index, or a polarization loss index.", ownedName(of))
+	case sigma.Facts.Kind.Is(kind.EffectiveConductivity):
+		return p.Rule.Severity, fmt.Sprintf("%s is an effective conductivity, which holds every loss at its frequency: use it alone.", ownedName(sigma))
+	case part:
+		return 0, ""
+	case of.Facts.Kind.Is(kind.TotalLossFactor):
+		return p.Rule.Severity, fmt.Sprintf("%s is a total loss factor, which holds the conduction too: use it alone.", ownedName(of))
+	case x.equal():
+		return p.Rule.Severity, fmt.Sprintf("%s has just the value that this loss gives at this frequency: it is the same loss. Use one of the two.", ownedName(sigma))
+	case direct && of.Facts.Complex:
+		return 0, "" // the note has taken the two apart, and has no further word for the permittivity
+	case direct:
+		return p.Lowered(), "A loss factor as it is measured holds the conduction too. If this one is of polarization alone, say so: `tan_delta, polarization loss factor = …`."
+	case sigma.Owner == nil || of.Owner == nil:
+		return p.Lowered(), "A loss factor as it is measured holds the conduction too. " + partsRemedy
+	case sigma.Owner.Key != of.Owner.Key:
+		return 0, "" // two media
+	case sigma.Per != of.Per:
+		return p.Lowered(), "They come from two sources; a loss factor as it is measured holds the conduction too. " + partsRemedy
+	case sigma.Per == "":
+		return p.Lowered(), "Neither names its source; a loss factor as it is measured holds the conduction too. " + partsRemedy
 	}
-	if t, ok := f.Inside.Single(); ok {
-		for _, x := range t.Factors {
-			if x.Symbol != nil && isPermittivity(x) {
-				return x.Symbol
+	return p.Rule.Severity, "Both come from one source; a loss factor as it is measured holds the conduction too: use one of the two. " + partsRemedy
+}
+
+// doubledPermittivity finds the use of the complex permittivity of a medium that
+// states a complex one and a conductivity, which eps_c adds to it.
+func doubledPermittivity(p *check.Pass, s *lang.Symbol) {
+	for _, x := range definedBy(s) {
+		lang.Walk(x, func(t lang.Tree) bool {
+			if m, ok := t.(*lang.Member); ok && m.Field.Text == "eps_c" {
+				if pair := complexBeside(p.Note, m); pair != nil {
+					pair.in, pair.span = s, s.Stmt.Abs(m)
+					pair.report(p)
+				}
 			}
+			return true
+		})
+	}
+}
+
+// complexBeside are the conductivity and the complex permittivity that eps_c of
+// a medium adds up; nil where it does not.
+func complexBeside(n *lang.Note, m *lang.Member) *lossPair {
+	o, ok := m.X.(*lang.Name)
+	if !ok {
+		return nil
+	}
+	key := lang.CanonicalName(o.Text)
+	eps := firstOf(n, key, "eps", "eps_r")
+	sigma := firstOf(n, key, "sigma", "rho")
+	if eps == nil || sigma == nil || !eps.Facts.Complex || n.Lookup(key+".eps_c") != nil || n.Lookup(key+".tan_delta") != nil {
+		return nil
+	}
+	return &lossPair{conduction: sigma, dielectric: eps}
+}
+
+// firstOf is the first of some properties that a medium states.
+func firstOf(n *lang.Note, medium string, properties ...string) *lang.Symbol {
+	for _, name := range properties {
+		if s := n.Lookup(medium + "." + name); s != nil {
+			return s
 		}
 	}
 	return nil
@@ -160,4 +155,15 @@ func ownedName(s *lang.Symbol) string {
 		return s.Owner.Name + "." + s.Name
 	}
 	return s.Name
+}
+
+// relatedSymbols points at the definitions of names, constants left out.
+func relatedSymbols(n *lang.Note, symbols ...*lang.Symbol) []lang.Related {
+	var out []lang.Related
+	for _, s := range symbols {
+		if s != nil && s.Stmt != nil {
+			out = append(out, lang.Related{Path: s.Path, Span: s.Span, Message: ownedName(s)})
+		}
+	}
+	return out
 }

@@ -65,7 +65,7 @@ var oneRoles = []struct {
 }{
 	{kind.RelativePermittivity, roleCapacity}, {kind.ElectricSusceptibility, roleCapacity},
 	{kind.RelativePermeability, roleInduction}, {kind.MagneticSusceptibility, roleInduction},
-	{kind.LossFactor, roleLoss},
+	{kind.LossFactor, roleLoss}, {kind.LossIndex, roleLoss},
 }
 
 // roleOf tells the role of something by its dimension, and by its kind where

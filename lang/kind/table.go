@@ -166,6 +166,16 @@ const (
 	HeatFlowRate
 	PolarizationLossFactor
 	DCConductivity
+	TotalLossFactor
+	LossIndex
+	PolarizationLossIndex
+	EffectiveConductivity
+	AngularWavenumber
+	MeanFreePath
+	SurfaceRoughness
+	RequiredSafetyFactor
+	DemagnetizingFactor
+	RelativeTolerance
 	ExternalPotential
 	PermanentElectricDipoleMoment
 	InducedElectricDipoleMoment
@@ -390,6 +400,24 @@ var table = [...]Kind{
 	Polarizability:                {"polarizability", "electric polarizability", "α", "C·m^2/V", ClassOther, 0, false},
 	InteractionEnergy:             {"interaction energy", "energy in an external field", "W_i", "J", ClassEnergy, Energy, false},
 
+	// A loss as a measurement at one frequency gives it, conduction included, and
+	// the imaginary part ε″ of a relative permittivity (IEC 62631-2-1; effective
+	// conductivity σ + ωε″: von Hippel; both from memory).
+	TotalLossFactor:       {"total loss factor", "total loss tangent; measured loss factor", "tan δ", "1", ClassOther, LossFactor, false},
+	LossIndex:             {"loss index", "dielectric loss index; relative loss index", "ε_r″", "1", ClassOther, 0, false},
+	PolarizationLossIndex: {"polarization loss index", "dipolar loss index", "ε_p″", "1", ClassOther, LossIndex, false},
+	EffectiveConductivity: {"effective conductivity", "total conductivity; equivalent conductivity", "σ_eff", "S/m", ClassOther, Conductivity, false},
+
+	// Waves and surfaces: k = β − jα (ISO 80000-3), the mean free path of the
+	// carriers, the rms height of a surface; what a design rule asks for; the
+	// factor N of H = −N·M; a tolerance as a fraction.
+	AngularWavenumber:    {"angular wavenumber", "angular repetency; complex wavenumber", "k", "m^-1", ClassOther, 0, false},
+	MeanFreePath:         {"mean free path", "mean free path of electrons", "l_e", "m", ClassOther, Length, false},
+	SurfaceRoughness:     {"surface roughness", "roughness; roughness height", "R_q", "m", ClassOther, Length, false},
+	RequiredSafetyFactor: {"required safety factor", "minimum safety factor", "S_req", "1", ClassOther, SafetyFactor, false},
+	DemagnetizingFactor:  {"demagnetizing factor", "demagnetization factor", "N", "1", ClassOther, 0, false},
+	RelativeTolerance:    {"relative tolerance", "tolerance; relative deviation", "t", "1", ClassOther, Ratio, false},
+
 	VacuumEnergyDensity: {"vacuum energy density", "energy density of the field alone; vacuum part of the energy density", "w_0", "J/m^3", ClassEnergy, EnergyDensity, false},
 
 	// Capacitances of several conductors: Q_i = Σ C_ij·V_j with C_ij ≤ 0 for
@@ -429,7 +457,6 @@ var table = [...]Kind{
 	{"wave impedance", "characteristic impedance", "Z", "Ω", ClassOther, Impedance, false},
 	{"reflection coefficient", "", "Γ", "1", ClassAmplitude, Ratio, false},
 	{"transmission coefficient", "", "T", "1", ClassAmplitude, Ratio, false},
-	{"demagnetizing factor", "demagnetization factor", "N", "1", ClassOther, 0, false},
 	{"antenna factor", "", "AF", "m^-1", ClassAmplitude, 0, false},
 	{"effective area", "", "A_e", "m^2", ClassOther, Area, false},
 	{"acceleration", "", "a", "m/s^2", ClassOther, 0, true},

@@ -331,12 +331,15 @@ func TestExtraKinds(t *testing.T) {
 		"crest factor", "line-to-line voltage", "line-to-earth voltage", "earth fault factor",
 		"withstand voltage", "breakdown voltage", "inception voltage", "inception field strength", "incident electric field strength",
 		"peak envelope power", "pulse duration", "pulse repetition frequency", "reaction", "transient thermal impedance", "heat flow rate",
-		"polarization loss factor", "direct-current conductivity", "external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
+		"polarization loss factor", "direct-current conductivity",
+		"total loss factor", "loss index", "polarization loss index", "effective conductivity",
+		"angular wavenumber", "mean free path", "surface roughness", "required safety factor", "demagnetizing factor", "relative tolerance",
+		"external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
 		"capacitance coefficient", "partial capacitance",
 		"internal energy", "internal energy density", "constant-stress relative permittivity", "constant-strain relative permittivity", "mechanical resonance frequency", "tangential electric field strength", "normal electric field strength",
 		"charging heat", "permanent magnetic moment", "induced magnetic moment",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
-		"demagnetizing factor", "antenna factor", "effective area", "acceleration",
+		"antenna factor", "effective area", "acceleration",
 		"coefficient of heat transfer", "heat capacity",
 	}; !slices.Equal(extra, want) {
 		t.Errorf("further kinds: %q, want %q", extra, want)
