@@ -98,6 +98,9 @@ func valueCases() []analysisCase {
 		{"hertz and radians", "f = 50 Hz\nω = 2*pi*f", []string{"ω = 314.2 rad/s"}},
 		{"per cent and quotients of units", "a = 5 %\nb = 200*a\nc = 3 mm/2 m", []string{"b = 10.00", "c = 0.001500"}},
 		{"temperatures", "T = 25 °C\nT_2 = T + 5 K = __ °C\nd = T_2 - T", []string{"T_2 = 30.00 °C", "d = 5.000 K"}},
+		// SI Brochure, 9th ed., 2.3.1: a difference has the same number in °C and in K.
+		{"a rise in degrees Celsius", "d, temperature rise = 15 °C ± 2 °C\ne, temperature rise = d + 5 K = 20 °C = __ °C", []string{"d = 15.0(12) °C", "e = 20.0(12) °C"}},
+		{"a difference of a Celsius and a kelvin temperature", "T = 85 °C\nT_2, temperature = 300 K\nd = T - T_2\ne = T_2 - T", []string{"d = 58.15 K", "e = -58.15 K"}},
 		// 0 dBm is 1 mW (ITU-R V.574-5, 1.1); 60 dBuV is 1 mV.
 		{"levels", "P, power = 30 dBm = __ W\nU, voltage = 60 dBuV = __ mV\nG, power gain = 3 dB\nr = G*1", []string{"P = 1.000 W", "U = 1.000 mV", "r = 1.995"}},
 		// 1 G = 1e-4 T, 1 Oe = 1000/(4π) A/m: NIST SP 811, B.8.

@@ -32,6 +32,7 @@ func (a *analysis) define(c *cell, d *Definition) {
 		e.function(d)
 		return
 	}
+	e.whole = d.Members[0]
 	t := e.expr(d.Members[0])
 	if !t.Known {
 		return

@@ -51,9 +51,12 @@
 // 30 dBm`, `G, power gain = 3 dB`. Numbers that are nothing but rounding beside the
 // largest component of a vector or tensor are shown as 0.
 //
-// Temperatures. °C alone is absolute: two of them can't be added, their
-// difference is in kelvin, and an absolute one in °C can't be multiplied. A
-// tolerance in °C is a difference.
+// Temperatures. °C alone is absolute: two of them can't be added, and their
+// difference, or that to a quantity declared as a temperature, is a temperature
+// rise in kelvin. A tolerance in °C is a difference, and so is a literal or a
+// stated result in °C of a quantity declared as a temperature rise. A thermal
+// resistance times a power, and a heating rate times a time, is a temperature
+// rise. In a product or a quotient a temperature in °C counts in kelvin.
 //
 // Definitions. The first member decides; every further one is verified. A stated
 // result agrees if it is the computed value rounded to the digits written, with

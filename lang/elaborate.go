@@ -43,6 +43,7 @@ type elab struct {
 	solves  []*Call
 	along   *along
 	stating bool   // inside a further member: a spread there is a claim, no input
+	whole   Expr   // the member of the chain that is elaborated
 	hushed  *Fault // inside a called function: the first fault, which the call tells
 }
 

@@ -48,6 +48,9 @@ func (e *elab) sum(b *Binary, x, y typed) typed {
 	t.Media, t.kinds, t.plain, t.blind = x.Media, x.kinds, x.plain, x.blind
 	t.join(y)
 	t.Kind, t.KindBy = sumKind(b.Op, x, y)
+	if b.Op == OpSub && isTemperature(x) && isTemperature(y) {
+		t.Kind, t.KindBy = kind.TemperatureRise, Inferred
+	}
 	t.Qualifier, t.QualBy = sumQualifier(x, y)
 	if b.Op == OpSub {
 		return e.built(t, b)(eval.Sub(b.ID, x.code, y.code))
@@ -61,17 +64,25 @@ func (e *elab) sumOfTemperatures(b *Binary, x, y typed, t *typed) bool {
 	if !x.Absolute && !y.Absolute {
 		return true
 	}
+	if b.Op == OpSub && isTemperature(x) && isTemperature(y) {
+		t.Absolute = false
+		return true
+	}
 	switch {
 	case x.Absolute && y.Absolute && b.Op == OpAdd:
 		e.fault("temperature-offset", b, "the sum of two temperatures in °C has no meaning",
 			"write the difference in kelvin: 25 °C + 5 K")
 		return false
-	case x.Absolute && y.Absolute:
-		t.Absolute = false
 	default:
 		t.Absolute = true
 	}
 	return true
+}
+
+// isTemperature reports an absolute temperature: one in °C, or one that is
+// declared as a temperature in kelvin.
+func isTemperature(t typed) bool {
+	return t.Absolute || t.KindBy == Declared && t.Kind.Is(kind.Temperature)
 }
 
 // sameShape is the shape of a sum, where a scalar joins a list element-wise.

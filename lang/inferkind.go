@@ -124,6 +124,10 @@ func decide(d unit.Dim, in []kind.ID) (kind.ID, Standing) {
 		if has(kind.Permittivity) && (has(kind.ElectricFieldStrength) || has(kind.Voltage)) {
 			return kind.ElectricFluxDensity, Inferred
 		}
+	case kind.TemperatureRise.Dim().Base():
+		if has(kind.ThermalResistance) || has(kind.HeatingRate) {
+			return kind.TemperatureRise, Inferred
+		}
 	case kind.MagneticFieldStrength.Dim().Base():
 		if has(kind.MagneticFluxDensity) && has(kind.Permeability) {
 			return kind.MagneticFieldStrength, Inferred

@@ -21,6 +21,9 @@ func (e *elab) literal(l *Literal) typed {
 		if u, ok = e.unit(l.Unit); !ok {
 			return unknown()
 		}
+		if e.whole == Expr(l) {
+			u = e.ofDifference(u)
+		}
 		t.Dim = u.Dim
 		if x, ok = e.toSI(l, u); !ok {
 			return unknown()
@@ -36,6 +39,15 @@ func (e *elab) literal(l *Literal) typed {
 		t.code = eval.Const(eval.Real(x))
 	}
 	return t
+}
+
+// ofDifference is a unit as it counts in what is defined: a degree Celsius of a
+// temperature rise is a kelvin.
+func (e *elab) ofDifference(u unit.Unit) unit.Unit {
+	if u.Affine() && e.want.Is(kind.TemperatureRise) {
+		u.Offset = 0
+	}
+	return u
 }
 
 // toSI converts a literal, by the kind that is wanted where its unit is a level.

@@ -210,7 +210,7 @@ func (e *elab) shownUnit(d *Definition) unit.Unit {
 	for i := len(d.Members) - 1; i >= 0; i-- {
 		if p := unitOf(d.Members[i]); p != nil {
 			if r := e.a.readUnit(p.Text); r.err == nil && r.unit.Dim.Compatible(e.c.sym.Facts.Dim) {
-				return r.unit
+				return e.ofDifference(r.unit)
 			}
 		}
 	}

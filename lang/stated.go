@@ -53,7 +53,7 @@ func (e *elab) unitMisfit(at Tree, p *UnitPhrase, u unit.Unit) {
 
 // member2 verifies one further member against the computed value.
 func (e *elab) member2(d *Definition, m Expr) {
-	e.stating = true
+	e.stating, e.whole = true, m
 	t := e.expr(m)
 	e.stating = false
 	f := e.c.sym.Facts
@@ -120,6 +120,7 @@ func (e *elab) verifyStated(d *Definition, m Expr, stated eval.Value) {
 	if p := unitOf(m); p != nil {
 		u, _ = e.unit(p)
 	}
+	u = e.ofDifference(u)
 	digit, ok := finestDigit(m)
 	if !ok {
 		return
