@@ -194,6 +194,7 @@ const (
 	ChargingHeat
 	PermanentMagneticMoment
 	InducedMagneticMoment
+	VacuumEnergy
 )
 
 // table is every kind. Fields: name (ISO/IEC 80000), further names, symbol,
@@ -444,6 +445,8 @@ var table = [...]Kind{
 	// Moments in a field that others make, as for electric dipoles.
 	PermanentMagneticMoment: {"permanent magnetic moment", "", "m_0", "A·m^2", ClassOther, MagneticMoment, false},
 	InducedMagneticMoment:   {"induced magnetic moment", "", "m_i", "A·m^2", ClassOther, MagneticMoment, false},
+
+	VacuumEnergy: {"vacuum energy", "energy of the field alone; vacuum part of the energy", "W_0", "J", ClassEnergy, Energy, false},
 
 	// Kinds that no rule names: a line is enough.
 	{"total current", "", "I_t", "A", ClassAmplitude, ElectricCurrent, false},

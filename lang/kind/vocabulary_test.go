@@ -337,7 +337,7 @@ func TestExtraKinds(t *testing.T) {
 		"external electric potential", "permanent electric dipole moment", "induced electric dipole moment", "polarizability", "interaction energy", "vacuum energy density",
 		"capacitance coefficient", "partial capacitance",
 		"internal energy", "internal energy density", "constant-stress relative permittivity", "constant-strain relative permittivity", "mechanical resonance frequency", "tangential electric field strength", "normal electric field strength",
-		"charging heat", "permanent magnetic moment", "induced magnetic moment",
+		"charging heat", "permanent magnetic moment", "induced magnetic moment", "vacuum energy",
 		"wave impedance", "reflection coefficient", "transmission coefficient",
 		"antenna factor", "effective area", "acceleration",
 		"coefficient of heat transfer", "heat capacity",
