@@ -18,7 +18,7 @@ var layers = []struct {
 	level  int
 }{
 	{"lang/unit", 0}, {"lang/kind", 1}, {"lang/eval", 1}, {"lang/media", 1}, {"lang", 2},
-	{"check", 3}, {"check/project", 4}, {"check/rules", 4}, {"check/report", 4}, {"lsp", 5}, {"cmd", 6}, {"corpus", 7}, {"editors", 8},
+	{"check", 3}, {"check/project", 4}, {"check/rules", 4}, {"check/report", 4}, {"check/report/sheet", 5}, {"lsp", 5}, {"cmd", 6}, {"corpus", 7}, {"editors", 8},
 }
 
 func level(pkg string) int {

@@ -109,3 +109,19 @@ func spellSubscripts(text string) string {
 	}
 	return b.String()
 }
+
+// GreekLetter is the Greek letter that a segment of a name stands for, as `ε` for
+// `eps`, `epsilon` or `ε` itself; "" for any other.
+func GreekLetter(segment string) string {
+	name, ok := greek[segment]
+	if !ok {
+		name = segment
+	}
+	best := ""
+	for letter, n := range greek {
+		if n == name && letter >= "Α" && letter <= "ώ" && (best == "" || letter < best) {
+			best = letter
+		}
+	}
+	return best
+}

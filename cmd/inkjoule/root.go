@@ -101,7 +101,7 @@ func newRoot(w *world) *cobra.Command {
 
 // verbs of the program; each has its file.
 func verbs(w *world) []*cobra.Command {
-	return []*cobra.Command{reviewVerb(w), fillVerb(w), tidyVerb(w), rulesVerb(w), handbookVerb(w), serveVerb(w), configVerb(w), manVerb(w), versionVerb(w)}
+	return []*cobra.Command{reviewVerb(w), fillVerb(w), tidyVerb(w), sheetVerb(w), rulesVerb(w), handbookVerb(w), serveVerb(w), configVerb(w), manVerb(w), versionVerb(w)}
 }
 
 // help answers a call without a verb.

@@ -90,3 +90,22 @@ func TestCompletionKnowsVerbsFormatsAndRules(t *testing.T) {
 		}
 	}
 }
+
+func TestSheetIsWritten(t *testing.T) {
+	dir := folder(t, map[string]string{"a.joule": clean, "b.joule": clean})
+	out := filepath.Join(dir, "a.html")
+	if got := inside(t, "", "sheet", filepath.Join(dir, "a.joule"), "-o", out); got.status != 0 || got.out != "" {
+		t.Errorf("status %d, %q %q", got.status, got.out, got.err)
+	}
+	if page := readFile(t, out); !strings.HasPrefix(page, "<!DOCTYPE html>") || !strings.Contains(page, "<h") && !strings.Contains(page, "Field") {
+		t.Errorf("%.200s", page)
+	}
+	if got := inside(t, clean, "sheet", "-"); got.status != 0 || !strings.Contains(got.out, "<!DOCTYPE html>") {
+		t.Errorf("status %d, %q", got.status, got.err)
+	}
+	for _, args := range [][]string{{"sheet", dir}, {"sheet", filepath.Join(dir, "lost.joule")}, {"sheet"}} {
+		if got := inside(t, "", args...); got.status != statusTrouble {
+			t.Errorf("%v: status %d, %q", args, got.status, got.err)
+		}
+	}
+}
