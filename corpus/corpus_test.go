@@ -155,8 +155,8 @@ func TestCheckValuesCoverTheList(t *testing.T) {
 			}
 		}
 	}
-	if len(rows) < 250 {
-		t.Errorf("%d rows covered, want 250", len(rows))
+	if len(rows) < 439 {
+		t.Errorf("%d rows covered, want 439", len(rows))
 	}
 }
 

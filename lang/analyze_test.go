@@ -202,3 +202,28 @@ func faultCases() []analysisCase {
 		{"the other statements keep their values", "a = 1/0\nb = 2*3", []string{`division-by-zero "1/0"`, "b = 6.000"}},
 	}
 }
+
+// A relation that fails tells both values with the digits in which they differ.
+func TestFailingRelationsShowWhatDiffers(t *testing.T) {
+	for relation, want := range map[string]string{
+		"a < b":          "a is 3.0001 V, b is 3.0000 V (margin",
+		"a < 3.00009 V":  "a is 3.00010 V, against 3.00009 V (margin",
+		"3.2 V < a":      "a is 3.000 V, against 3.200 V (margin",
+		"a < a":          "a is 3.000 V, a is 3.000 V (margin",
+		"|a| < b < 9 kV": "|a| is 3.0001 V, b is 3.0000 V (margin",
+	} {
+		note, err := Analyze(t.Context(), indented("a = 3.0001 V\nb = 3 V\ncheck "+relation), Options{})
+		if err != nil {
+			t.Fatal(err)
+		}
+		said := ""
+		for _, f := range note.Faults {
+			if f.Rule == "check-fails" {
+				said += f.Message
+			}
+		}
+		if !strings.Contains(said, relation+" does not hold: "+want) {
+			t.Errorf("%s: %q", relation, said)
+		}
+	}
+}

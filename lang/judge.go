@@ -245,24 +245,41 @@ func (e *elab) both(r *Relation, i int, ts []typed) string {
 			u = e.a.readUnit(p.Text).unit
 		}
 	}
-	text := ""
-	for k := range 2 {
-		x, t := r.Terms[i+k], ts[i+k]
-		o := e.a.run(e.c, r.ID, t.code)
-		if u.IsZero() {
-			u = chosenUnit(t.Facts, o.value)
-		}
-		s := formatter{unit: u, digits: shownDigits}.value(o.value)
-		if k == 1 {
-			text += ", "
-		}
+	var values [2]eval.Value
+	for k := range values {
+		values[k] = e.a.run(e.c, r.ID, ts[i+k].code).value
+	}
+	if u.IsZero() {
+		u = chosenUnit(ts[i].Facts, values[0])
+	}
+	var text [2]string
+	for k, s := range apart(u, values) {
+		x := r.Terms[i+k]
 		if isLiteral(x) {
-			text += "against " + s
+			text[k] = "against " + s
 		} else {
-			text += sketch(x) + " is " + s
+			text[k] = sketch(x) + " is " + s
 		}
 	}
-	return text
+	if isLiteral(r.Terms[i]) {
+		text[0], text[1] = text[1], text[0]
+	}
+	return text[0] + ", " + text[1]
+}
+
+// apart writes two values with as many digits as it takes to see that they
+// differ, where they do.
+func apart(u unit.Unit, values [2]eval.Value) [2]string {
+	write := func(digits int) [2]string {
+		f := formatter{unit: u, digits: digits}
+		return [2]string{f.value(values[0]), f.value(values[1])}
+	}
+	for digits := shownDigits; digits <= 16; digits++ {
+		if text := write(digits); text[0] != text[1] {
+			return text
+		}
+	}
+	return write(shownDigits)
 }
 
 // relateTerms points at the definitions of the names in a relation.

@@ -4,6 +4,8 @@ import (
 	"strings"
 
 	"github.com/alecthomas/participle/v2/lexer"
+
+	"inkjoule/lang/kind"
 )
 
 // definition reads a definition or a property up to its end, which the caller
@@ -46,10 +48,11 @@ func (r *reader) head(d *Definition) {
 }
 
 // kind reads the words of a qualifier and a kind. They may be reserved ones;
-// `per` before a quoted text and `in` end them.
+// `per` before a quoted text ends them, and so does `in`, unless it belongs to
+// the name of the kind: `number of turns in a winding`.
 func (r *reader) kind() *Words {
 	w := Words{}
-	for t := r.peek(); t.Type == tokWord && !is(t, "in"); t = r.peek() {
+	for t := r.peek(); t.Type == tokWord && (!is(t, "in") || r.kindGoesOn(w.Text)); t = r.peek() {
 		if is(t, "per") && r.ahead(1).Type == tokQuote {
 			break
 		}
@@ -66,6 +69,16 @@ func (r *reader) kind() *Words {
 		r.fail("the kind of the quantity, such as `voltage` or `peak voltage`")
 	}
 	return &w
+}
+
+// kindGoesOn reports whether the words read so far make a kind together with
+// all the words that follow.
+func (r *reader) kindGoesOn(words string) bool {
+	for i := 0; r.ahead(i).Type == tokWord; i++ {
+		words += " " + r.ahead(i).Value
+	}
+	_, id, fault := kind.Parse(words)
+	return fault == nil && id != 0
 }
 
 // chain reads the members of a chain of equals, after the first `=`.

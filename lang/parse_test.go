@@ -100,6 +100,7 @@ func TestDefinitions(t *testing.T) {
 		{"U, peak-to-peak voltage = 3 V", "(def U 'peak-to-peak voltage' = 3[V])"},
 		{"C, energy-equivalent capacitance = 4.02 µF", "(def C 'energy-equivalent capacitance' = 4.02[µF])"},
 		{"c, capacitance per length = 3 F/m", "(def c 'capacitance per length' = 3[F/m])"},
+		{"N, number of turns in a winding = 3", "(def N 'number of turns in a winding' = 3)"},
 		{`x, ratio = 3 per "sheet"`, `(def x 'ratio' = 3 (per "sheet"))`},
 		{"f(a, b) in oil, voltage = a + b", "(def f (a b) (in oil) 'voltage' = (+ a b))"},
 		{"E in lib.mica = 3 V/m", "(def E (in lib.mica) = 3[V/m])"},
