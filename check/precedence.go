@@ -24,6 +24,7 @@ var overrides = []beats{
 	// The wrong kind makes every coefficient meaningless.
 	{"power-called-energy", []string{"half-missing-stored-energy", "quarter-half-average", "mean-power-half"}},
 	{"torque-energy-kind", []string{"half-missing-stored-energy", "quarter-half-average"}},
+	{"degree-radian", []string{"hertz-radian-slip"}},
 	{"hertz-radian-slip", []string{"quarter-half-average", "mean-power-half"}},
 	// A mixed statistic leaves no statistic to judge a coefficient by.
 	{"rms-peak-mix", []string{"quarter-half-average", "mean-power-half", "half-missing-stored-energy"}},
