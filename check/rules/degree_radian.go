@@ -66,7 +66,9 @@ func (t protractor) form(x lang.Expr) *lang.Form {
 	return t.p.Note.StatementForm(t.stmt, x, anglesThrough)
 }
 
-func anglesThrough(s *lang.Symbol) bool { return s.Facts.Dim.IsOne() && s.Facts.KindBy != lang.Declared }
+func anglesThrough(s *lang.Symbol) bool {
+	return s.Facts.Dim.IsOne() && s.Facts.KindBy != lang.Declared
+}
 
 // function looks at the argument of an angular function.
 func (t protractor) function(c *lang.Call) {
