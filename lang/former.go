@@ -372,7 +372,10 @@ func (b *former) triple(v *Triple) *Form {
 // call takes the functions apart that are products or linear.
 func (b *former) call(c *Call) *Form {
 	name := CanonicalName(c.Fn.Text)
-	if s := b.n.Lookup(name); s != nil && s.Role == RoleFunction {
+	if f := b.propertyCall(c, name); f != nil {
+		return f
+	}
+	if s := b.n.Lookup(name); s != nil && s.Role == RoleFunction && c.Of == nil {
 		return b.inline(c, s)
 	}
 	args := c.Args
@@ -397,6 +400,30 @@ func (b *former) call(c *Call) *Form {
 		return b.form(args[0])
 	}
 	return b.function(c)
+}
+
+// propertyCall leaves a property that is a function an atom: a property at one
+// condition. It is nil for every other call.
+func (b *former) propertyCall(c *Call, name string) *Form {
+	medium := ""
+	switch of := c.Of.(type) {
+	case *Name:
+		medium = CanonicalName(of.Text)
+	case nil:
+		if b.c.owner == nil || b.n.Lookup(b.c.owner.key+"."+name) == nil {
+			return nil
+		}
+		medium = b.c.owner.key
+	}
+	s := b.n.propertyBehind(medium, name)
+	if s == nil || s.Role != RoleProperty {
+		return nil
+	}
+	keys := make([]string, len(c.Args))
+	for i, a := range c.Args {
+		keys[i] = b.form(a).Key()
+	}
+	return atom(Factor{Key: medium + "." + name + "(" + strings.Join(keys, "; ") + ")", Facts: b.facts(c), Symbol: s})
 }
 
 // function leaves a call opaque, keyed by the forms of its arguments.
