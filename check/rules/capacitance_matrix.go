@@ -63,21 +63,39 @@ func chargeMatrix(c, d *claim) *matrix {
 	first, second := c.charges(), d.charges()
 	for _, x := range first {
 		for _, y := range second {
-			if x.cap.Key != y.cap.Key || x.at.Key == y.at.Key {
+			if x.cap.Key != y.cap.Key || x.at.Key == y.at.Key || x.coef.Cmp(y.coef) != 0 {
 				continue
 			}
 			m := &matrix{c.note, map[pair][]entry{}}
-			m.entries[inOrder(x.at.Key, y.at.Key)] = []entry{{x.cap, x.coef}}
-			for _, z := range append(first, second...) {
-				if z.cap.Key != x.cap.Key && (z.at.Key == x.at.Key || z.at.Key == y.at.Key) {
-					at := inOrder(z.at.Key, z.at.Key)
-					m.entries[at] = append(m.entries[at], z.entry)
-				}
+			if m.row(first, y.at, x.at) && m.row(second, x.at, y.at) {
+				return m
 			}
-			return m
 		}
 	}
 	return nil
+}
+
+// row adds the terms of the charge at one potential: those of its own make the
+// diagonal, those of the other the cross entry, which both charges share and
+// which is added once. False where its own potential does not draw it.
+func (m *matrix) row(terms []drawn, own, other lang.Factor) bool {
+	cross := inOrder(own.Key, other.Key)
+	fill := len(m.entries[cross]) == 0
+	drawsOwn := false
+	for _, z := range terms {
+		switch {
+		case z.at.Key == own.Key:
+			at := inOrder(own.Key, own.Key)
+			m.entries[at] = append(m.entries[at], z.entry)
+			if z.coef.Sign() < 0 {
+				return false
+			}
+			drawsOwn = true
+		case z.at.Key == other.Key && fill:
+			m.entries[cross] = append(m.entries[cross], z.entry)
+		}
+	}
+	return drawsOwn
 }
 
 // drawn is a term C·V of a charge.

@@ -75,8 +75,8 @@ type loose struct {
 
 func (v *view) circumstances(s *spot) circumstances {
 	out := circumstances{book: v.book, hasRMS: v.hasRMS, names: len(s.symbols)}
-	for _, c := range s.claims {
-		out.used = out.used || v.used[c.sym.Key]
+	for _, sym := range s.symbols {
+		out.used = out.used || v.used[sym.Key]
 	}
 	return out
 }

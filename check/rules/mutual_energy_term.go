@@ -176,7 +176,7 @@ func mutualElectrodes(p *check.Pass, v *view) {
 		}
 	}
 	for _, c := range v.claims {
-		if c.isStored() && (c.declared() || !c.usedElsewhere()) {
+		if len(ties) > 0 && c.isStored() && (c.declared() || !c.usedElsewhere()) {
 			c.electrodes(p, ties)
 		}
 	}

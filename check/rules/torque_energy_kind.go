@@ -2,6 +2,7 @@ package rules
 
 import (
 	"fmt"
+	"slices"
 
 	"inkjoule/check"
 	"inkjoule/lang"
@@ -66,11 +67,21 @@ func torqueDeclared(p *check.Pass, s *lang.Symbol) {
 		Message: fmt.Sprintf("%s is declared as %s, and its formula gives %s", s.Name, withArticle(s.Facts.Kind.String()), withArticle(found.Kind.String())),
 		Detail:  "A torque is the derivative of an energy by an angle: the numbers agree only for an angle of 1 rad.",
 	}
+	if found.KindBy != lang.Declared && onMoment(p.Note, s) {
+		return
+	}
 	if found.KindBy != lang.Declared {
 		f.Severity = p.Lowered()
 		f.Detail += " If the formula is what is meant, declare the kind of the name that it starts from."
 	}
 	p.Report(f)
+}
+
+// onMoment reports m·B or p·E, which is the torque on a dipole across the field,
+// and anything with the sine of an angle.
+func onMoment(n *lang.Note, s *lang.Symbol) bool {
+	t, single := n.Normal(s, momentsStay).Single()
+	return single && slices.ContainsFunc(t.Factors, func(f lang.Factor) bool { return isMoment(f.Facts) || f.Call == "sin" })
 }
 
 // torqueUnit finds a torque stated in J, an energy in N·m.
