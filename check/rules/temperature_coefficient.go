@@ -62,6 +62,12 @@ func (t thermometer) offset(b *lang.Binary) {
 	}
 }
 
+// fromIcePoint reports T − 273.15 K, the difference to 0 °C.
+func fromIcePoint(x lang.Expr) bool {
+	b, ok := unparenthesized(x).(*lang.Binary)
+	return ok && b.Op == lang.OpSub && isIcePoint(b.Y)
+}
+
 // isIcePoint reports 273.15 K as written, also rounded.
 func isIcePoint(x lang.Expr) bool {
 	l, ok := unparenthesized(x).(*lang.Literal)
@@ -123,7 +129,7 @@ func (t thermometer) coefficient(b *lang.Binary, sum lang.Tree) bool {
 	above(b, func(x lang.Expr) {
 		f := t.facts(x)
 		switch {
-		case isTemperature(f):
+		case isTemperature(f) && !fromIcePoint(x):
 			temp = x
 		case f.Known && f.Dim.Base() == perKelvin():
 			coef = x

@@ -138,19 +138,16 @@ func scattered(p *check.Pass, s *lang.Stmt) {
 
 // above visits the factors above the line of a product.
 func above(x lang.Expr, visit func(lang.Expr)) {
-	switch b := unparenthesized(x).(type) {
-	case *lang.Binary:
-		if b.Op == lang.OpMul {
-			above(b.X, visit)
-			above(b.Y, visit)
-			return
-		}
-		if b.Op == lang.OpDiv {
-			above(b.X, visit)
-			return
-		}
+	x = unparenthesized(x)
+	b, ok := x.(*lang.Binary)
+	switch {
+	case ok && b.Op == lang.OpMul:
+		above(b.X, visit)
+		above(b.Y, visit)
+	case ok && b.Op == lang.OpDiv:
+		above(b.X, visit)
 	default:
-		visit(b)
+		visit(x)
 	}
 }
 
