@@ -227,3 +227,37 @@ func TestFailingRelationsShowWhatDiffers(t *testing.T) {
 		}
 	}
 }
+
+// The kind of what it is compared with says whether a level counts a power or
+// a field: 13 dB are 19.95 in power and 4.467 in voltage.
+func TestLevelsInRelations(t *testing.T) {
+	note := "G, power gain = 20\na, voltage ratio = 20\nx = 20\nb = nowhere\n"
+	for relation, want := range map[string]string{
+		"criterion G > 13.00 dB":          "",
+		"criterion 13.02 dB < G":          "criterion-fails",
+		"check G = 13.01 dB":              "",
+		"check G = 13.02 dB":              "check-fails",
+		"check a = 26.02 dB":              "",
+		"check a = 26.03 dB":              "check-fails",
+		"criterion 26.0 dB < a < 26.1 dB": "",
+		"criterion 2.9 Np < a < 3.0 Np":   "",
+		"criterion G > 1.5 Np":            "criterion-fails",
+		"criterion x > 13 dB":             "unknown-kind",
+		"criterion b > 13 dB":             "", // b is told where it stands
+		"check 3 dB < 4 dB":               "unknown-kind unknown-kind",
+	} {
+		n, err := Analyze(t.Context(), indented(note+relation), Options{})
+		if err != nil {
+			t.Fatal(err)
+		}
+		var got []string
+		for _, f := range n.Faults {
+			if f.Severity == Error && f.Rule != "unknown-name" {
+				got = append(got, f.Rule)
+			}
+		}
+		if strings.Join(got, " ") != want {
+			t.Errorf("%s: %q, want %q", relation, got, want)
+		}
+	}
+}

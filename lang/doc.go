@@ -48,7 +48,8 @@
 // that of the last member of its chain; else the SI unit of its kind with the
 // prefix that gives 1 to 999; else the coherent unit of its dimension. A level
 // unit needs a kind that tells whether it counts a power or a field: `P, power =
-// 30 dBm`, `G, power gain = 3 dB`. Numbers that are nothing but rounding beside the
+// 30 dBm`, `G, power gain = 3 dB`; in a relation the kind of what it is compared
+// with tells it. Numbers that are nothing but rounding beside the
 // largest component of a vector or tensor are shown as 0.
 //
 // Temperatures. °C alone is absolute: two of them can't be added, and their

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"inkjoule/lang/eval"
+	"inkjoule/lang/kind"
 	"inkjoule/lang/unit"
 )
 
@@ -44,10 +45,7 @@ func (q *Quote) text() string {
 
 // relation elaborates the terms and judges each pair of neighbours.
 func (e *elab) relation(r *Relation, j *Judgement) {
-	ts := make([]typed, len(r.Terms))
-	for i, x := range r.Terms {
-		ts[i] = e.expr(x)
-	}
+	ts := e.terms(r)
 	j.Holds, j.Margin, j.Worst = true, math.Inf(1), math.Inf(1)
 	known := len(r.Ops) > 0
 	for i, op := range r.Ops {
@@ -61,6 +59,35 @@ func (e *elab) relation(r *Relation, j *Judgement) {
 	if !known {
 		j.Margin, j.Worst = 0, 0
 	}
+}
+
+// terms elaborates the terms. A level of which only the kind tells whether it
+// counts a power or a field takes the kind of a term beside it.
+func (e *elab) terms(r *Relation) []typed {
+	ts := make([]typed, len(r.Terms))
+	lost := false // what is unknown was told, and is no reason for a second finding
+	for i, x := range r.Terms {
+		if e.levelByKind(x) {
+			continue
+		}
+		ts[i] = e.expr(x)
+		lost = lost || !ts[i].Known
+		if _, known := kind.RootPower(ts[i].Kind); known && e.want == 0 {
+			e.want = ts[i].Kind
+		}
+	}
+	for i, x := range r.Terms {
+		if e.levelByKind(x) && !lost {
+			ts[i] = e.expr(x)
+		}
+	}
+	return ts
+}
+
+// levelByKind reports a literal in dB or Np.
+func (e *elab) levelByKind(x Expr) bool {
+	l, ok := x.(*Literal)
+	return ok && l.Unit != nil && e.a.readUnit(l.Unit.Text).unit.ByKind()
 }
 
 // comparable checks that two terms can be compared.
@@ -253,7 +280,7 @@ func (e *elab) both(r *Relation, i int, ts []typed) string {
 		u = chosenUnit(ts[i].Facts, values[0])
 	}
 	var text [2]string
-	for k, s := range apart(u, values) {
+	for k, s := range apart(e.formatter(u, shownDigits), values) {
 		x := r.Terms[i+k]
 		if isLiteral(x) {
 			text[k] = "against " + s
@@ -269,17 +296,20 @@ func (e *elab) both(r *Relation, i int, ts []typed) string {
 
 // apart writes two values with as many digits as it takes to see that they
 // differ, where they do.
-func apart(u unit.Unit, values [2]eval.Value) [2]string {
-	write := func(digits int) [2]string {
-		f := formatter{unit: u, digits: digits}
-		return [2]string{f.value(values[0]), f.value(values[1])}
-	}
-	for digits := shownDigits; digits <= 16; digits++ {
-		if text := write(digits); text[0] != text[1] {
+func apart(f formatter, values [2]eval.Value) [2]string {
+	short := [2]string{f.value(values[0]), f.value(values[1])}
+	for text := short; f.digits <= 16; f.digits++ {
+		if text = [2]string{f.value(values[0]), f.value(values[1])}; text[0] != text[1] {
 			return text
 		}
 	}
-	return write(shownDigits)
+	return short
+}
+
+// formatter writes what a relation compares, levels by its kind.
+func (e *elab) formatter(u unit.Unit, digits int) formatter {
+	root, _ := kind.RootPower(e.want)
+	return formatter{unit: u, root: root, digits: digits}
 }
 
 // relateTerms points at the definitions of the names in a relation.
@@ -339,7 +369,8 @@ func (e *elab) byDigits(literal Expr, computed, stated eval.Value) bool {
 		u = e.a.readUnit(p.Text).unit
 	}
 	digit, ok := finestDigit(literal)
-	return ok && agrees(computed, stated, u, digit, false)
+	root, _ := kind.RootPower(e.want)
+	return ok && agrees(computed, stated, u, digit, root)
 }
 
 // sides writes the two sides of an equation.
@@ -356,6 +387,6 @@ func (e *elab) sides(x, y Expr, a, b outcome) string {
 	if f, ok := e.c.factsOf(x); ok && u.IsZero() {
 		u = chosenUnit(f, a.value)
 	}
-	s := formatter{unit: u, digits: digits}
+	s := e.formatter(u, digits)
 	return fmt.Sprintf("%s is %s, and %s is %s", sketch(x), s.value(a.value), sketch(y), s.value(b.value))
 }

@@ -161,3 +161,32 @@ func TestSuppliedUnitsAreAudited(t *testing.T) {
 		}
 	}
 }
+
+// TestEveryUnitIsAudited holds that each unit beyond the SI, and each level, is
+// in one of the lists of published or defined factors, so that a new line of the
+// table needs a figure from outside.
+func TestEveryUnitIsAudited(t *testing.T) {
+	seen := map[string]bool{"dB": true, "Np": true} // by kind: TestLevelByKind
+	for _, c := range publishedValues {
+		seen[c.phrase], seen[c.unit] = true, true
+	}
+	for _, c := range auditTable {
+		seen[c.symbol] = true
+	}
+	for _, c := range definedFactors {
+		seen[c.phrase] = true
+	}
+	for _, c := range levelValues {
+		seen[c.phrase] = true
+	}
+	for _, r := range rows {
+		if r.source != srcSI && !seen[r.symbol] {
+			t.Errorf("%s (%s) has no published factor beside it", r.symbol, r.name)
+		}
+	}
+	for _, r := range levelRows {
+		if !seen[r.symbol] {
+			t.Errorf("%s (%s) has no published value beside it", r.symbol, r.name)
+		}
+	}
+}

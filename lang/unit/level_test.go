@@ -5,31 +5,34 @@ import (
 	"testing"
 )
 
-// TestLevels compares levels with the definitions of IEC 60027-3 and with
-// everyday correspondences (30 dBm = 1 W, 120 dBµV = 1 V).
+// levelValues are levels by the definitions of IEC 60027-3 and by everyday
+// correspondences (30 dBm = 1 W, 120 dBµV = 1 V).
+var levelValues = []struct {
+	phrase string
+	level  float64
+	want   float64
+	unit   string
+}{
+	{"dBm", 0, 1e-3, "W"},
+	{"dBm", 30, 1, "W"},
+	{"dBm", -30, 1e-6, "W"},
+	{"dBW", 10, 10, "W"},
+	{"dBi", 3, 1.9952623149688795, "1"},   // 10^0.3
+	{"dBd", 0, 1.6405897731995394, "1"},   // 2.15 dB over isotropic, 10^0.215
+	{"dBuV", 120, 1, "V"},                 // 20 lg(1 V / 1 µV)
+	{"dBµV", 60, 1e-3, "V"},               // U+00B5
+	{"dBμV/m", 40, 1e-4, "V/m"},           // U+03BC
+	{"dBuV/m", 54, 5.011872336e-4, "V/m"}, // 10^(54/20) µV/m
+	{"dB(uV/m)", 54, 5.011872336e-4, "V/m"},
+	{"dB(mW)", 30, 1, "W"},
+	{"dB(W/m^2)", -10, 0.1, "W/m^2"},
+	{"dBuA/m", 51.5, 3.758374e-4, "A/m"},
+	{"dB(A)", 20, 10, "A"},
+	{"dBuA", 40, 1e-4, "A"},
+}
+
 func TestLevels(t *testing.T) {
-	for _, c := range []struct {
-		phrase string
-		level  float64
-		want   float64
-		unit   string
-	}{
-		{"dBm", 0, 1e-3, "W"},
-		{"dBm", 30, 1, "W"},
-		{"dBm", -30, 1e-6, "W"},
-		{"dBW", 10, 10, "W"},
-		{"dBi", 3, 1.9952623149688795, "1"},   // 10^0.3
-		{"dBd", 0, 1.6405897731995394, "1"},   // 2.15 dB over isotropic, 10^0.215
-		{"dBuV", 120, 1, "V"},                 // 20 lg(1 V / 1 µV)
-		{"dBµV", 60, 1e-3, "V"},               // U+00B5
-		{"dBμV/m", 40, 1e-4, "V/m"},           // U+03BC
-		{"dBuV/m", 54, 5.011872336e-4, "V/m"}, // 10^(54/20) µV/m
-		{"dB(uV/m)", 54, 5.011872336e-4, "V/m"},
-		{"dB(mW)", 30, 1, "W"},
-		{"dB(W/m^2)", -10, 0.1, "W/m^2"},
-		{"dBuA/m", 51.5, 3.758374e-4, "A/m"},
-		{"dB(A)", 20, 10, "A"},
-	} {
+	for _, c := range levelValues {
 		u, want := must(t, c.phrase), must(t, c.unit)
 		got := u.ToSI(c.level)
 		if u.Dim != want.Dim || math.Abs(got/c.want-1) > 1e-6 {

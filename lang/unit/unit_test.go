@@ -23,21 +23,26 @@ func TestSIUnits(t *testing.T) {
 	}
 }
 
-// TestFactors compares factors with their definitions: BIPM SI Brochure, 9th
-// ed., table 8; CODATA 2022 for the dalton.
+// definedFactors are factors by their definitions, num/den·π^pi: BIPM SI Brochure,
+// 9th ed., table 8; NIST SP 811, App. B; CODATA 2022 for the dalton.
+var definedFactors = []struct {
+	phrase, want string
+	pi           int
+}{
+	{"min", "60", 0}, {"h", "3600", 0}, {"d", "86400", 0}, {"au", "149597870700", 0},
+	{"°", "1/180", 1}, {"′", "1/10800", 1}, {"″", "1/648000", 1}, {"ha", "1e4", 0}, {"L", "1e-3", 0}, {"mL", "1e-6", 0},
+	{"t", "1e3", 0}, {"kt", "1e6", 0}, {"Da", "1.66053906892e-27", 0}, {"eV", "1.602176634e-19", 0}, {"MeV", "1.602176634e-13", 0},
+	{"kg", "1", 0}, {"g", "1e-3", 0}, {"mg", "1e-6", 0}, {"kWh", "3.6e6", 0}, {"Ah", "3600", 0}, {"mAh", "3.6", 0}, {"VAh", "3600", 0}, {"varh", "3600", 0},
+	{"VA", "1", 0}, {"var", "1", 0}, {"%", "1/100", 0}, {"‰", "1/1000", 0}, {"ppm", "1e-6", 0},
+	{"rpm", "1/60", 0}, {"km/h", "5/18", 0}, {"kV/mm", "1e6", 0}, {"mm^2", "1e-6", 0}, {"cm^3", "1e-6", 0}, {"µC/cm^2", "1/100", 0},
+	{"Oe", "250", -1}, {"Oe^2", "62500", -2}, {"MGOe", "25000", -1}, {"°/min", "1/10800", 1}, {"qm", "1e-30", 0}, {"Qm", "1e30", 0},
+	{"cmil", "16129/100000000000000", 1}, {"kcmil", "16129/100000000000", 1}, // π/4·(25.4 µm)²
+	{"ksi", "8896443230521/1290320", 0},     // 1000 lbf/in²
+	{"(lbf/in)^2/(ft·lb)", "definition", 0}, // see composite
+}
+
 func TestFactors(t *testing.T) {
-	for _, c := range []struct {
-		phrase, want string
-		pi           int
-	}{
-		{"min", "60", 0}, {"h", "3600", 0}, {"d", "86400", 0}, {"au", "149597870700", 0},
-		{"°", "1/180", 1}, {"′", "1/10800", 1}, {"″", "1/648000", 1}, {"ha", "1e4", 0}, {"L", "1e-3", 0}, {"mL", "1e-6", 0},
-		{"t", "1e3", 0}, {"kt", "1e6", 0}, {"Da", "1.66053906892e-27", 0}, {"eV", "1.602176634e-19", 0}, {"MeV", "1.602176634e-13", 0},
-		{"kg", "1", 0}, {"g", "1e-3", 0}, {"mg", "1e-6", 0}, {"kWh", "3.6e6", 0}, {"mAh", "3.6", 0}, {"%", "1/100", 0}, {"ppm", "1e-6", 0},
-		{"rpm", "1/60", 0}, {"km/h", "5/18", 0}, {"kV/mm", "1e6", 0}, {"mm^2", "1e-6", 0}, {"cm^3", "1e-6", 0}, {"µC/cm^2", "1/100", 0},
-		{"Oe", "250", -1}, {"Oe^2", "62500", -2}, {"°/min", "1/10800", 1}, {"cmil", "16129/100000000000000", 1}, {"qm", "1e-30", 0}, {"Qm", "1e30", 0},
-		{"(lbf/in)^2/(ft·lb)", "definition", 0}, // see composite
-	} {
+	for _, c := range definedFactors {
 		f := must(t, c.phrase).Factor
 		want, ok := new(big.Rat).SetString(c.want)
 		if !ok {
