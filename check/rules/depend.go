@@ -28,7 +28,7 @@ func (d *dependence) in(s *lang.Symbol) bool {
 	for _, x := range definedBy(s) {
 		lang.Walk(x, func(t lang.Tree) bool {
 			for _, key := range d.names(s, t) {
-				of := d.note.Lookup(key)
+				of := statedProperty(d.note, key)
 				found = found || of != nil && (d.wanted(of) || d.in(of))
 			}
 			return !found
